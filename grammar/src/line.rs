@@ -165,16 +165,12 @@ pub fn read_line(text: &str) -> LineKind {
     if content.is_empty() || content.starts_with('#') {
         return LineKind::Blank;
     }
-    match parse(Rule::line, text) {
-        Ok(mut pairs) => {
-            let line = pairs.next().into_iter().flat_map(Pair::into_inner);
-            line.filter_map(|pair| kind(pair, text)).next().unwrap_or(LineKind::Blank)
-        }
-        Err(_) => {
-            let (fault, at, look) = fault::look(text);
-            LineKind::Broken { fault, at, look }
-        }
+    if let Ok(mut pairs) = parse(Rule::line, text) {
+        let mut parts = pairs.next().into_iter().flat_map(Pair::into_inner);
+        return parts.find_map(|pair| kind(pair, text)).unwrap_or(LineKind::Blank);
     }
+    let (fault, at, look) = fault::look(text);
+    LineKind::Broken { fault, at, look }
 }
 
 fn kind(pair: Pair<'_, Rule>, text: &str) -> Option<LineKind> {
