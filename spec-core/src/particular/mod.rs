@@ -20,7 +20,7 @@ pub mod tender;
 
 pub use kind::{Extent, Kind, QuantityKind, Tail};
 pub use lookup::{Found, Limit, Lookup, declared, find, nearest, others_with_label};
-pub use sheet_kind::SheetKind;
+pub use sheet_kind::{SheetKind, Target};
 pub use words::{Word, WordList};
 
 /// The one declaration of a particular: what its label is, how its value is read, and what it means.

@@ -1,0 +1,4 @@
+//! What people and machines read: models in, text out.
+
+pub mod json;
+pub mod reference;

@@ -1,0 +1,183 @@
+//! The duty: what a breaker must meet where it stands, every figure with its working.
+
+mod figure;
+mod gas;
+mod short_circuit;
+mod trv;
+
+pub use figure::{Figure, Input, Working, percent};
+pub use gas::{GasDuty, Level, LevelState, celsius};
+pub(crate) use short_circuit::making_factor_of;
+pub use trv::TrvDuty;
+
+use crate::case::Case;
+use crate::particular::{circuit, site, system};
+use crate::quantity::{
+    ElectricCurrent, ElectricPotential, JouleIntegral, Physical, Ratio, ThermodynamicTemperature, Time,
+};
+
+/// What a breaker must meet. A figure is absent where the text does not say enough for it.
+#[derive(Clone, Debug, Default)]
+pub struct Duty {
+    /// The highest voltage of the system.
+    pub system_voltage: Option<Figure<ElectricPotential>>,
+    /// The three-phase short-circuit current at the connection point, growth included.
+    pub short_circuit_current: Option<Figure<ElectricCurrent>>,
+    /// The single-phase short-circuit current.
+    pub single_phase_current: Option<Figure<ElectricCurrent>>,
+    /// The largest short-circuit current that the breaker has to break: of three, one, or two phases to earth, or its own share.
+    pub breaking_duty: Option<Figure<ElectricCurrent>>,
+    /// The symmetrical current at contact separation.
+    pub symmetrical_breaking_current: Option<Figure<ElectricCurrent>>,
+    /// The time constant of the network.
+    pub time_constant: Option<Figure<Time>>,
+    /// The peak factor kappa.
+    pub peak_factor: Option<Figure<Ratio>>,
+    /// The peak short-circuit current.
+    pub peak_current: Option<Figure<ElectricCurrent>>,
+    /// The thermal equivalent current over the backup clearing time.
+    pub thermal_current: Option<Figure<ElectricCurrent>>,
+    /// Its heat.
+    pub thermal_duty: Option<Figure<JouleIntegral>>,
+    /// The heat that the breaker is rated for.
+    pub thermal_rated: Option<Figure<JouleIntegral>>,
+    /// Time from the fault to contact separation.
+    pub separation: Option<Figure<Time>>,
+    /// The DC share at contact separation, of the network.
+    pub dc_share: Option<Figure<Ratio>>,
+    /// The DC share at contact separation, of the rating.
+    pub dc_share_rated: Option<Figure<Ratio>>,
+    /// The total asymmetrical current at contact separation, of the network.
+    pub asymmetrical_current: Option<Figure<ElectricCurrent>>,
+    /// The total asymmetrical current at contact separation, of the rating.
+    pub asymmetrical_current_rated: Option<Figure<ElectricCurrent>>,
+    /// The rated making current: as stated, else by its factor.
+    pub making_current_rated: Option<Figure<ElectricCurrent>>,
+    /// The rated DC time constant: as stated, else the standard one.
+    pub rated_time_constant: Option<Figure<Time>>,
+    /// Whether the neutral is effectively earthed.
+    pub effectively_earthed: Option<(bool, crate::source::Place)>,
+    /// The first-pole-to-clear factor that the earthing asks for.
+    pub first_pole_factor: Option<Figure<Ratio>>,
+    /// The standard envelopes.
+    pub trv: TrvDuty,
+    /// The largest steady current of a circuit.
+    pub load_current: Option<Figure<ElectricCurrent>>,
+    /// The gas in the cold.
+    pub gas: GasDuty,
+}
+
+/// A figure by the name that the json carries.
+#[derive(Clone, Debug, PartialEq)]
+pub struct NamedFigure {
+    /// The name.
+    pub key: &'static str,
+    /// The value in SI base units; absent where it cannot be known.
+    pub value: Option<f64>,
+    /// The SI unit.
+    pub unit: &'static str,
+    /// The working.
+    pub working: Option<String>,
+}
+
+impl Duty {
+    /// The duty of a case.
+    pub fn of(case: &Case<'_>) -> Self {
+        let mut duty = Self {
+            system_voltage: case
+                .system
+                .quantity::<ElectricPotential>(&system::HIGHEST_VOLTAGE)
+                .map(|stated| Figure::stated("Um", &stated)),
+            load_current: load_current(case),
+            ..Self::default()
+        };
+        short_circuit::fill(case, &mut duty);
+        trv::fill(case, &mut duty);
+        duty.gas = GasDuty::of(case);
+        duty
+    }
+
+    /// Every figure by its name. The names of figures that are not computed yet stand there too, without a value.
+    pub fn figures(&self) -> Vec<NamedFigure> {
+        let mut all = vec![
+            named("system_voltage", "V", self.system_voltage.as_ref()),
+            named("short_circuit_current", "A", self.short_circuit_current.as_ref()),
+            named("short_circuit_current_single_phase", "A", self.single_phase_current.as_ref()),
+            named("breaking_duty", "A", self.breaking_duty.as_ref()),
+            named("symmetrical_breaking_current", "A", self.symmetrical_breaking_current.as_ref()),
+            named("peak_current", "A", self.peak_current.as_ref()),
+            named("peak_factor", "1", self.peak_factor.as_ref()),
+            named("thermal_current", "A", self.thermal_current.as_ref()),
+            named("thermal_duty", "A2s", self.thermal_duty.as_ref()),
+            named("thermal_rated", "A2s", self.thermal_rated.as_ref()),
+            named("dc_time_constant", "s", self.time_constant.as_ref()),
+            named("dc_time_constant_rated", "s", self.rated_time_constant.as_ref()),
+            named("contact_separation", "s", self.separation.as_ref()),
+            named("dc_component", "1", self.dc_share.as_ref()),
+            named("dc_component_rated", "1", self.dc_share_rated.as_ref()),
+            named("asymmetrical_current", "A", self.asymmetrical_current.as_ref()),
+            named("asymmetrical_current_rated", "A", self.asymmetrical_current_rated.as_ref()),
+            named("making_current_rated", "A", self.making_current_rated.as_ref()),
+            named("first_pole_factor", "1", self.first_pole_factor.as_ref()),
+            named("load_current", "A", self.load_current.as_ref()),
+        ];
+        all.extend(self.trv.figures());
+        all.extend(self.gas.figures());
+        all.extend(LATER.iter().map(|(key, unit)| NamedFigure { key, value: None, unit, working: None }));
+        all
+    }
+}
+
+/// Figures of the json that nothing computes yet.
+const LATER: &[(&str, &str)] = &[
+    ("network_trv_peak", "V"),
+    ("network_trv_rate", "V/s"),
+    ("line_charging_current", "A"),
+    ("cable_charging_current", "A"),
+    ("bank_current", "A"),
+    ("bank_continuous_current", "A"),
+    ("inrush_peak", "A"),
+    ("inrush_frequency", "Hz"),
+    ("continuous_current_at_site", "A"),
+    ("lightning_level_on_site", "V"),
+    ("switching_level_on_site", "V"),
+    ("creepage_needed", "m"),
+    ("gas_mass", "kg"),
+    ("gas_co2_equivalent", "kg"),
+    ("clearing_time", "s"),
+    ("operations", "1"),
+];
+
+fn named<Q: Physical>(key: &'static str, unit: &'static str, figure: Option<&Figure<Q>>) -> NamedFigure {
+    NamedFigure {
+        key,
+        value: figure.map(|figure| figure.value.si()),
+        unit,
+        working: figure.map(|figure| figure.working.to_string()),
+    }
+}
+
+/// A figure of an optional value that is not a typed quantity of a figure of its own.
+fn named_temperature(key: &'static str, figure: Option<&Figure<ThermodynamicTemperature>>) -> NamedFigure {
+    named(key, "K", figure)
+}
+
+/// The largest of the load and emergency currents of the circuits.
+fn load_current(case: &Case<'_>) -> Option<Figure<ElectricCurrent>> {
+    let mut largest: Option<Figure<ElectricCurrent>> = None;
+    for circuit in &case.circuits {
+        for (symbol, particular) in [("load", &circuit::LOAD_CURRENT), ("emergency load", &circuit::EMERGENCY_LOAD_CURRENT)] {
+            let Some(stated) = circuit.quantity::<ElectricCurrent>(particular) else { continue };
+            if largest.as_ref().is_none_or(|old| stated.value > old.value) {
+                largest = Some(Figure::new(stated.value, "largest steady current of a circuit", "practice").with(symbol, &stated));
+            }
+        }
+    }
+    largest
+}
+
+/// The lowest air temperature of the site: of its own line, else the lower end of the range.
+pub(crate) fn lowest_ambient<'a>(case: &'a Case<'_>) -> Option<crate::sheet::Stated<'a, ThermodynamicTemperature>> {
+    let own = case.site.quantity::<ThermodynamicTemperature>(&site::LOWEST_AMBIENT);
+    own.or_else(|| case.site.side(&site::AMBIENT, crate::particular::Limit::Least))
+}

@@ -1,0 +1,77 @@
+//! Findings: what is wrong, where, by what measure, and how it is mended.
+
+mod data;
+#[cfg(feature = "miette")]
+mod diagnostic;
+
+pub use data::{Acceptance, Datum, Edit, Finding, FindingKind, Related};
+#[cfg(feature = "miette")]
+pub use diagnostic::{FindingDiagnostic, IndexedSource};
+
+use crate::rules::Rule;
+use crate::source::Place;
+
+/// Collects the findings of one run.
+#[derive(Debug, Default)]
+pub struct Findings {
+    all: Vec<Finding>,
+}
+
+impl Findings {
+    /// None yet.
+    pub fn new() -> Self {
+        Self::default()
+    }
+
+    /// Adds a finding.
+    pub fn push(&mut self, finding: Finding) {
+        self.all.push(finding);
+    }
+
+    /// Begins a finding of `rule` at `place`; the builder puts it in when it is dropped into [`Findings::push`].
+    pub fn add(&mut self, rule: &'static Rule, place: Place, message: impl Into<String>) -> &mut Finding {
+        self.all.push(Finding::new(rule, place, message));
+        let last = self.all.len() - 1;
+        // The vector holds at least the finding that was just put in.
+        #[allow(clippy::indexing_slicing)]
+        &mut self.all[last]
+    }
+
+    /// Those found so far.
+    pub fn iter(&self) -> impl Iterator<Item = &Finding> {
+        self.all.iter()
+    }
+
+    /// Those found so far, to be changed.
+    pub fn iter_mut(&mut self) -> impl Iterator<Item = &mut Finding> {
+        self.all.iter_mut()
+    }
+
+    /// Drops those from the `from`th on that `keep` does not want.
+    pub fn retain_from(&mut self, from: usize, mut keep: impl FnMut(&Finding) -> bool) {
+        let mut at = 0;
+        self.all.retain(|finding| {
+            at += 1;
+            at <= from || keep(finding)
+        });
+    }
+
+    /// How many there are.
+    pub fn len(&self) -> usize {
+        self.all.len()
+    }
+
+    /// Whether there is none.
+    pub fn is_empty(&self) -> bool {
+        self.all.is_empty()
+    }
+
+    /// In the order of the text: by file, start, rule, message; each one once.
+    pub fn sorted(mut self) -> Vec<Finding> {
+        self.all.sort_by(|a, b| {
+            (a.place, a.rule, &a.breaker, &a.message).cmp(&(b.place, b.rule, &b.breaker, &b.message))
+        });
+        self.all.dedup();
+        self.all
+    }
+}

@@ -1,0 +1,296 @@
+//! A pure gas at constant density.
+
+use super::PureGas;
+use crate::quantity::{MassDensity, Physical, Pressure, Ratio, ThermodynamicTemperature};
+use crate::standards::REFERENCE_TEMPERATURE;
+
+/// Molar gas constant, J/(mol K), exact since the SI of 2019 to the digits written.
+const MOLAR_GAS_CONSTANT: f64 = 8.314_462_618;
+
+/// Why a state cannot be told.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum GasFault {
+    /// The filling is above what the equation of state holds for.
+    FillingTooHigh {
+        /// The bound, Pa absolute at 20 degC.
+        bound: f64,
+    },
+    /// The pressure is not above zero.
+    NoPressure,
+    /// The temperature is outside of the range of the equation of state.
+    TemperatureOutside {
+        /// The bound that was left, K.
+        bound: f64,
+    },
+    /// The gas is saturated at the temperature of filling: it cannot be filled as gas to this pressure.
+    Saturated {
+        /// The pressure of saturation, Pa.
+        bound: f64,
+    },
+}
+
+impl std::fmt::Display for GasFault {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        match self {
+            Self::FillingTooHigh { bound } => {
+                write!(f, "above {} MPa abs at 20 degC the equation of state does not hold", bound / 1e6)
+            }
+            Self::NoPressure => f.write_str("the absolute pressure is not above zero"),
+            Self::TemperatureOutside { bound } => {
+                write!(f, "beyond {:.0} degC the equation of state does not hold", bound - 273.15)
+            }
+            Self::Saturated { bound } => {
+                write!(f, "it cannot be filled as gas above {:.3} MPa abs at this temperature", bound / 1e6)
+            }
+        }
+    }
+}
+
+impl std::error::Error for GasFault {}
+
+/// What a gas becomes when it condenses.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Phase {
+    /// Liquid.
+    Liquid,
+    /// Frost, below the triple point.
+    Frost,
+}
+
+/// Where a filling begins to condense.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Condensation {
+    /// The temperature.
+    pub temperature: ThermodynamicTemperature,
+    /// What it becomes.
+    pub phase: Phase,
+}
+
+/// A filling below its dew point.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct TwoPhase {
+    /// Share of the mass that is liquid or frost.
+    pub condensed: Ratio,
+    /// Density of the vapour that is left.
+    pub vapour: MassDensity,
+}
+
+impl PureGas {
+    /// Density of a filling: the root of p = rho R T (1 + B rho + C rho^2) that is a gas.
+    pub fn density(
+        &self,
+        filling: Pressure,
+        at: ThermodynamicTemperature,
+    ) -> Result<MassDensity, GasFault> {
+        let (p, t) = (filling.si(), at.si());
+        self.within(t)?;
+        if p <= 0.0 {
+            return Err(GasFault::NoPressure);
+        }
+        if t < self.critical_temperature {
+            let saturated = self.saturation(t);
+            if p > saturated {
+                return Err(GasFault::Saturated { bound: saturated });
+            }
+        }
+        let density = MassDensity::from_si(self.density_of_gas(p, t)?);
+        if self.pressure_of_gas(density.si(), REFERENCE_TEMPERATURE) > self.highest_filling * (1.0 + 1e-9) {
+            return Err(GasFault::FillingTooHigh { bound: self.highest_filling });
+        }
+        Ok(density)
+    }
+
+    /// Pressure at a temperature and constant density; below the dew point that of saturation.
+    pub fn pressure(&self, density: MassDensity, at: ThermodynamicTemperature) -> Result<Pressure, GasFault> {
+        let t = at.si();
+        self.within(t)?;
+        let gas = self.pressure_of_gas(density.si(), t);
+        Ok(Pressure::from_si(if t < self.critical_temperature { gas.min(self.saturation(t)) } else { gas }))
+    }
+
+    /// Where a filling of this density begins to condense.
+    pub fn dew_point(&self, density: MassDensity) -> Result<Condensation, GasFault> {
+        let excess = |t: f64| self.pressure_of_gas(density.si(), t) - self.saturation(t);
+        let (mut low, mut high) = (self.temperatures.0, self.critical_temperature);
+        if excess(low) < 0.0 {
+            return Err(GasFault::TemperatureOutside { bound: low });
+        }
+        // The pressure of the gas falls by less than that of saturation, so there is one root; halving finds it to 1e-12 K.
+        for _ in 0..60 {
+            let middle = 0.5 * (low + high);
+            if excess(middle) > 0.0 { low = middle } else { high = middle }
+        }
+        let temperature = 0.5 * (low + high);
+        let phase = if temperature < self.triple_temperature { Phase::Frost } else { Phase::Liquid };
+        Ok(Condensation { temperature: ThermodynamicTemperature::from_si(temperature), phase })
+    }
+
+    /// Density of the saturated vapour at a temperature.
+    pub fn saturated_density(&self, at: ThermodynamicTemperature) -> Result<MassDensity, GasFault> {
+        let t = at.si();
+        self.within(t)?;
+        if t >= self.critical_temperature {
+            return Err(GasFault::TemperatureOutside { bound: self.critical_temperature });
+        }
+        self.density_of_gas(self.saturation(t), t).map(MassDensity::from_si)
+    }
+
+    /// A filling at a temperature: how much of it is condensed, and what vapour is left. The share of the liquid is
+    /// (1 - rho_g/rho)/(1 - rho_g/rho_l).
+    pub fn two_phase(&self, density: MassDensity, at: ThermodynamicTemperature) -> Result<TwoPhase, GasFault> {
+        if at.si() >= self.critical_temperature || self.pressure_of_gas(density.si(), at.si()) <= self.saturation(at.si()) {
+            self.within(at.si())?;
+            return Ok(TwoPhase { condensed: Ratio::from_si(0.0), vapour: density });
+        }
+        let vapour = self.saturated_density(at)?;
+        let condensed = (1.0 - vapour.si() / density.si()) / (1.0 - vapour.si() / self.liquid_density);
+        Ok(TwoPhase { condensed: Ratio::from_si(condensed.max(0.0)), vapour })
+    }
+
+    /// The pressure that a density has at 20 degC, as rated levels are stated.
+    pub fn reference_pressure(&self, density: MassDensity) -> Pressure {
+        Pressure::from_si(self.pressure_of_gas(density.si(), REFERENCE_TEMPERATURE))
+    }
+
+    /// The highest filling, as a pressure at 20 degC, that does not condense at a temperature.
+    pub fn highest_filling(&self, lowest: ThermodynamicTemperature) -> Result<Pressure, GasFault> {
+        let pressure = self.reference_pressure(self.saturated_density(lowest)?);
+        if pressure.si() > self.highest_filling {
+            return Err(GasFault::FillingTooHigh { bound: self.highest_filling });
+        }
+        Ok(pressure)
+    }
+
+    fn within(&self, t: f64) -> Result<(), GasFault> {
+        let (low, high) = self.temperatures;
+        if t < low {
+            Err(GasFault::TemperatureOutside { bound: low })
+        } else if t > high {
+            Err(GasFault::TemperatureOutside { bound: high })
+        } else {
+            Ok(())
+        }
+    }
+
+    /// Pressure of saturation over the liquid, ln(p/pc) = (Tc/T) sum a (1 - T/Tc)^e, and over the frost below the triple point.
+    fn saturation(&self, t: f64) -> f64 {
+        if t < self.triple_temperature {
+            let exponent = -self.sublimation_slope * (1.0 / t - 1.0 / self.triple_temperature);
+            return self.triple_pressure * exponent.exp();
+        }
+        let reduced = 1.0 - t / self.critical_temperature;
+        let sum: f64 = self.vapour.iter().map(|(a, e)| a * reduced.max(0.0).powf(*e)).sum();
+        self.critical_pressure * (self.critical_temperature / t * sum).exp()
+    }
+
+    fn virial(&self, t: f64) -> (f64, f64) {
+        let x = 300.0 / t;
+        let series = |c: &[f64]| c.iter().rev().fold(0.0, |sum, c| sum * x + c);
+        (series(&self.b), series(&self.c))
+    }
+
+    /// Pressure of the gas, Pa, of a density in kg/m3, as if it did not condense.
+    fn pressure_of_gas(&self, density: f64, t: f64) -> f64 {
+        let (b, c) = self.virial(t);
+        let rho = density / self.molar_mass;
+        rho * MOLAR_GAS_CONSTANT * t * (1.0 + b * rho + c * rho * rho)
+    }
+
+    /// Density of the gas, kg/m3, by Newton's method from the ideal gas.
+    fn density_of_gas(&self, p: f64, t: f64) -> Result<f64, GasFault> {
+        let (b, c) = self.virial(t);
+        let ideal = p / (MOLAR_GAS_CONSTANT * t);
+        let mut rho = ideal;
+        for _ in 0..50 {
+            let residual = rho * (1.0 + b * rho + c * rho * rho) - ideal;
+            let slope = 1.0 + 2.0 * b * rho + 3.0 * c * rho * rho;
+            if slope <= 0.0 {
+                return Err(GasFault::FillingTooHigh { bound: self.highest_filling });
+            }
+            let step = residual / slope;
+            rho -= step;
+            if step.abs() <= 1e-14 * rho.abs() {
+                break;
+            }
+        }
+        Ok(rho * self.molar_mass)
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::super::sf6;
+    use super::*;
+
+    fn mpa(number: f64) -> Pressure {
+        Pressure::from_si(number * 1e6)
+    }
+
+    fn celsius(number: f64) -> ThermodynamicTemperature {
+        ThermodynamicTemperature::from_si(number + 273.15)
+    }
+
+    fn dew(filling: f64) -> f64 {
+        let density = sf6().density(mpa(filling), celsius(20.0)).expect("a density");
+        sf6().dew_point(density).expect("a dew point").temperature.si() - 273.15
+    }
+
+    /// Dew points of fillings at 20 degC, computed with CoolProp 8.0.0 (gas basis, section 4).
+    #[test]
+    fn dew_points() {
+        for (filling, expected) in [(0.5, -36.7), (0.6, -31.1), (0.7, -26.2)] {
+            assert!((dew(filling) - expected).abs() < 0.06, "{filling}: {}", dew(filling));
+        }
+    }
+
+    /// Highest filling for a lowest temperature, computed with CoolProp 8.0.0 (gas basis, section 2.1).
+    #[test]
+    fn highest_fillings() {
+        for (t, expected) in [(-45.0, 0.373), (-40.0, 0.446), (-30.0, 0.622), (-20.0, 0.840), (0.0, 1.407)] {
+            let filling = sf6().highest_filling(celsius(t)).expect("a filling").si() / 1e6;
+            assert!((filling - expected).abs() < 0.0006, "{t}: {filling}");
+        }
+    }
+
+    /// 0.6 MPa: 6.5 % liquid and 0.565 MPa left at -33 degC, 13.0 % and 0.529 at -35, 27.6 % and 0.446 at -40 (gas basis).
+    #[test]
+    fn what_is_left_below_the_dew_point() {
+        let density = sf6().density(mpa(0.6), celsius(20.0)).expect("a density");
+        for (t, share, left) in [(-33.0, 0.065, 0.565), (-35.0, 0.130, 0.529), (-40.0, 0.276, 0.446)] {
+            let state = sf6().two_phase(density, celsius(t)).expect("a state");
+            assert!((state.condensed.value - share).abs() < 0.003, "{t}: {}", state.condensed.value);
+            assert!((sf6().reference_pressure(state.vapour).si() / 1e6 - left).abs() < 0.001, "{t}");
+        }
+        assert_eq!(sf6().two_phase(density, celsius(-20.0)).expect("a state").condensed.value, 0.0);
+    }
+
+    #[test]
+    fn the_highest_filling_is_the_one_that_begins_to_condense() {
+        for t in [-45.0, -30.0, -10.0] {
+            let filling = sf6().highest_filling(celsius(t)).expect("a filling").si() / 1e6;
+            assert!((dew(filling) - t).abs() < 1e-6, "{t}");
+        }
+    }
+
+    #[test]
+    fn out_of_range_is_refused_with_its_bound() {
+        assert_eq!(sf6().density(mpa(1.7), celsius(20.0)), Err(GasFault::FillingTooHigh { bound: 1.6e6 }));
+        assert!(sf6().density(mpa(1.6), celsius(20.0)).is_ok());
+        assert_eq!(sf6().density(mpa(0.0), celsius(20.0)), Err(GasFault::NoPressure));
+        assert!(matches!(sf6().density(mpa(3.0), celsius(20.0)), Err(GasFault::Saturated { .. })));
+        assert_eq!(sf6().highest_filling(celsius(-70.0)), Err(GasFault::TemperatureOutside { bound: 205.0 }));
+        let density = MassDensity::from_si(40.0);
+        assert!(matches!(sf6().pressure(density, celsius(80.0)), Err(GasFault::TemperatureOutside { .. })));
+    }
+
+    /// Below 0.3141 MPa abs the gas comes down as frost (gas basis, section 2.1).
+    #[test]
+    fn frost_below_the_triple_point() {
+        let phase = |filling: f64| {
+            let density = sf6().density(mpa(filling), celsius(20.0)).expect("a density");
+            sf6().dew_point(density).expect("a dew point").phase
+        };
+        assert_eq!(phase(0.313), Phase::Frost);
+        assert_eq!(phase(0.316), Phase::Liquid);
+    }
+}

@@ -1,0 +1,7 @@
+//! Pure functions on typed quantities, each citing its equation. No tables of ratings, no text, no findings.
+
+pub mod dc_component;
+pub mod first_pole;
+pub mod gas;
+pub mod short_circuit;
+pub mod trv;

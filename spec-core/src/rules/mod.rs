@@ -1,0 +1,148 @@
+//! The rules, one file a subject.
+//!
+//! A rule is a static with its name, title, basis, formula, kind and explanation, and a function from a case (or the whole set)
+//! to findings. The same texts answer `firstpole clause`, the reference page and the hover.
+
+use crate::case::Case;
+use crate::finding::{FindingKind, Findings};
+use crate::sheet::Set;
+
+pub mod completeness;
+pub mod continuous_current;
+pub mod deviations;
+pub mod earthing;
+pub mod gas;
+pub mod making;
+pub mod reading;
+pub mod sequence;
+pub mod short_circuit;
+pub mod statements;
+#[cfg(test)]
+pub mod testing;
+pub mod thermal;
+pub mod times;
+pub mod trv;
+pub mod voltage;
+
+/// What one rule is.
+#[derive(Debug)]
+pub struct Rule {
+    /// Its plain hyphenated name.
+    pub name: &'static str,
+    /// What must hold, in one sentence.
+    pub title: &'static str,
+    /// The kind of its findings, unless the matter grades them.
+    pub kind: FindingKind,
+    /// The standard and clause, or the practice, that it rests on.
+    pub basis: &'static str,
+    /// The formula or the data that it compares.
+    pub formula: &'static str,
+    /// What it checks, when it is silent, and what to do about a finding.
+    pub explanation: &'static str,
+    /// How it is checked.
+    pub check: Check,
+}
+
+/// How a rule is checked.
+#[derive(Debug)]
+pub enum Check {
+    /// While the text is read, or by another rule of its subject.
+    Elsewhere,
+    /// On the sheets of the whole set.
+    Set(fn(&Set, &Policy, &mut Findings)),
+    /// On each breaker with its duty.
+    Case(fn(&Case<'_>, &mut Findings)),
+}
+
+/// Thresholds of policy. They belong to the buyer, so none of them is a literal in a rule.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Policy {
+    /// Relative difference up to which two units of one statement agree.
+    pub dual_tolerance: f64,
+    /// Difference up to which two statements of one temperature agree, K.
+    pub dual_temperature_tolerance: f64,
+    /// Relative difference up to which time constant, X/R and peak current of one network agree.
+    pub time_constant_tolerance: f64,
+    /// Relative difference up to which a fault level in MVA and one in kA agree.
+    pub fault_level_tolerance: f64,
+    /// How far a making or peak current may lie below its factor times the breaking current.
+    pub making_below: f64,
+    /// How far it may lie above before it is an excess.
+    pub making_above: f64,
+    /// How far a stated TRV value may lie off the standard's.
+    pub trv_tolerance: f64,
+    /// Steps of the preferred series above the duty from which a rating is an excess.
+    pub excess_steps: usize,
+    /// Whether the tender counts as issued whatever its status says.
+    pub issued: bool,
+    /// The day on which deviations are held against their expiry; without one, none expires.
+    pub today: Option<crate::sheet::Date>,
+}
+
+impl Default for Policy {
+    fn default() -> Self {
+        Self {
+            dual_tolerance: 0.01,
+            dual_temperature_tolerance: 0.5,
+            time_constant_tolerance: 0.05,
+            fault_level_tolerance: 0.05,
+            making_below: 0.02,
+            making_above: 0.05,
+            trv_tolerance: 0.02,
+            excess_steps: 2,
+            issued: false,
+            today: None,
+        }
+    }
+}
+
+/// Every rule, subject by subject, in the order in which they are checked.
+pub fn standard() -> Vec<&'static Rule> {
+    [
+        reading::ALL,
+        statements::ALL,
+        completeness::ALL,
+        voltage::ALL,
+        continuous_current::ALL,
+        short_circuit::ALL,
+        making::ALL,
+        thermal::ALL,
+        earthing::ALL,
+        trv::ALL,
+        sequence::ALL,
+        times::ALL,
+        gas::ALL,
+        deviations::ALL,
+    ]
+    .concat()
+}
+
+/// The rule whose name is nearest to `name`, if one is near.
+pub fn nearest(name: &str) -> Option<&'static str> {
+    standard()
+        .iter()
+        .map(|rule| (strsim::normalized_damerau_levenshtein(rule.name, &name.to_lowercase()), rule.name))
+        .filter(|(near, _)| *near >= 0.5)
+        .max_by(|a, b| a.0.total_cmp(&b.0))
+        .map(|(_, name)| name)
+}
+
+#[cfg(test)]
+mod tests {
+    use std::collections::BTreeSet;
+
+    use super::*;
+
+    #[test]
+    fn every_rule_is_told_in_full_and_once() {
+        let mut names = BTreeSet::new();
+        for rule in standard() {
+            assert!(names.insert(rule.name), "{} twice", rule.name);
+            assert!(rule.name.chars().all(|c| c.is_ascii_lowercase() || c == '-'), "{}", rule.name);
+            for (what, text) in [("title", rule.title), ("basis", rule.basis), ("formula", rule.formula)] {
+                assert!(!text.trim().is_empty(), "{}: no {what}", rule.name);
+            }
+            assert!(rule.explanation.len() > 40, "{}: explain it", rule.name);
+        }
+    }
+}

@@ -1,0 +1,376 @@
+//! From lines to sheets.
+
+use firstpole_grammar::{Heading, Line, LineKind, Look, Name, Particular as WrittenParticular, Span, ValueForm, ValueText};
+
+use super::read_value::Reader;
+use super::{OwnLine, Reading, Set, Sheet, SheetId, Statement, link, name_of};
+use crate::finding::Findings;
+use crate::particular::{self, Lookup, SheetKind, breaker};
+use crate::rules::reading as rules;
+use crate::source::{FileId, LoadFault, Loader, Place, SourceFile, Sources};
+
+/// The edition of the language that is read.
+const EDITION: u32 = 1;
+
+/// Reads every file of `sources`, and those that they use, into sheets, and resolves their links.
+///
+/// `rule_names` are the names that a deviation may speak of.
+pub fn build(sources: &mut Sources, loader: &dyn Loader, rule_names: &[&'static str], findings: &mut Findings) -> Set {
+    let mut set = Set::default();
+    let mut uses = Vec::new();
+    let mut next = 0;
+    // Files that `use` brings in are appended, and so are read in turn.
+    while let Some(file) = sources.file(FileId(next)).cloned() {
+        let id = FileId(next);
+        let mut reader = FileReader { id, file: &file, findings, sheets: &mut set.sheets, current: None, silent: false };
+        let paths = reader.read();
+        for (path, place) in paths {
+            match load(sources, loader, &file.name, &path) {
+                Ok(used) => uses.push((id, used, place)),
+                Err(fault) => {
+                    let message = format!("{path} cannot be used: {}", fault.sentence);
+                    findings.add(&rules::USE_UNREADABLE, place, message).label("cannot be used").stated(path.as_str());
+                }
+            }
+        }
+        next += 1;
+    }
+    set.scope = link::scope(next as usize, &uses, findings);
+    link::resolve(&mut set, rule_names, findings);
+    set
+}
+
+fn load(sources: &mut Sources, loader: &dyn Loader, from: &str, path: &str) -> Result<FileId, LoadFault> {
+    // A file of the set is found beside the one that uses it, without going to the loader.
+    let beside = match from.rsplit_once('/') {
+        Some((folder, _)) => format!("{folder}/{path}"),
+        None => path.to_owned(),
+    };
+    if let Some(id) = sources.find(&beside) {
+        return Ok(id);
+    }
+    let (name, text) = loader.load(from, path)?;
+    Ok(sources.add(name, text))
+}
+
+struct FileReader<'a> {
+    id: FileId,
+    file: &'a SourceFile,
+    findings: &'a mut Findings,
+    sheets: &'a mut Vec<Sheet>,
+    current: Option<SheetId>,
+    /// Whether the lines stand under a heading that could not be taken, of which a finding has told.
+    silent: bool,
+}
+
+impl FileReader<'_> {
+    /// Reads the file; what it uses comes back, with places.
+    fn read(&mut self) -> Vec<(String, Place)> {
+        let mut uses = Vec::new();
+        let mut edition = None;
+        let mut first = None;
+        for line in &self.file.document.lines {
+            if !matches!(line.kind, LineKind::Blank) {
+                first = first.or(Some(line));
+            }
+            match &line.kind {
+                LineKind::Blank => continue,
+                LineKind::Edition { number, span } => {
+                    let place = self.place(line, *span);
+                    let is_first = first.is_some_and(|f| std::ptr::eq(f, line));
+                    self.edition(*number, place, is_first);
+                    edition = Some(());
+                }
+                LineKind::Use { path, span } => uses.push((path.clone(), self.place(line, *span))),
+                LineKind::Heading(heading) => self.heading(line, heading),
+                LineKind::Particular(particular) => self.particular(line, particular),
+                LineKind::Broken { fault, at, look } => {
+                    let place = self.place(line, *at);
+                    self.findings.add(&rules::UNREADABLE_LINE, place, fault.sentence()).label("cannot be read");
+                    self.broken(line, look);
+                    if matches!(fault, firstpole_grammar::Fault::Edition) {
+                        edition = Some(());
+                    }
+                }
+            }
+        }
+        if let (Some(line), None) = (first, edition) {
+            let place = self.place(line, Span::new(0, line.len));
+            self.findings
+                .add(&rules::EDITION_MISSING, place, "the edition of the language is not stated; edition 1 is assumed")
+                .label("cbspec 1 is missing before this")
+                .edit("state the edition", place.start(), "cbspec 1\n\n");
+        }
+        uses
+    }
+
+    const fn place(&self, line: &Line, span: Span) -> Place {
+        Place::new(self.id, line.place(span))
+    }
+
+    fn edition(&mut self, number: Option<u32>, place: Place, first: bool) {
+        if number != Some(EDITION) {
+            let message = "this edition of the language is not known; edition 1 is, and the text is read as that";
+            self.findings
+                .add(&rules::EDITION_UNKNOWN, place, message)
+                .label("unknown edition")
+                .replace_by(EDITION.to_string());
+        } else if !first {
+            let message = "the edition belongs on the first line that is neither blank nor a comment";
+            self.findings.add(&rules::EDITION_MISSING, place, message).label("not on the first line");
+        }
+    }
+
+    fn sheet(&mut self) -> Option<&mut Sheet> {
+        let id = self.current?;
+        self.sheets.get_mut(id.0 as usize)
+    }
+
+    /// What can still be done with a line that cannot be read, so that the lines after it land where they belong, and no
+    /// rule calls missing what was only misspelt.
+    fn broken(&mut self, line: &Line, look: &Look) {
+        match look {
+            Look::Particular { label, rest } => {
+                let text = self.text(line, *label).to_owned();
+                let Some(sheet) = self.sheet().map(|sheet| sheet.kind) else { return };
+                if let Lookup::Found(found) = particular::find(sheet, &text) {
+                    let (particular, about, limit) = Statement::of(&found);
+                    let statement = Statement {
+                        particular,
+                        about,
+                        limit,
+                        label: self.place(line, *label),
+                        value: self.place(line, *rest),
+                        reading: Reading::Unknown,
+                        chosen: None,
+                    };
+                    self.keep(line, statement);
+                }
+            }
+            Look::Heading { kind, name } => {
+                if let Some(sheet) = SheetKind::read(self.text(line, *kind)) {
+                    let kind = self.place(line, *kind);
+                    self.open(line, sheet, kind, name.as_ref(), Vec::new());
+                }
+            }
+            Look::Nothing => {}
+        }
+    }
+
+    fn text(&self, line: &Line, span: Span) -> &str {
+        line.place(span).of(&self.file.text)
+    }
+
+    fn heading(&mut self, line: &Line, heading: &Heading) {
+        let kind_place = self.place(line, heading.kind_span);
+        let kind = match SheetKind::read(&heading.kind) {
+            Some(kind) => kind,
+            None => match nearest_kind(&heading.kind) {
+                Some(near) => {
+                    let message = format!("no sheet is called {}; {} is near, and the lines below are read so", heading.kind, near.word());
+                    self.findings
+                        .add(&rules::UNKNOWN_SHEET, kind_place, message)
+                        .label("not a kind of sheet")
+                        .replace_by(near.word());
+                    near
+                }
+                None => return self.missing_colon(line, heading),
+            },
+        };
+        let links: Vec<_> =
+            heading.links.iter().map(|link| (link.clone(), self.place(line, link.name.span))).collect();
+        self.open(line, kind, kind_place, heading.name.as_ref(), links.clone());
+        self.check_links(line, kind, heading);
+    }
+
+    /// A line of words that is no heading: most likely a particular whose colon is missing.
+    fn missing_colon(&mut self, line: &Line, heading: &Heading) {
+        let place = self.place(line, Span::new(heading.kind_span.start, line.len));
+        let text = self.text(line, Span::new(heading.kind_span.start, line.len)).trim_end().to_owned();
+        let place = Place::new(place.file, Span::new(place.span.start, place.span.start + text.len() as u32));
+        let label = self.sheet().map(|sheet| sheet.kind).and_then(|kind| {
+            let words: Vec<&str> = text.split_whitespace().collect();
+            (1..=words.len()).rev().find(|count| {
+                let label = words.get(..*count).unwrap_or(&[]).join(" ");
+                matches!(particular::find(kind, &label), Lookup::Found(_))
+            })
+        });
+        let sheet = self.sheet().map(|sheet| sheet.kind);
+        let finding = self.findings.add(&rules::UNREADABLE_LINE, place, firstpole_grammar::Fault::MissingColon.sentence());
+        finding.label("neither a heading nor a particular");
+        if let (Some(count), Some(kind)) = (label, sheet) {
+            let words: Vec<&str> = text.split_whitespace().collect();
+            let (label, value) = words.split_at_checked(count).unwrap_or((&[], &[]));
+            let (label, value) = (label.join(" "), value.join(" "));
+            finding.edit("put the colon in", place, format!("{label}: {value}"));
+            // The label is known to be meant, so no rule shall call it missing.
+            if let Lookup::Found(found) = particular::find(kind, &label) {
+                let (particular, about, limit) = Statement::of(&found);
+                let statement =
+                    Statement { particular, about, limit, label: place, value: place, reading: Reading::Unknown, chosen: None };
+                self.keep(line, statement);
+            }
+        }
+    }
+
+    fn open(&mut self, line: &Line, kind: SheetKind, kind_place: Place, name: Option<&Name>, links: Vec<(firstpole_grammar::Link, Place)>) {
+        let heading = self.place(line, Span::new(0, line.len));
+        let start = kind_place.span.start;
+        let end = links
+            .iter()
+            .map(|(_, place)| place.span.end)
+            .chain(name.map(|name| line.place(name.span).end))
+            .max()
+            .unwrap_or(kind_place.span.end);
+        let id = SheetId(self.sheets.len() as u32);
+        let name_place = name.map_or(kind_place, |name| self.place(line, name.span));
+        if kind.named() && name.is_none() {
+            let message = format!("a {} needs a name", kind.word());
+            self.findings.add(&rules::NAME_MISSING, kind_place, message).label("name is missing");
+        } else if let Some(name) = name.filter(|_| !kind.named()) {
+            let message = format!("a {} has no name of its own: {}", kind.word(), name.text);
+            self.findings.add(&rules::UNREADABLE_LINE, name_place, message).label("does not belong here");
+        }
+        self.sheets.push(Sheet {
+            id,
+            kind,
+            name: name_of(name),
+            name_place,
+            heading: Place::new(self.id, Span::new(start, end)),
+            links,
+            targets: Vec::new(),
+            statements: Vec::new(),
+            own: Vec::new(),
+            end: Place::new(self.id, Span::new(heading.span.end, heading.span.end)),
+        });
+        self.current = Some(id);
+        self.silent = false;
+    }
+
+    fn check_links(&mut self, line: &Line, kind: SheetKind, heading: &Heading) {
+        for (at, link) in heading.links.iter().enumerate() {
+            let place = self.place(line, link.span);
+            if !kind.links().iter().any(|(word, _)| *word == link.word) {
+                let words: Vec<&str> = kind.links().iter().map(|(word, _)| *word).collect();
+                let admitted = if words.is_empty() { "none".to_owned() } else { words.join(", ") };
+                let message = format!("a {} has no link {}; its links are: {admitted}", kind.word(), link.word);
+                self.findings.add(&rules::LINK_MISPLACED, place, message).label("not a link of this sheet");
+            } else if heading.links.iter().take(at).any(|earlier| earlier.word == link.word) {
+                let message = format!("{} stands twice in this heading", link.word);
+                self.findings.add(&rules::LINK_MISPLACED, place, message).label("again");
+            }
+        }
+    }
+
+    fn particular(&mut self, line: &Line, written: &WrittenParticular) {
+        let label_place = self.place(line, written.label_span);
+        let value_place = self.place(line, written.value.span);
+        let Some(kind) = self.sheet().map(|sheet| sheet.kind) else {
+            if !self.silent {
+                let message = "this stands before the first heading and belongs to no sheet";
+                self.findings.add(&rules::OUTSIDE_SHEET, label_place, message).label("belongs to no sheet");
+                self.silent = true;
+            }
+            return;
+        };
+        if written.own {
+            let text = value_place.span.of(&self.file.text).trim_matches('"').to_owned();
+            let end = self.place(line, Span::new(line.len, line.len));
+            if let Some(sheet) = self.sheet() {
+                sheet.own.push(OwnLine { label: written.label.clone(), text, place: value_place });
+                sheet.end = end;
+            }
+            return;
+        }
+        match particular::find(kind, &written.label) {
+            Lookup::Found(found) => {
+                let (particular, about, limit) = Statement::of(&found);
+                let reading = self.value(particular, about, value_place, &written.value);
+                let statement =
+                    Statement { particular, about, limit, label: label_place, value: value_place, reading, chosen: None };
+                self.keep(line, statement);
+            }
+            Lookup::Refused { symbol, readings } => {
+                let said: Vec<&str> = readings.iter().map(|particular| particular.label).collect();
+                let message = format!("{symbol} stands for more than one thing in the trade: {}", said.join(", or "));
+                let finding = self.findings.add(&rules::AMBIGUOUS_SYMBOL, label_place, message);
+                finding.label("say which").stated(written.label.as_str());
+                for reading in readings {
+                    finding.edit(format!("write {}", reading.label), label_place, reading.label);
+                }
+                if let Some(sheet) = self.sheet() {
+                    sheet.end = Place::new(sheet.end.file, Span::new(line.start + line.len, line.start + line.len));
+                }
+            }
+            Lookup::Unknown => self.unknown_label(kind, &written.label, label_place),
+        }
+    }
+
+    fn unknown_label(&mut self, kind: SheetKind, label: &str, place: Place) {
+        let elsewhere = particular::others_with_label(kind, label);
+        if !elsewhere.is_empty() {
+            let sheets: Vec<&str> = elsewhere.iter().map(|sheet| sheet.word()).collect();
+            let message = format!("{label} is a particular of {}, not of {}", sheets.join(" and "), kind.word());
+            self.findings.add(&rules::MISPLACED_LABEL, place, message).label("belongs to another sheet").stated(label);
+            return;
+        }
+        let near = particular::nearest(kind, label, 3);
+        let message = match near.first() {
+            Some(first) => format!("{label} is no particular of {}; {first} is near", kind.word()),
+            None => format!("{label} is no particular of {}; a label of your own stands in quotes", kind.word()),
+        };
+        let finding = self.findings.add(&rules::UNKNOWN_LABEL, place, message);
+        finding.label("unknown label").stated(label);
+        for wording in near {
+            finding.edit(format!("write {wording}"), place, wording);
+        }
+        finding.edit("keep it as a label of your own, in quotes", place, format!("\"{label}\""));
+    }
+
+    fn value(
+        &mut self,
+        particular: &'static particular::Particular,
+        about: super::About,
+        place: Place,
+        written: &ValueText,
+    ) -> Reading {
+        let text = place.span.of(&self.file.text);
+        if about == super::About::Reason {
+            return match &written.form {
+                ValueForm::Missing => Reading::Open(None),
+                _ => Reading::Text(text.trim_matches('"').to_owned()),
+            };
+        }
+        Reader { findings: self.findings, particular, place, text }.read(written)
+    }
+
+    /// Puts a statement into the current sheet; `20 kA for 1 s` states two particulars.
+    fn keep(&mut self, line: &Line, statement: Statement) {
+        let end = self.place(line, Span::new(line.len, line.len));
+        let duration = statement.quantity().and_then(|quantity| {
+            let measure = quantity.lasting.filter(|_| statement.states(&breaker::RATED_SHORT_TIME_WITHSTAND_CURRENT))?;
+            let mut own = quantity.clone();
+            own.measure = measure;
+            own.second = None;
+            own.lasting = None;
+            own.again = Vec::new();
+            own.qualifiers = Vec::new();
+            Some(Statement { particular: &breaker::RATED_DURATION_OF_SHORT_CIRCUIT, reading: Reading::Quantity(own), ..statement.clone() })
+        });
+        if let Some(sheet) = self.sheet() {
+            sheet.statements.push(statement);
+            sheet.statements.extend(duration);
+            sheet.end = end;
+        }
+    }
+}
+
+fn nearest_kind(word: &str) -> Option<SheetKind> {
+    let lower = word.to_lowercase();
+    SheetKind::ALL
+        .into_iter()
+        .map(|kind| (strsim::normalized_damerau_levenshtein(kind.word(), &lower), kind))
+        .filter(|(near, _)| *near >= 0.7)
+        .max_by(|a, b| a.0.total_cmp(&b.0))
+        .map(|(_, kind)| kind)
+}

@@ -1,0 +1,272 @@
+//! What the links of headings point at, over a set of files.
+
+use std::collections::BTreeMap;
+
+use super::{Set, Sheet, SheetId};
+use crate::finding::Findings;
+use crate::particular::{SheetKind, Target};
+use crate::rules::reading as rules;
+use crate::source::{FileId, Place};
+
+/// What a link points at.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub enum LinkTarget {
+    /// A sheet.
+    Sheet(SheetId),
+    /// A rule, by its name.
+    Rule(&'static str),
+}
+
+/// Which files each file can refer to, itself first.
+#[derive(Clone, Debug, Default)]
+pub struct Scope {
+    reach: Vec<Vec<FileId>>,
+}
+
+impl Scope {
+    /// The files that `file` can refer to, itself first.
+    pub fn of(&self, file: FileId) -> &[FileId] {
+        self.reach.get(file.0 as usize).map_or(&[], Vec::as_slice)
+    }
+}
+
+/// The scope of every file, from what uses what; circles are found and cut.
+pub(super) fn scope(files: usize, uses: &[(FileId, FileId, Place)], findings: &mut Findings) -> Scope {
+    let mut reach = Vec::with_capacity(files);
+    for file in 0..files as u32 {
+        let mut seen = vec![FileId(file)];
+        let mut at = 0;
+        while let Some(from) = seen.get(at).copied() {
+            for (_, used, place) in uses.iter().filter(|(user, _, _)| *user == from) {
+                if *used == FileId(file) {
+                    let message = "these files use each other in a circle; the sheets are read once, but nobody can tell which file comes first";
+                    findings.add(&rules::CIRCLE, *place, message).label("closes the circle");
+                } else if !seen.contains(used) {
+                    seen.push(*used);
+                }
+            }
+            at += 1;
+        }
+        reach.push(seen);
+    }
+    Scope { reach }
+}
+
+/// Resolves the links of every sheet.
+pub(super) fn resolve(set: &mut Set, rule_names: &[&'static str], findings: &mut Findings) {
+    names_once(set, findings);
+    let by_name = index(set);
+    let mut resolved = Vec::with_capacity(set.sheets.len());
+    for sheet in &set.sheets {
+        resolved.push(targets(set, &by_name, sheet, rule_names, findings));
+    }
+    for (sheet, targets) in set.sheets.iter_mut().zip(resolved) {
+        sheet.targets = targets;
+    }
+    cut_circles(set, findings);
+    defaults(set, findings);
+}
+
+type Index = BTreeMap<(FileId, String), Vec<SheetId>>;
+
+fn index(set: &Set) -> Index {
+    let mut index = Index::new();
+    for sheet in set.sheets.iter().filter(|sheet| !sheet.name.is_empty()) {
+        index.entry((sheet.file(), sheet.name.clone())).or_default().push(sheet.id);
+    }
+    index
+}
+
+fn lookup<'a>(set: &'a Set, index: &Index, file: FileId, name: &str, kinds: &[SheetKind]) -> Option<&'a Sheet> {
+    // Kinds in the order of preference, then files, so that a breaker is found before a system of its name.
+    kinds.iter().find_map(|kind| {
+        set.scope.of(file).iter().find_map(|id| {
+            let sheets = index.get(&(*id, name.to_owned()))?;
+            sheets.iter().filter_map(|id| set.sheet(*id)).find(|sheet| sheet.kind == *kind)
+        })
+    })
+}
+
+fn targets(
+    set: &Set,
+    index: &Index,
+    sheet: &Sheet,
+    rule_names: &[&'static str],
+    findings: &mut Findings,
+) -> Vec<(&'static str, LinkTarget)> {
+    let mut found: Vec<(&'static str, LinkTarget)> = Vec::new();
+    for (link, place) in &sheet.links {
+        let Some((word, target)) = sheet.kind.links().iter().find(|(word, _)| *word == link.word) else { continue };
+        if found.iter().any(|(earlier, _)| earlier == word) {
+            continue;
+        }
+        let name = link.name.text.as_str();
+        match target {
+            Target::Rule => match rule_names.iter().find(|rule| **rule == name) {
+                Some(rule) => found.push((word, LinkTarget::Rule(rule))),
+                None => {
+                    let near = nearest(rule_names.iter().copied(), name);
+                    unknown(findings, *place, "rule", name, near);
+                }
+            },
+            Target::Sheet(kinds) => match lookup(set, index, sheet.file(), name, kinds) {
+                Some(target) if target.id == sheet.id => {
+                    let message = format!("{} refers to itself", sheet.title());
+                    findings.add(&rules::CIRCLE, *place, message).label("itself");
+                }
+                Some(target) => found.push((word, LinkTarget::Sheet(target.id))),
+                None => {
+                    let reach = set.scope.of(sheet.file());
+                    let names = set
+                        .sheets
+                        .iter()
+                        .filter(|s| kinds.contains(&s.kind) && s.id != sheet.id && reach.contains(&s.file()))
+                        .map(|s| s.name.as_str());
+                    let near = nearest(names, name);
+                    let kinds: Vec<&str> = kinds.iter().map(|kind| kind.word()).collect();
+                    unknown(findings, *place, &kinds.join(" or "), name, near);
+                }
+            },
+        }
+    }
+    found
+}
+
+fn unknown(findings: &mut Findings, place: Place, what: &str, name: &str, near: Option<&str>) {
+    let message = match near {
+        Some(near) => format!("there is no {what} {name}; {near} is near"),
+        None => format!("there is no {what} {name} in this file or in those that it uses"),
+    };
+    let finding = findings.add(&rules::LINK_UNKNOWN, place, message);
+    finding.label("not found").stated(name);
+    if let Some(near) = near {
+        let quoted = near.chars().all(|c| c.is_alphanumeric() || c == '_' || c == '-');
+        finding.replace_by(if quoted { near.to_owned() } else { format!("\"{near}\"") });
+    }
+}
+
+fn nearest<'a>(names: impl Iterator<Item = &'a str>, wanted: &str) -> Option<&'a str> {
+    let wanted = wanted.to_lowercase();
+    names
+        .map(|name| (strsim::normalized_damerau_levenshtein(&name.to_lowercase(), &wanted), name))
+        .filter(|(near, _)| *near >= 0.6)
+        .max_by(|a, b| a.0.total_cmp(&b.0))
+        .map(|(_, name)| name)
+}
+
+/// Two sheets of one kind and name in one file, or a second tender.
+fn names_once(set: &Set, findings: &mut Findings) {
+    let mut first: BTreeMap<(FileId, &'static str, &str), &Sheet> = BTreeMap::new();
+    for sheet in &set.sheets {
+        // `like` finds families and breakers alike, so they share their names.
+        let room = match sheet.kind {
+            SheetKind::Family | SheetKind::Breaker => "breaker or family",
+            kind => kind.word(),
+        };
+        let name = if sheet.kind == SheetKind::Tender { "" } else { sheet.name.as_str() };
+        if name.is_empty() && sheet.kind != SheetKind::Tender {
+            continue;
+        }
+        if let Some(earlier) = first.get(&(sheet.file(), room, name)) {
+            let message = if name.is_empty() {
+                "a file holds one tender; this is the second".to_owned()
+            } else {
+                format!("a {room} of the name {name} is there already")
+            };
+            findings
+                .add(&rules::NAME_TWICE, sheet.name_place, message)
+                .label("second of its name")
+                .related(earlier.name_place, "the first");
+        } else {
+            first.insert((sheet.file(), room, name), sheet);
+        }
+    }
+}
+
+/// A chain of `like` (or `through`) that comes back to its start is cut at the link that closes it.
+fn cut_circles(set: &mut Set, findings: &mut Findings) {
+    for word in ["like", "through"] {
+        for at in 0..set.sheets.len() {
+            let id = SheetId(at as u32);
+            let mut seen = vec![id];
+            let mut next = set.sheet(id).and_then(|sheet| sheet.target(word));
+            while let Some(target) = next {
+                if seen.contains(&target) {
+                    break;
+                }
+                seen.push(target);
+                next = set.sheet(target).and_then(|sheet| sheet.target(word));
+            }
+            // Only the circle that this sheet itself is part of, and only at its last member in the text.
+            if next == Some(id) && seen.iter().max() == Some(&id) {
+                if let Some(sheet) = set.sheets.get_mut(at) {
+                    sheet.targets.retain(|(w, _)| *w != word);
+                    let place = sheet.links.iter().find(|(link, _)| link.word == word).map_or(sheet.heading, |(_, place)| *place);
+                    let message = format!("{} comes back to itself through {word}; this link is left out", sheet.title());
+                    findings.add(&rules::CIRCLE, place, message).label("closes the circle");
+                }
+            }
+        }
+    }
+}
+
+/// Links that were left out: taken over through `like`, or the only sheet in reach.
+fn defaults(set: &mut Set, findings: &mut Findings) {
+    let mut added = Vec::new();
+    for sheet in &set.sheets {
+        for (word, kind) in wanted(sheet.kind) {
+            if sheet.target(word).is_some() || sheet.links.iter().any(|(link, _)| link.word == *word) {
+                continue;
+            }
+            let inherited = inherited(set, sheet, word);
+            let mut in_reach = set.in_reach(sheet.file(), *kind);
+            match (inherited, in_reach.next(), in_reach.next()) {
+                (Some(id), _, _) => added.push((sheet.id, *word, id)),
+                (None, Some(only), None) => added.push((sheet.id, *word, only.id)),
+                (None, Some(first), Some(second)) => {
+                    let message = format!(
+                        "{} does not say {word} which {}; {} and {} are both in reach",
+                        sheet.title(),
+                        kind.word(),
+                        first.name,
+                        second.name
+                    );
+                    let finding = findings.add(&rules::LINK_NEEDED, sheet.heading, message);
+                    finding.label(format!("{word} ... is missing"));
+                    for other in [first, second] {
+                        finding.edit(format!("write {word} {}", other.name), sheet.heading.end(), format!(" {word} {}", other.name));
+                    }
+                }
+                (None, None, _) => {}
+            }
+        }
+    }
+    for (id, word, target) in added {
+        if let Some(sheet) = set.sheets.get_mut(id.0 as usize) {
+            sheet.targets.push((word, LinkTarget::Sheet(target)));
+        }
+    }
+}
+
+const fn wanted(kind: SheetKind) -> &'static [(&'static str, SheetKind)] {
+    match kind {
+        SheetKind::Breaker => &[("on", SheetKind::System), ("at", SheetKind::Site)],
+        SheetKind::Circuit | SheetKind::Offer => &[("for", SheetKind::Breaker)],
+        SheetKind::Infeed => &[("into", SheetKind::System)],
+        SheetKind::Deviation => &[("in", SheetKind::Breaker)],
+        _ => &[],
+    }
+}
+
+fn inherited(set: &Set, sheet: &Sheet, word: &str) -> Option<SheetId> {
+    let mut next = sheet.target("like");
+    let mut steps = 0;
+    while let Some(above) = next.and_then(|id| set.sheet(id)) {
+        if let Some(target) = above.target(word) {
+            return Some(target);
+        }
+        steps += 1;
+        next = above.target("like").filter(|_| steps < set.sheets.len());
+    }
+    None
+}

@@ -1,0 +1,188 @@
+//! Sheets: what the lines of a set of files say, with the place of every value.
+
+mod build;
+mod facts;
+mod link;
+mod read_quantity;
+mod read_value;
+mod reading;
+
+pub use build::build;
+pub use facts::{Facts, Stated};
+pub use link::{LinkTarget, Scope};
+pub use reading::{Class, Date, Item, Mixture, Pause, QuantityReading, Reading, Sequence, SequenceStep, Share};
+
+use firstpole_grammar::{Link, Name};
+
+use crate::particular::{Found, Limit, Particular, SheetKind};
+use crate::source::{FileId, Place};
+
+/// A sheet of the set.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
+pub struct SheetId(pub u32);
+
+/// A sheet: its heading and what stands under it.
+#[derive(Clone, Debug)]
+pub struct Sheet {
+    /// Which one it is.
+    pub id: SheetId,
+    /// What it describes.
+    pub kind: SheetKind,
+    /// Its name; for a tender its title, empty where it is missing.
+    pub name: String,
+    /// Where the name stands; the word of the kind where it is missing.
+    pub name_place: Place,
+    /// The heading, from the word of its kind to its last link.
+    pub heading: Place,
+    /// The links as they were written.
+    pub links: Vec<(Link, Place)>,
+    /// What the links point at, as far as they could be resolved, with the word of each.
+    pub targets: Vec<(&'static str, LinkTarget)>,
+    /// The particulars, in the order of the text.
+    pub statements: Vec<Statement>,
+    /// The buyer's own labels, with their texts.
+    pub own: Vec<OwnLine>,
+    /// The end of the sheet's last line that says something: where a new particular is put.
+    pub end: Place,
+}
+
+impl Sheet {
+    /// The file that it stands in.
+    pub const fn file(&self) -> FileId {
+        self.heading.file
+    }
+
+    /// The sheet that the link `word` points at.
+    pub fn target(&self, word: &str) -> Option<SheetId> {
+        self.targets.iter().find(|(w, _)| *w == word).and_then(|(_, target)| match target {
+            LinkTarget::Sheet(id) => Some(*id),
+            LinkTarget::Rule(_) => None,
+        })
+    }
+
+    /// `breaker LineBay`: how messages call it.
+    pub fn title(&self) -> String {
+        if self.name.is_empty() { self.kind.word().to_owned() } else { format!("{} {}", self.kind.word(), self.name) }
+    }
+}
+
+/// A label of the buyer's own.
+#[derive(Clone, Debug)]
+pub struct OwnLine {
+    /// The label, without quotes.
+    pub label: String,
+    /// The value, as written.
+    pub text: String,
+    /// Where the value stands.
+    pub place: Place,
+}
+
+/// One particular as it is stated.
+#[derive(Clone, Debug)]
+pub struct Statement {
+    /// What is stated.
+    pub particular: &'static Particular,
+    /// Whether it is the reason for the particular, or its tested value.
+    pub about: About,
+    /// The bound that the label set.
+    pub limit: Option<Limit>,
+    /// Where the label stands.
+    pub label: Place,
+    /// Where the value stands.
+    pub value: Place,
+    /// What was read there.
+    pub reading: Reading,
+    /// The working of the value, where the checker chose it.
+    pub chosen: Option<String>,
+}
+
+/// What a statement says about its particular.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum About {
+    /// Its value.
+    Value,
+    /// Why it is wanted.
+    Reason,
+    /// What a report proves of it.
+    Tested,
+}
+
+impl Statement {
+    /// The quantity, if one was read.
+    pub fn quantity(&self) -> Option<&QuantityReading> {
+        match &self.reading {
+            Reading::Quantity(quantity) => Some(quantity),
+            _ => None,
+        }
+    }
+
+    /// Whether it states the value of `particular`.
+    pub fn states(&self, particular: &Particular) -> bool {
+        self.about == About::Value && self.particular.is(particular)
+    }
+
+    const fn of(found: &Found) -> (&'static Particular, About, Option<Limit>) {
+        match found {
+            Found::Particular { particular, limit } => (particular, About::Value, *limit),
+            Found::ReasonFor(particular) => (particular, About::Reason, None),
+            Found::TypeTested(particular) => (particular, About::Tested, None),
+        }
+    }
+}
+
+/// The sheets of a set of files, resolved.
+#[derive(Debug, Default)]
+pub struct Set {
+    /// The sheets, file by file, in the order of the text.
+    pub sheets: Vec<Sheet>,
+    /// Which files each file can refer to, itself first.
+    pub scope: Scope,
+}
+
+impl Set {
+    /// A sheet.
+    pub fn sheet(&self, id: SheetId) -> Option<&Sheet> {
+        self.sheets.get(id.0 as usize)
+    }
+
+    /// The sheets of one kind that `file` can refer to, in the order of the text, its own first.
+    pub fn in_reach(&self, file: FileId, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
+        self.scope
+            .of(file)
+            .iter()
+            .flat_map(move |id| self.sheets.iter().filter(move |sheet| sheet.file() == *id && sheet.kind == kind))
+    }
+
+    /// The sheets of one kind.
+    pub fn of_kind(&self, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
+        self.sheets.iter().filter(move |sheet| sheet.kind == kind)
+    }
+
+    /// What a sheet states, with what it takes over through `like`: its own statements first, then those of the sheets that it
+    /// is like, nearest first, for particulars that were not stated before.
+    pub fn resolved(&self, id: SheetId) -> Vec<Statement> {
+        let mut all: Vec<Statement> = Vec::new();
+        let mut next = Some(id);
+        let mut seen = Vec::new();
+        while let Some(sheet) = next.filter(|id| !seen.contains(id)).and_then(|id| self.sheet(id)) {
+            seen.push(sheet.id);
+            let above = all.len();
+            for statement in &sheet.statements {
+                let nearer = all.get(..above).unwrap_or(&[]);
+                let replaced = nearer
+                    .iter()
+                    .any(|s| s.particular.is(statement.particular) && s.about == statement.about && s.limit == statement.limit);
+                if !replaced {
+                    all.push(statement.clone());
+                }
+            }
+            next = sheet.target("like");
+        }
+        all
+    }
+}
+
+/// The name of a heading, if it has one.
+fn name_of(name: Option<&Name>) -> String {
+    name.map(|n| n.text.clone()).unwrap_or_default()
+}

@@ -1,0 +1,26 @@
+//! Standard first-pole-to-clear and out-of-phase voltage factors (IEC 62271-100 5.102, 5.105).
+
+use std::sync::LazyLock;
+
+use serde::Deserialize;
+
+use super::table;
+
+#[derive(Clone, Debug, Deserialize)]
+struct Row {
+    factor: f64,
+}
+
+static FIRST_POLE: LazyLock<Vec<Row>> = LazyLock::new(|| table::rows(include_str!("../../data/first_pole_factors.csv")));
+static OUT_OF_PHASE: LazyLock<Vec<Row>> = LazyLock::new(|| table::rows(include_str!("../../data/out_of_phase.csv")));
+
+/// The standard first-pole-to-clear factors, least first.
+pub fn first_pole_factors() -> impl Iterator<Item = f64> {
+    FIRST_POLE.iter().map(|row| row.factor)
+}
+
+/// The out-of-phase voltage factor by the earthing of the neutral.
+pub fn out_of_phase_factor(effectively_earthed: bool) -> Option<f64> {
+    let row = if effectively_earthed { OUT_OF_PHASE.first() } else { OUT_OF_PHASE.last() };
+    row.map(|row| row.factor)
+}

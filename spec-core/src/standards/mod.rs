@@ -1,0 +1,41 @@
+//! The tables of the standards: data with a source and a status in each row, never literals in a rule.
+//!
+//! Status: V read in a public source, F follows from a formula that can be derived, M from memory (MF: of a value that a rule
+//! reproduces), D in doubt. No current edition of a breaker standard was at hand; the tables must be held against the standards
+//! in force before use.
+
+mod currents;
+mod earthing;
+mod insulation;
+mod making;
+mod pressure;
+mod table;
+mod time_constants;
+mod trv_duties;
+mod voltages;
+
+pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration};
+pub use earthing::{first_pole_factors, out_of_phase_factor};
+pub use insulation::{InsulationLevel, insulation_levels};
+pub use making::{MakingCase, making_factor};
+pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE};
+pub use time_constants::{TimeConstantCase, TimeConstants};
+pub use trv_duties::{Duty, DutyRow, SystemClass, VoltageRange, duty_row, s1_time};
+pub use voltages::{is_rated_voltage, nominal_as_rated, rated_at_or_above, rated_voltages, steps_between_voltages, usual_rated};
+
+use serde::Deserialize;
+
+/// A family of standards.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Deserialize)]
+#[serde(rename_all = "lowercase")]
+pub enum Regime {
+    /// IEC.
+    Iec,
+    /// IEEE.
+    Ieee,
+}
+
+/// Whether two values of a table are one: within a hundredth of a percent, since they are read from decimal text.
+fn same(a: f64, b: f64) -> bool {
+    (a - b).abs() <= 1e-4 * a.abs().max(b.abs())
+}

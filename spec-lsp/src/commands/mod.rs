@@ -1,0 +1,4 @@
+//! One file a command.
+
+pub mod assess;
+pub mod clause;
