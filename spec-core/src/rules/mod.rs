@@ -5,12 +5,16 @@
 
 use crate::case::Case;
 use crate::finding::{FindingKind, Findings};
-use crate::sheet::Set;
+use crate::particular::breaker;
+use crate::quantity::ElectricCurrent;
+use crate::sheet::{Set, Stated};
 
 pub mod completeness;
 pub mod continuous_current;
+pub mod dc_component;
 pub mod deviations;
 pub mod earthing;
+pub mod fault_duties;
 pub mod gas;
 pub mod making;
 pub mod reading;
@@ -96,6 +100,14 @@ impl Default for Policy {
     }
 }
 
+/// Relative slack below which two values count as equal: printed digits, not physics.
+const EQUAL: f64 = 1e-4;
+
+/// The rated short-circuit breaking current, on which many ratings hang.
+fn breaking_current<'a>(case: &'a Case<'_>) -> Option<Stated<'a, ElectricCurrent>> {
+    case.breaker.quantity(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT)
+}
+
 /// Every rule, subject by subject, in the order in which they are checked.
 pub fn standard() -> Vec<&'static Rule> {
     [
@@ -105,6 +117,8 @@ pub fn standard() -> Vec<&'static Rule> {
         voltage::ALL,
         continuous_current::ALL,
         short_circuit::ALL,
+        dc_component::ALL,
+        fault_duties::ALL,
         making::ALL,
         thermal::ALL,
         earthing::ALL,
