@@ -1,6 +1,494 @@
 //! Rules on gas and climate.
 
-use super::Rule;
+use super::{Check, Rule};
+use crate::case::Case;
+use crate::duty::{Level, LevelState, celsius, percent};
+use crate::finding::{Finding, FindingKind, Findings};
+use crate::particular::{Kind, Limit, Particular, Tail, breaker, site};
+use crate::physics::gas::{GasFault, Phase, sf6};
+use crate::quantity::{Physical, Pressure, ThermodynamicTemperature, significant};
+use crate::sheet::{QuantityReading, Stated, Statement};
+use crate::standards::{GAUGE_REFERENCE, REFERENCE_TEMPERATURE};
 
 /// The rules of this subject.
-pub static ALL: &[&Rule] = &[];
+pub static ALL: &[&Rule] = &[
+    &GAS_LIQUEFACTION,
+    &GAS_DENSITY_AT_COLD,
+    &GAS_LEVEL_ORDER,
+    &PRESSURE_REFERENCE,
+    &GAS_PRESSURE_HOT,
+    &INDOOR_CLASS_OUTDOORS,
+];
+
+const STATES: &str = "IEC 62271-1:2017 6.2 (from memory); equation of state of SF6 fitted to CoolProp 8.0.0, vapour pressure by \
+                      Guder and Wagner 2009 (from memory)";
+
+/// In the cold the gas keeps its minimum functional density.
+pub static GAS_LIQUEFACTION: Rule = Rule {
+    name: "gas-liquefaction",
+    title: "At the lowest ambient temperature the gas keeps its minimum functional density.",
+    kind: FindingKind::Shortfall,
+    basis: STATES,
+    formula: "lowest ambient >= dew point of the minimum functional level; of the filling where no level is stated",
+    explanation: "Below its dew point a pure gas condenses, and the density of what is left follows the saturation line, so that \
+                  lockout comes exactly at the dew point of the minimum functional level. Colder than that is a shortfall; colder \
+                  than the alarm level's dew point is gas-density-at-cold; colder than the filling's alone is a remark, since the \
+                  breaker works down to its minimum level. Heaters count by the rise that they declare. Silent without a lowest \
+                  ambient temperature and for gases other than pure SF6.",
+    check: Check::Case(liquefaction),
+};
+
+/// At the lowest ambient temperature the alarm does not stand in the cold alone.
+pub static GAS_DENSITY_AT_COLD: Rule = Rule {
+    name: "gas-density-at-cold",
+    title: "At the lowest ambient temperature the remaining vapour is not below the alarm level though nothing leaks.",
+    kind: FindingKind::Caution,
+    basis: STATES,
+    formula: "lowest ambient >= dew point of the alarm level",
+    explanation: "Between the dew points of the alarm and of the minimum functional level the breaker works, and its alarm stands \
+                  all through the cold: a leak would then not be noticed. One finding for one cause: below the minimum functional \
+                  level gas-liquefaction speaks alone.",
+    check: Check::Elsewhere,
+};
+
+fn liquefaction(case: &Case<'_>, findings: &mut Findings) {
+    let gas = &case.duty.gas;
+    let Some(lowest) = gas.lowest.as_ref() else { return };
+    let Some(filling) = gas.level(Level::Filling) else { return };
+    if let Err(fault) = &filling.density {
+        return refused(findings, filling, *fault);
+    }
+    let condenses = |level: Level| {
+        let state = gas.level(level)?;
+        let (dew, _) = state.dew_point.as_ref()?;
+        (lowest.value.si() < dew.value.si()).then_some(state)
+    };
+    let stated = |level: Level| gas.level(level).is_some();
+    let locked_out = condenses(Level::Minimum);
+    let alarmed = condenses(Level::Alarm);
+    let liquid = condenses(Level::Filling);
+    let finding = match (locked_out, alarmed, liquid) {
+        (Some(state), _, _) => begin(findings, &GAS_LIQUEFACTION, case, state, "below it in the cold: lockout"),
+        (None, Some(state), _) => begin(findings, &GAS_DENSITY_AT_COLD, case, state, "the alarm stands in the cold"),
+        (None, None, Some(state)) => {
+            let finding = begin(findings, &GAS_LIQUEFACTION, case, state, "condenses in the cold");
+            if stated(Level::Alarm) || stated(Level::Minimum) {
+                finding.kind(FindingKind::Remark);
+            }
+            finding
+        }
+        (None, None, None) => return,
+    };
+    tell(case, finding);
+}
+
+/// The claim, graded by the level that is left.
+fn begin<'f>(
+    findings: &'f mut Findings,
+    rule: &'static Rule,
+    case: &Case<'_>,
+    state: &LevelState,
+    label: &str,
+) -> &'f mut Finding {
+    let gas = &case.duty.gas;
+    let dew = |level: Level| gas.level(level).and_then(|s| s.dew_point.as_ref());
+    let lowest = gas.lowest.as_ref().map_or_else(String::new, |l| celsius(l.value));
+    let filling = gas.level(Level::Filling).map_or_else(String::new, |f| f.measure.to_string());
+    let (from, phase) = dew(Level::Filling).map_or((String::new(), Phase::Liquid), |(d, c)| (celsius(d.value), c.phase));
+    let becomes = if phase == Phase::Frost { "come down as frost" } else { "liquefy" };
+    let own = state.dew_point.as_ref().map_or_else(String::new, |(dew, _)| celsius(dew.value));
+    let message = match state.level {
+        Level::Filling => format!("SF6 filled to {filling} begins to {becomes} at {from}, and the site goes down to {lowest}"),
+        level => format!(
+            "SF6 filled to {filling} begins to {becomes} at {from}; at {lowest} the vapour that is left stands below the {} {}, \
+             which is reached at {own}",
+            level.word(),
+            state.measure
+        ),
+    };
+    let finding = findings.add(rule, state.place, message);
+    finding.label(label).stated(&state.measure);
+    finding
+}
+
+/// The numbers behind it, and what would do.
+fn tell(case: &Case<'_>, finding: &mut Finding) {
+    let gas = &case.duty.gas;
+    for state in &gas.levels {
+        if let Some((dew, _)) = &state.dew_point {
+            finding.working(format!("dew point of the {}, {}: {}", state.level.word(), state.measure, celsius(dew.value)));
+        }
+    }
+    if let (Some(condensed), Some(remaining), Some(lowest)) = (&gas.condensed, &gas.remaining, &gas.lowest) {
+        finding.working(format!(
+            "at {} {} of the gas is condensed, and the vapour left stands for {}",
+            celsius(lowest.value),
+            percent(condensed.value.value),
+            remaining.working.result
+        ));
+    }
+    if let Some(ambient) = crate::duty::lowest_ambient(case) {
+        finding.beside(ambient.statement, "the lowest ambient temperature");
+    }
+    let mut advice = Vec::new();
+    if let Some(highest) = &gas.highest_filling {
+        finding.needed(format!("at most {}", highest.working.result));
+        advice.push(format!("the highest filling of SF6 that does not condense there is {}", highest.working.result));
+    }
+    let decisive = gas.level(Level::Minimum).or_else(|| gas.level(Level::Filling)).and_then(|s| s.dew_point.as_ref());
+    if let (Some((dew, _)), Some(lowest)) = (decisive, &gas.lowest) {
+        let rise = dew.value.si() - lowest.value.si();
+        if rise > 0.0 {
+            advice.push(format!("heaters would have to keep the gas {} K above the air", significant(rise.ceil(), 3)));
+        }
+    }
+    if finding.kind < FindingKind::Excess {
+        advice.push("a mixture or another medium is the third way".to_owned());
+    }
+    finding.advice(advice.join("; "));
+}
+
+/// A filling of which nothing can be told: the bound that was left is named.
+fn refused(findings: &mut Findings, filling: &LevelState, fault: GasFault) {
+    let message = format!("of a filling of {} nothing can be told: {fault}", filling.measure);
+    let finding = findings.add(&GAS_LIQUEFACTION, filling.place, message);
+    finding.label("outside of what can be computed").stated(&filling.measure);
+    if !matches!(fault, GasFault::Saturated { .. }) {
+        finding.kind(FindingKind::Caution);
+    }
+}
+
+/// The levels of a gas, in the order in which they have to fall.
+const LEVELS: [&Particular; 4] = [
+    &breaker::RATED_FILLING_PRESSURE,
+    &breaker::ALARM_PRESSURE,
+    &breaker::LOCKOUT_PRESSURE,
+    &breaker::MINIMUM_FUNCTIONAL_PRESSURE,
+];
+
+const OTHER_LEVELS: [&Particular; 4] = [
+    &breaker::OTHER_COMPARTMENTS_FILLING_PRESSURE,
+    &breaker::OTHER_COMPARTMENTS_ALARM_PRESSURE,
+    &breaker::OTHER_COMPARTMENTS_LOCKOUT_PRESSURE,
+    &breaker::OTHER_COMPARTMENTS_MINIMUM_FUNCTIONAL_PRESSURE,
+];
+
+/// The gas levels fall in order.
+pub static GAS_LEVEL_ORDER: Rule = Rule {
+    name: "gas-level-order",
+    title: "The gas levels fall in order: filling, alarm, lockout, minimum functional.",
+    kind: FindingKind::Contradiction,
+    basis: "IEC 62271-1:2017 definitions 3.6.5 (from memory)",
+    formula: "filling > alarm > lockout >= minimum functional, as absolute pressures",
+    explanation: "An alarm above the filling would never go out, and a lockout above the alarm would come without a warning. Gauge \
+                  levels are referred to 101.3 kPa; two levels of which only one says whether it is gauge are not compared. Also \
+                  for a second filling of other compartments.",
+    check: Check::Case(order),
+};
+
+fn order(case: &Case<'_>, findings: &mut Findings) {
+    for levels in [LEVELS, OTHER_LEVELS] {
+        let known: Vec<_> = levels
+            .iter()
+            .enumerate()
+            .filter_map(|(rank, particular)| {
+                let (reading, statement) = case.breaker.quantity_reading(particular)?;
+                Some((rank, reading, reading.absolute()?, statement))
+            })
+            .collect();
+        for pair in known.windows(2) {
+            let [(_, above_reading, above, above_statement), (rank, reading, below, statement)] = pair else { continue };
+            // Reference temperatures apart, or one reference unsaid: not one scale.
+            if above.stated != below.stated || above_reading.at.map(|m| m.si) != reading.at.map(|m| m.si) {
+                continue;
+            }
+            let (high, low) = (above.pressure.si(), below.pressure.si());
+            let touching = (high - low).abs() <= 1e-6 * high;
+            let may_touch = *rank == levels.len() - 1 && above_statement.particular.is(levels.get(2).copied().unwrap_or(above_statement.particular));
+            if high > low && !touching || touching && may_touch {
+                continue;
+            }
+            let relation = if touching { "is the same as" } else { "is above" };
+            let message = format!(
+                "the {} {} {relation} the {} {}",
+                statement.particular.label, reading.measure, above_statement.particular.label, above_reading.measure
+            );
+            findings
+                .add(&GAS_LEVEL_ORDER, statement.value, message)
+                .label("out of order")
+                .stated(&reading.measure)
+                .needed(format!("below {}", above_reading.measure))
+                .working("filling > alarm > lockout >= minimum functional")
+                .beside(above_statement, "the level that has to be above it")
+                .advice("two lines may have been swapped");
+        }
+    }
+}
+
+/// A pressure says whether it is absolute or gauge.
+pub static PRESSURE_REFERENCE: Rule = Rule {
+    name: "pressure-reference",
+    title: "A gas pressure says whether it is absolute or gauge.",
+    kind: FindingKind::Omission,
+    basis: "guidance of the trade on gas units (from memory); common practice",
+    formula: "abs or gauge; at 20 degC where no other temperature is stated",
+    explanation: "The same number as gauge is about 0.1 MPa more, which moves the dew point of SF6 by 4 to 5 K. A bare pressure is \
+                  read as absolute and never refused. A second statement in brackets that carries its reference resolves the first.",
+    check: Check::Case(reference),
+};
+
+fn reference(case: &Case<'_>, findings: &mut Findings) {
+    for statement in case.breaker.statements() {
+        let Kind::Quantity(kind) = &statement.particular.kind else { continue };
+        let Some(reading) = statement.quantity().filter(|_| kind.tail == Tail::PressureReference) else { continue };
+        let Some(absolute) = reading.absolute().filter(|a| !a.stated) else { continue };
+        let as_gauge = absolute.pressure + GAUGE_REFERENCE.value();
+        let mut message = format!("{}: gauge or absolute?", reading.measure);
+        if let (Some(read), Some(other)) = (dew_of(case, absolute.pressure), dew_of(case, as_gauge)) {
+            message += &format!(" As absolute it condenses from {read}, as gauge from {other}");
+        }
+        let place = reading.place;
+        let finding = findings.add(&PRESSURE_REFERENCE, place, message);
+        finding.label("abs or gauge?").stated(&reading.measure).advice("it is read as absolute until the text says so");
+        for word in ["abs", "gauge"] {
+            finding.edit(format!("write {} {word}", reading.measure), place, with_reference(reading, word));
+        }
+    }
+}
+
+fn with_reference(reading: &QuantityReading, word: &str) -> String {
+    let at = reading.at.map(|at| format!(" at {at}")).unwrap_or_default();
+    format!("{} {word}{at}", reading.measure)
+}
+
+/// The dew point of SF6 filled to a pressure at 20 degC, where that is the gas.
+fn dew_of(case: &Case<'_>, pressure: Pressure) -> Option<String> {
+    case.duty.gas.levels.first()?;
+    let density = sf6().density(pressure, ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE)).ok()?;
+    sf6().dew_point(density).ok().map(|dew| celsius(dew.temperature))
+}
+
+/// In the heat the pressure is known.
+pub static GAS_PRESSURE_HOT: Rule = Rule {
+    name: "gas-pressure-hot",
+    title: "Where it gets hotter than 40 degC, the gas pressure at the highest temperature is stated.",
+    kind: FindingKind::Caution,
+    basis: "IEC 62271-1:2017 4.2.4 (from memory)",
+    formula: "highest ambient > 40 degC: pressure at the highest ambient temperature stated",
+    explanation: "The enclosure and its relief have to stand the pressure that the gas has in the heat. Only where a filling \
+                  pressure is stated; the air around the breaker is no filling.",
+    check: Check::Case(hot),
+};
+
+/// The highest ambient temperature of normal service, K (IEC 62271-1 4.1, from memory).
+const NORMAL_HIGHEST: f64 = 313.15;
+
+fn highest_ambient<'a>(case: &'a Case<'_>) -> Option<Stated<'a, ThermodynamicTemperature>> {
+    let own = case.site.quantity::<ThermodynamicTemperature>(&site::HIGHEST_AMBIENT);
+    own.or_else(|| case.site.side(&site::AMBIENT, Limit::Greatest))
+}
+
+fn hot(case: &Case<'_>, findings: &mut Findings) {
+    let (Some(highest), Some(filling)) =
+        (highest_ambient(case), case.breaker.statement(&breaker::RATED_FILLING_PRESSURE))
+    else {
+        return;
+    };
+    if highest.value.si() <= NORMAL_HIGHEST + 1e-6 || case.breaker.mentions(&breaker::GAS_PRESSURE_AT_HIGHEST_AMBIENT) {
+        return;
+    }
+    let message = format!("the site goes up to {}, and the gas pressure there is not stated", highest.measure);
+    let finding = findings.add(&GAS_PRESSURE_HOT, filling.value, message);
+    finding.label("pressure in the heat is missing").beside(highest.statement, "the highest ambient temperature");
+    let density = case.duty.gas.level(Level::Filling).and_then(|state| state.density.as_ref().ok());
+    let pressure = density.and_then(|density| sf6().pressure(density.value, highest.value).ok());
+    if let Some(pressure) = pressure {
+        let text = format!("{} MPa abs", significant(pressure.si() / 1e6, 3));
+        finding.needed(text.as_str()).working(format!("pressure of the filling at {}: {text}", highest.measure));
+        let label = breaker::GAS_PRESSURE_AT_HIGHEST_AMBIENT.label;
+        finding.edit(format!("state {text}"), case.sheet.end, format!("\n    {label}: {text}"));
+    } else {
+        finding.advice(format!("add the line {}", breaker::GAS_PRESSURE_AT_HIGHEST_AMBIENT.label));
+    }
+}
+
+/// An indoor class does not stand outdoors.
+pub static INDOOR_CLASS_OUTDOORS: Rule = Rule {
+    name: "indoor-class-outdoors",
+    title: "A temperature class of indoor apparatus does not stand on an outdoor site.",
+    kind: FindingKind::Contradiction,
+    basis: "IEC 62271-1:2017 4.1 (from memory)",
+    formula: "class minus N indoor, installation outdoor",
+    explanation: "Indoor classes mean apparatus without rain, ice and sun. The outdoor class that covers the site's lowest \
+                  temperature is proposed.",
+    check: Check::Case(indoor),
+};
+
+fn indoor(case: &Case<'_>, findings: &mut Findings) {
+    let (Some((class, statement)), Some((place, installation))) =
+        (case.breaker.word(&breaker::TEMPERATURE_CLASS), case.site.word(&site::INSTALLATION))
+    else {
+        return;
+    };
+    if !class.ends_with("indoor") || place != "outdoor" {
+        return;
+    }
+    let message = format!("the class {class} is for indoor apparatus, and the site is outdoors");
+    let finding = findings.add(&INDOOR_CLASS_OUTDOORS, statement.value, message);
+    finding.label("an indoor class").stated(class).beside(installation, "the site is outdoors");
+    if let Some(needed) = outdoor_class(case, statement) {
+        finding.needed(needed).replace_by(needed);
+    }
+}
+
+/// The warmest outdoor class that covers the site.
+fn outdoor_class(case: &Case<'_>, statement: &Statement) -> Option<&'static str> {
+    let Kind::Words { list, .. } = &statement.particular.kind else { return None };
+    let lowest = crate::duty::lowest_ambient(case)?.value.si() - 273.15;
+    list.all().find(|class| {
+        let degrees = class.split_whitespace().nth(1).and_then(|n| n.parse::<f64>().ok());
+        class.ends_with("outdoor") && degrees.is_some_and(|n| -n <= lowest + 1e-6)
+    })
+}
+
+#[cfg(test)]
+mod tests {
+    use crate::finding::FindingKind;
+    use crate::rules::testing::Bay;
+
+    const FILLING: &str = "rated filling pressure";
+    const ALARM: &str = "alarm pressure";
+    const MINIMUM: &str = "minimum functional pressure";
+
+    fn cold(lowest: &str) -> Bay {
+        Bay::new().set("site", "lowest ambient", lowest)
+    }
+
+    /// 0.60/0.54/0.51 MPa abs: dew points -31.1, -34.4 and -36.1 degC (own calculation with the library's model).
+    #[test]
+    fn three_grades_of_cold() {
+        Bay::new().silent("gas-liquefaction");
+        cold("-31 degC").silent("gas-liquefaction");
+        let remark = cold("-32 degC").one("gas-liquefaction");
+        assert_eq!(remark.kind, FindingKind::Remark);
+        let caution = cold("-35 degC").one("gas-density-at-cold");
+        assert_eq!(caution.kind, FindingKind::Caution);
+        cold("-35 degC").silent("gas-liquefaction");
+        let shortfall = cold("-37 degC").one("gas-liquefaction");
+        assert_eq!(shortfall.kind, FindingKind::Shortfall);
+        cold("-37 degC").silent("gas-density-at-cold");
+    }
+
+    /// 75/69/62 psig: -30.2, -32.3 and -35.0 degC, as in the table of rules.
+    #[test]
+    fn gauge_levels_in_the_units_of_the_author() {
+        let at = |lowest: &str| {
+            cold(lowest).set("breaker", FILLING, "75 psig").set("breaker", ALARM, "69 psig").set("breaker", MINIMUM, "62 psig")
+        };
+        assert_eq!(at("-31 degC").one("gas-liquefaction").kind, FindingKind::Remark);
+        at("-33 degC").one("gas-density-at-cold");
+        assert_eq!(at("-36 degC").one("gas-liquefaction").kind, FindingKind::Shortfall);
+        at("-30 degC").silent("gas-liquefaction");
+        let working = at("-36 degC").one("gas-liquefaction").working.join("; ");
+        for dew in ["-30.2", "-32.3", "-35"] {
+            assert!(working.contains(dew), "{working}");
+        }
+    }
+
+    /// 0.65 MPa abs condenses from -28.6 degC; with no other level stated that is a shortfall.
+    #[test]
+    fn without_other_levels_the_filling_counts() {
+        let bay = |lowest: &str| {
+            cold(lowest).set("breaker", FILLING, "0.65 MPa abs").without("breaker", ALARM).without("breaker", MINIMUM)
+        };
+        let finding = bay("-35 degC").one("gas-liquefaction");
+        assert_eq!(finding.kind, FindingKind::Shortfall);
+        assert!(finding.message.contains("-28.6 degC"), "{}", finding.message);
+        bay("-28.5 degC").silent("gas-liquefaction");
+        bay("-28.7 degC").one("gas-liquefaction");
+    }
+
+    #[test]
+    fn the_message_has_the_numbers() {
+        let finding = Bay::new()
+            .set("site", "lowest ambient", "-42 degC")
+            .set("breaker", FILLING, "0.70 MPa abs")
+            .set("breaker", ALARM, "0.64 MPa abs")
+            .set("breaker", MINIMUM, "0.61 MPa abs")
+            .one("gas-liquefaction");
+        assert!(finding.message.contains("-26.2 degC") && finding.message.contains("-42 degC"), "{}", finding.message);
+        let advice = finding.advice.expect("advice");
+        assert!(advice.contains("0.416 MPa abs") && advice.contains("12 K"), "{advice}");
+    }
+
+    #[test]
+    fn heaters_count_by_what_they_declare() {
+        let heated = cold("-40 degC").set("breaker", "tank heaters", "yes");
+        heated.one("gas-liquefaction");
+        heated.set("breaker", "heater temperature rise", "15 K").silent("gas-liquefaction");
+    }
+
+    #[test]
+    fn other_media_are_not_judged_by_sf6() {
+        for gas in ["N2", "SF6 60 % + N2 40 %", "none", "free", "SF6 or N2"] {
+            cold("-40 degC").set("breaker", "insulating gas", gas).silent("gas-liquefaction");
+        }
+    }
+
+    #[test]
+    fn out_of_range_is_refused_with_the_bound() {
+        let finding = Bay::new().set("breaker", FILLING, "1.7 MPa abs").one("gas-liquefaction");
+        assert!(finding.message.contains("1.6 MPa"), "{}", finding.message);
+        assert_eq!(finding.kind, FindingKind::Caution);
+        Bay::new().set("breaker", FILLING, "1.6 MPa abs").set("site", "lowest ambient", "10 degC").silent("gas-liquefaction");
+    }
+
+    #[test]
+    fn levels_fall_in_order() {
+        Bay::new().silent("gas-level-order");
+        Bay::new().set("breaker", ALARM, "0.61 MPa abs").one("gas-level-order");
+        Bay::new().set("breaker", ALARM, "0.60 MPa abs").one("gas-level-order");
+        Bay::new().set("breaker", "lockout pressure", "0.51 MPa abs").silent("gas-level-order");
+        Bay::new().set("breaker", "lockout pressure", "0.50 MPa abs").one("gas-level-order");
+        // A gauge alarm above an absolute filling: 0.54 MPa gauge is 0.641 MPa abs.
+        Bay::new().set("breaker", ALARM, "0.54 MPa gauge").one("gas-level-order");
+        Bay::new().set("breaker", ALARM, "0.61 MPa").silent("gas-level-order");
+    }
+
+    #[test]
+    fn a_bare_pressure_is_asked_about() {
+        let finding = Bay::new().set("breaker", FILLING, "6.0 bar").one("pressure-reference");
+        assert!(finding.message.contains("-31.1") && finding.message.contains("-26.1"), "{}", finding.message);
+        assert_eq!(finding.edits[1].text, "6.0 bar gauge");
+        Bay::new().silent("pressure-reference");
+        // The bracket resolves it.
+        Bay::new().set("breaker", FILLING, "5.0 bar (0.6 MPa abs)").silent("pressure-reference");
+        Bay::new().set("breaker", FILLING, "6.0 bar (87 psi)").one("pressure-reference");
+    }
+
+    #[test]
+    fn a_bare_pressure_takes_the_reference_of_its_bracket() {
+        let bay = |text: &str| cold("-27 degC").set("breaker", FILLING, text).without("breaker", ALARM).without("breaker", MINIMUM);
+        // 0.7 MPa abs condenses from -26.2 degC, 0.6 from -31.1.
+        bay("5.987 bar (0.7 MPa abs)").one("gas-liquefaction");
+        bay("6.0 bar (0.6 MPa abs)").silent("gas-liquefaction");
+    }
+
+    #[test]
+    fn pressure_in_the_heat() {
+        let hot = |t: &str| Bay::new().set("site", "highest ambient", t);
+        let finding = hot("50 degC").one("gas-pressure-hot");
+        assert!(finding.edits[0].text.contains("MPa abs"), "{:?}", finding.edits);
+        hot("40 degC").silent("gas-pressure-hot");
+        hot("41 degC").one("gas-pressure-hot");
+        hot("50 degC").set("breaker", "gas pressure at highest ambient", "0.68 MPa abs").silent("gas-pressure-hot");
+    }
+
+    #[test]
+    fn an_indoor_class_outdoors() {
+        let finding = Bay::new().set("breaker", "temperature class", "minus 5 indoor").one("indoor-class-outdoors");
+        assert_eq!(finding.edits[0].text, "minus 25 outdoor");
+        Bay::new().silent("indoor-class-outdoors");
+        Bay::new().set("breaker", "temperature class", "minus 5 indoor").set("site", "installation", "indoor").silent("indoor-class-outdoors");
+    }
+}

@@ -73,6 +73,4 @@ reading_rules! {
         "Shares are mole fractions in percent. Either every gas of a mixture has one, or none has.";
     FROM_DUTY_MISPLACED = "from-duty-misplaced", Contradiction, "Only what follows from the duty is left to it.",
         "from duty stands for a rating that the checker can choose; what the buyer has to know must be stated.";
-    SEQUENCE_MALFORMED = "sequence-malformed", Contradiction, "An operating sequence is well formed, with a unit at every pause.",
-        "O - 0.3 s - CO - 3 min - CO: operations O, C, CO with pauses between. A pause without a unit, or left as a letter, is no demand that a test can meet.";
 }

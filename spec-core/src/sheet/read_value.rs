@@ -9,6 +9,7 @@ use crate::finding::{Finding, Findings};
 use crate::particular::words::{GAS, WordList, folded};
 use crate::particular::{Kind, Particular, QuantityKind};
 use crate::quantity::{Dimension, Measure, look_up};
+use crate::rules::sequence::SEQUENCE_MALFORMED;
 use crate::rules::{Rule, reading as rules};
 use crate::source::Place;
 
@@ -206,7 +207,7 @@ impl<'a> Reader<'a> {
             Err(fault) => {
                 let place = self.at(fault.at);
                 let message = format!("this is no operating sequence: {} would be right here", fault.expected);
-                self.find(&rules::SEQUENCE_MALFORMED, place, message)
+                self.find(&SEQUENCE_MALFORMED, place, message)
                     .label("not a step")
                     .advice("write it as O - 0.3 s - CO - 3 min - CO");
                 return Reading::Unknown;

@@ -132,7 +132,11 @@ impl PureGas {
         if t >= self.critical_temperature {
             return Err(GasFault::TemperatureOutside { bound: self.critical_temperature });
         }
-        self.density_of_gas(self.saturation(t), t).map(MassDensity::from_si)
+        let density = MassDensity::from_si(self.density_of_gas(self.saturation(t), t)?);
+        if self.reference_pressure(density).si() > self.highest_filling {
+            return Err(GasFault::FillingTooHigh { bound: self.highest_filling });
+        }
+        Ok(density)
     }
 
     /// A filling at a temperature: how much of it is condensed, and what vapour is left. The share of the liquid is
@@ -154,11 +158,7 @@ impl PureGas {
 
     /// The highest filling, as a pressure at 20 degC, that does not condense at a temperature.
     pub fn highest_filling(&self, lowest: ThermodynamicTemperature) -> Result<Pressure, GasFault> {
-        let pressure = self.reference_pressure(self.saturated_density(lowest)?);
-        if pressure.si() > self.highest_filling {
-            return Err(GasFault::FillingTooHigh { bound: self.highest_filling });
-        }
-        Ok(pressure)
+        self.saturated_density(lowest).map(|density| self.reference_pressure(density))
     }
 
     fn within(&self, t: f64) -> Result<(), GasFault> {
