@@ -4,9 +4,7 @@ use super::{Figure, NamedFigure, lowest_ambient, named, named_temperature, perce
 use crate::case::Case;
 use crate::particular::{Particular, breaker};
 use crate::physics::gas::{Condensation, GasFault, PureGas, sf6};
-use crate::quantity::{
-    Dimension, MassDensity, Measure, Physical, Pressure, Ratio, ThermodynamicTemperature, rounded, significant,
-};
+use crate::quantity::{MassDensity, Physical, Pressure, Ratio, ThermodynamicTemperature, rounded, significant};
 use crate::sheet::Statement;
 use crate::source::Place;
 use crate::standards::REFERENCE_TEMPERATURE;
@@ -43,7 +41,7 @@ pub struct LevelState {
     /// Where its value stands.
     pub place: Place,
     /// As it was written.
-    pub measure: Measure,
+    pub written: String,
     /// The absolute pressure at its reference temperature.
     pub pressure: Pressure,
     /// The density, or why it cannot be told.
@@ -170,7 +168,6 @@ fn level_state(case: &Case<'_>, gas: &PureGas, level: Level, particular: &Partic
     let pressure = reading.absolute()?.pressure;
     let reference = reading.at.and_then(|at| at.to::<ThermodynamicTemperature>());
     let at = reference.unwrap_or_else(|| ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE));
-    let written = reading.measure;
     let density = gas.density(pressure, at).map(|density| {
         Figure::new(density, "p = rho R T (1 + B rho + C rho^2), solved for rho", BASIS)
             .given("p", format!("{} MPa abs", significant(pressure.si() / 1e6, 4)))
@@ -183,6 +180,5 @@ fn level_state(case: &Case<'_>, gas: &PureGas, level: Level, particular: &Partic
             .shown(celsius(dew.temperature));
         Some((named, dew))
     });
-    debug_assert_eq!(written.dimension(), Dimension::Pressure);
-    Some(LevelState { level, place: statement.value, measure: written, pressure, density, dew_point })
+    Some(LevelState { level, place: statement.value, written: reading.shown(), pressure, density, dew_point })
 }

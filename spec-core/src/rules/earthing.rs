@@ -122,11 +122,13 @@ fn excess(case: &Case<'_>, findings: &mut Findings) {
         return;
     }
     let out_of_phase = case.breaker.quantity::<Ratio>(&breaker::OUT_OF_PHASE_VOLTAGE_FACTOR);
-    for (stated, enough, what) in [(factor(case), 1.3, "first-pole-to-clear factor"), (out_of_phase, 2.0, "out-of-phase factor")] {
+    for (stated, enough, what) in
+        [(factor(case), 1.3, "a first-pole-to-clear factor"), (out_of_phase, 2.0, "an out-of-phase factor")]
+    {
         let Some(stated) = stated.filter(|s| s.value.value > enough + FACTOR_SLACK) else { continue };
         let text = format!("{enough:.1}");
         let message = format!(
-            "a {what} of {} is asked for, and the neutral is effectively earthed: {text} would do",
+            "{what} of {} is asked for, and the neutral is effectively earthed: {text} would do",
             significant(stated.value.value, 3)
         );
         findings

@@ -2,7 +2,7 @@
 
 use super::{Check, EQUAL, Rule, breaking_current};
 use crate::case::Case;
-use crate::finding::{Finding, FindingKind, Findings};
+use crate::finding::{FindingKind, Findings};
 use crate::particular::{breaker, circuit, system, tender};
 use crate::quantity::{Physical, Ratio, significant};
 
@@ -123,13 +123,12 @@ fn double_earth(case: &Case<'_>, findings: &mut Findings) {
     if case.breaker.mentions(&breaker::DOUBLE_EARTH_FAULT_BREAKING_CURRENT) {
         return;
     }
-    let mut finding = Finding::new(
-        &DOUBLE_EARTH_FAULT,
-        statement.value,
-        format!("with the neutral {word}, the duty of a double earth fault is not stated"),
-    );
-    finding.label("double earth faults may happen");
-    if let Some(isc) = breaking_current(case) {
+    let isc = breaking_current(case);
+    let place = isc.as_ref().map_or(case.sheet.heading, |isc| isc.place());
+    let message = format!("with the neutral {word}, the duty of a double earth fault is not stated");
+    let finding = findings.add(&DOUBLE_EARTH_FAULT, place, message);
+    finding.label("double earth faults may happen").beside(statement, "the earthing of the neutral");
+    if let Some(isc) = isc {
         let text = isc.like(isc.value * (3f64.sqrt() / 2.0));
         finding.needed(text.as_str()).working(format!("0.87 Isc = 0.87 x {} = {text}", isc.measure));
         finding.edit(
@@ -138,7 +137,6 @@ fn double_earth(case: &Case<'_>, findings: &mut Findings) {
             format!("\n    {}: {text}", breaker::DOUBLE_EARTH_FAULT_BREAKING_CURRENT.label),
         );
     }
-    findings.push(finding);
 }
 
 /// An endurance demand is within what breakers do.

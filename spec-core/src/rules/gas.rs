@@ -93,7 +93,7 @@ fn begin<'f>(
     let gas = &case.duty.gas;
     let dew = |level: Level| gas.level(level).and_then(|s| s.dew_point.as_ref());
     let lowest = gas.lowest.as_ref().map_or_else(String::new, |l| celsius(l.value));
-    let filling = gas.level(Level::Filling).map_or_else(String::new, |f| f.measure.to_string());
+    let filling = gas.level(Level::Filling).map_or("", |f| f.written.as_str());
     let (from, phase) = dew(Level::Filling).map_or((String::new(), Phase::Liquid), |(d, c)| (celsius(d.value), c.phase));
     let becomes = if phase == Phase::Frost { "come down as frost" } else { "liquefy" };
     let own = state.dew_point.as_ref().map_or_else(String::new, |(dew, _)| celsius(dew.value));
@@ -103,11 +103,11 @@ fn begin<'f>(
             "SF6 filled to {filling} begins to {becomes} at {from}; at {lowest} the vapour that is left stands below the {} {}, \
              which is reached at {own}",
             level.word(),
-            state.measure
+            state.written
         ),
     };
     let finding = findings.add(rule, state.place, message);
-    finding.label(label).stated(&state.measure);
+    finding.label(label).stated(state.written.as_str());
     finding
 }
 
@@ -116,7 +116,7 @@ fn tell(case: &Case<'_>, finding: &mut Finding) {
     let gas = &case.duty.gas;
     for state in &gas.levels {
         if let Some((dew, _)) = &state.dew_point {
-            finding.working(format!("dew point of the {}, {}: {}", state.level.word(), state.measure, celsius(dew.value)));
+            finding.working(format!("dew point of the {}, {}: {}", state.level.word(), state.written, celsius(dew.value)));
         }
     }
     if let (Some(condensed), Some(remaining), Some(lowest)) = (&gas.condensed, &gas.remaining, &gas.lowest) {
@@ -150,9 +150,9 @@ fn tell(case: &Case<'_>, finding: &mut Finding) {
 
 /// A filling of which nothing can be told: the bound that was left is named.
 fn refused(findings: &mut Findings, filling: &LevelState, fault: GasFault) {
-    let message = format!("of a filling of {} nothing can be told: {fault}", filling.measure);
+    let message = format!("of a filling of {} nothing can be told: {fault}", filling.written);
     let finding = findings.add(&GAS_LIQUEFACTION, filling.place, message);
-    finding.label("outside of what can be computed").stated(&filling.measure);
+    finding.label("outside of what can be computed").stated(filling.written.as_str());
     if !matches!(fault, GasFault::Saturated { .. }) {
         finding.kind(FindingKind::Caution);
     }
@@ -211,13 +211,16 @@ fn order(case: &Case<'_>, findings: &mut Findings) {
             let relation = if touching { "is the same as" } else { "is above" };
             let message = format!(
                 "the {} {} {relation} the {} {}",
-                statement.particular.label, reading.measure, above_statement.particular.label, above_reading.measure
+                statement.particular.label,
+                reading.shown(),
+                above_statement.particular.label,
+                above_reading.shown()
             );
             findings
                 .add(&GAS_LEVEL_ORDER, statement.value, message)
                 .label("out of order")
-                .stated(&reading.measure)
-                .needed(format!("below {}", above_reading.measure))
+                .stated(reading.shown())
+                .needed(format!("below {}", above_reading.shown()))
                 .working("filling > alarm > lockout >= minimum functional")
                 .beside(above_statement, "the level that has to be above it")
                 .advice("two lines may have been swapped");

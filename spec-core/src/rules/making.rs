@@ -91,6 +91,14 @@ fn below_duty(case: &Case<'_>, findings: &mut Findings) {
     }
     let making = making_peak(case);
     let breaking = breaking_current(case);
+    // A stated value that is short of its own factor, and would cover the peak with it, is told by making-current-factor.
+    let by_factor = breaking.as_ref().zip(making_factor_of(case, &case.duty)).map(|(isc, (factor, _))| isc.value * factor);
+    let slipped = making.as_ref().zip(by_factor).is_some_and(|(making, right)| {
+        making.value.si() < right.si() * (1.0 - case.policy.making_below) && right.si() >= peak.value.si() * (1.0 - EQUAL)
+    });
+    if slipped {
+        return;
+    }
     let Some(place) = making.as_ref().or(breaking.as_ref()).map(Stated::place) else { return };
     let tau = case.duty.time_constant.as_ref().zip(case.duty.rated_time_constant.as_ref());
     let tau_covered = tau.is_some_and(|(network, rated)| network.value.si() <= rated.value.si() * (1.0 + EQUAL));

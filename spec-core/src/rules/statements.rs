@@ -168,11 +168,11 @@ fn compare(
     } else {
         0.0
     };
-    let text = shown_with(second_reading, &second.show_like(a + lift));
+    let text = second_reading.shown_with(&second.show_like(a + lift));
     let message = format!(
         "{} is {text}, not {}",
-        shown_with(first_reading, &first.to_string()),
-        shown_with(second_reading, &second.to_string())
+        first_reading.shown_with(&first.to_string()),
+        second_reading.shown_with(&second.to_string())
     );
     findings
         .add(&DUAL_UNITS_DISAGREE, second_reading.place, message)
@@ -181,11 +181,6 @@ fn compare(
         .needed(text.as_str())
         .related(first_reading.place, format!("{} in the other unit", statement.particular.label))
         .replace_by(text);
-}
-
-fn shown_with(reading: &QuantityReading, value: &str) -> String {
-    let words: Vec<&str> = reading.qualifiers.iter().map(|q| q.word()).collect();
-    if words.is_empty() { value.to_owned() } else { format!("{value} {}", words.join(" ")) }
 }
 
 /// The words that belong to a value are there.

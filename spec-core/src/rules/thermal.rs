@@ -130,7 +130,7 @@ pub static SHORT_TIME_BELOW_DUTY: Rule = Rule {
     formula: "Ik >= Ik'' where Ik^2 tk >= Ith^2 Tk",
     explanation: "A short clearing time may leave the heat of a larger current within the rating; the current itself is then still \
                   above what the breaker is tested to carry. Where the heat is short too, thermal-duty speaks alone; where the \
-                  breaking current is short too, that speaks alone.",
+                  breaking current is short too, or is above the short-time current, those rules speak alone.",
     check: Check::Case(below_duty),
 };
 
@@ -143,8 +143,10 @@ fn below_duty(case: &Case<'_>, findings: &mut Findings) {
     };
     let (Some(heat), Some(rated)) = (case.duty.thermal_duty.as_ref(), case.duty.thermal_rated.as_ref()) else { return };
     let covered = rated.value.si() >= heat.value.si() * (1.0 - EQUAL);
+    // Below the breaking current short-time-below-breaking speaks alone.
+    let slipped = breaking_current(case).is_some_and(|isc| current.value.si() < isc.value.si() * (1.0 - EQUAL));
     let breaking_short = breaking_current(case).is_some_and(|isc| isc.value.si() < duty.value.si() * (1.0 - EQUAL));
-    if current.value.si() >= duty.value.si() * (1.0 - EQUAL) || !covered || breaking_short {
+    if current.value.si() >= duty.value.si() * (1.0 - EQUAL) || !covered || breaking_short || slipped {
         return;
     }
     let message = format!(
@@ -203,7 +205,8 @@ mod tests {
         let bay = Bay::new()
             .set("system", "short-circuit current", "25.1 kA")
             .set("system", "single-phase short-circuit current", "24 kA")
-            .set("breaker", IK, "25 kA for 3 s");
+            .set("breaker", IK, "25 kA for 3 s")
+            .without("breaker", "rated short-circuit breaking current");
         let finding = bay.one("short-time-below-duty");
         assert!(finding.message.contains("heat is covered"), "{}", finding.message);
         bay.clone().set("system", "short-circuit current", "25.0 kA").silent("short-time-below-duty");

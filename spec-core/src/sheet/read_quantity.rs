@@ -152,6 +152,10 @@ fn measure(
         return plain(reader, amount, unit, bound);
     }
     if unit.is_empty() {
+        // "operations per day: 4": the label has said the unit.
+        if kind.dimensions == [Dimension::CountPerDay] {
+            return Some(Measure::new(amount.number.value, amount.number.decimals, canonical(Dimension::CountPerDay)));
+        }
         unit_missing(reader, amount, kind);
         return None;
     }

@@ -87,6 +87,17 @@ impl QuantityReading {
         }
     }
 
+    /// As it was written: the value with the words that belong to it.
+    pub fn shown(&self) -> String {
+        self.shown_with(&self.measure.to_string())
+    }
+
+    /// Another value with the same words.
+    pub fn shown_with(&self, value: &str) -> String {
+        let words: Vec<&str> = self.qualifiers.iter().map(|q| q.word()).collect();
+        if words.is_empty() { value.trim_end().to_owned() } else { format!("{value} {}", words.join(" ")) }
+    }
+
     /// Whether it was written as a range.
     pub const fn is_range(&self) -> bool {
         matches!(self.second, Some((Joint::Range, _)))

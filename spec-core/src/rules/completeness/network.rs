@@ -160,7 +160,8 @@ fn without_voltage(network: &Network<'_>, policy: &Policy, findings: &mut Findin
     if shown.is_empty() {
         message += ", and neither is a voltage of the system stated: no current follows from it";
     } else {
-        message += &format!(": {}", shown.join(", "));
+        message.push_str(": ");
+        message.push_str(&shown.join(", "));
     }
     let largest = readings.iter().map(|(current, _)| *current).max_by(|a, b| a.si().total_cmp(&b.si()));
     let weakest = network.weakest();
@@ -169,7 +170,8 @@ fn without_voltage(network: &Network<'_>, policy: &Policy, findings: &mut Findin
         current.si() > isc.value.si() && !readings.iter().any(|(i, _)| apart(i) <= policy.fault_level_tolerance)
     });
     if let Some((current, (_, isc))) = &short {
-        message += &format!("; {} exceeds the rated breaking current {}", isc.like(*current), isc.measure);
+        let exceeds = format!("; {} exceeds the rated breaking current {}", isc.like(*current), isc.measure);
+        message.push_str(&exceeds);
     }
     let finding = findings.add(&FAULT_LEVEL_BASIS, level.place(), message);
     finding.label("at which voltage?").stated(&level.measure);

@@ -87,7 +87,7 @@ fn of_site(sheet: &Sheet, facts: &Facts, breakers: &[Apparatus<'_>], findings: &
         mentions_any(facts, datum.by) || breakers.iter().all(|apparatus| mentions_any(&apparatus.facts, datum.by))
     };
     let missing = |data: &'static [Datum]| -> Vec<&'static Datum> {
-        data.iter().filter(|datum| !stated(datum) && !(indoors && datum.outdoors_only)).collect()
+        data.iter().filter(|datum| !(stated(datum) || indoors && datum.outdoors_only)).collect()
     };
     let needed = missing(NEEDED);
     if !needed.is_empty() {
@@ -254,7 +254,8 @@ fn total(set: &Set, sheet: &Sheet, findings: &mut Findings) {
     let text = significant(sum, 6);
     let mut message = format!("the quantities of the breakers add up to {text}, and the tender's total is {stated}");
     if unknown > 0 {
-        message += &format!(", though {unknown} more {} no quantity", if unknown == 1 { "states" } else { "state" });
+        let verb = if unknown == 1 { "states" } else { "state" };
+        message.push_str(&format!(", though {unknown} more {verb} no quantity"));
     }
     let finding = findings.add(&QUANTITY_SUM, total.place(), message);
     finding.label(format!("{text} by the breakers")).stated(stated.as_str()).needed(text.as_str());
