@@ -38,7 +38,8 @@ impl SourceCode for IndexedSource<'_> {
             SourceSpan::new(from.into(), to - from),
             first,
             column,
-            starts.len(),
+            // Lines of this piece: by them miette tells which pieces touch and are drawn as one.
+            (last + 1).min(starts.len()).saturating_sub(first),
         );
         Ok(Box::new(contents))
     }

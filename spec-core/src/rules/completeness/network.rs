@@ -197,28 +197,30 @@ fn without_voltage(network: &Network<'_>, policy: &Policy, findings: &mut Findin
     );
 }
 
+/// What a level holds for.
+static VALIDITY: &[(&Particular, &str)] =
+    &[(&system::STUDY_YEAR, "study year"), (&system::LEVEL_VALID_WITH, "switching state")];
+
 fn without_year_or_state(network: &Network<'_>, findings: &mut Findings) {
     let level =
         [&system::SHORT_CIRCUIT_CURRENT, &system::FAULT_LEVEL].into_iter().find_map(|p| network.facts.statement(p));
     let Some(level) = level else { return };
-    let missing: Vec<&str> = [&system::STUDY_YEAR, &system::LEVEL_VALID_WITH]
-        .into_iter()
-        .filter(|particular| !network.facts.mentions(particular))
-        .map(|particular| particular.label)
-        .collect();
+    let missing: Vec<_> = VALIDITY.iter().filter(|(particular, _)| !network.facts.mentions(particular)).collect();
+    let names: Vec<&str> = missing.iter().map(|(_, name)| *name).collect();
+    let labels: Vec<&str> = missing.iter().map(|(particular, _)| particular.label).collect();
     if network.breakers.is_empty() || missing.is_empty() {
         return;
     }
     let message = format!(
-        "{} of the short-circuit level {} not stated: nobody can tell how long the level holds, or in which state of the network",
-        listed(&missing, "and"),
-        be(missing.len())
+        "{} of the short-circuit level {} not stated: nobody can tell how far the level can be relied on",
+        listed(&names, "and"),
+        be(names.len())
     );
     findings
         .add(&FAULT_LEVEL_BASIS, level.value, message)
         .kind(FindingKind::Remark)
-        .label("of which year, in which state?")
-        .advice(format!("add {} to {}", listed(&missing, "and"), network.sheet.title()));
+        .label("how long, and in which state?")
+        .advice(format!("add {} to {}", listed(&labels, "and"), network.sheet.title()));
 }
 
 /// The time constant of the network is known.
@@ -417,18 +419,25 @@ pub static NETWORK_KIND_MISSING: Rule = Rule {
     basis: "IEC 62271-100:2021 classes S1 and S2 (from memory)",
     formula: "connection stated for Ur < 100 kV",
     explanation: "The TRV of a busbar with cables only rises much more slowly than that of one with lines: class S1 or S2. Silent \
-                  from 100 kV up, where every breaker asks for the harder S2, and on generator circuit-breakers. State the \
-                  connection in the system.",
+                  from 100 kV up, where every breaker asks for the harder S2, where a circuit is an overhead line and so tells, and \
+                  on generator circuit-breakers. State the connection in the system.",
     check: Check::Set(network_kind),
 };
 
 /// The classes of the TRV end here (IEC 62271-100, from memory).
 const TRV_CLASSES_BELOW: f64 = 100e3;
 
+/// The circuit that makes a system a line system; a line behind a cable does not.
+const DIRECT_LINE: &str = "overhead line";
+
 fn network_kind(set: &Set, _: &Policy, findings: &mut Findings) {
     for network in networks(set) {
         let Some(voltage) = network.voltage() else { continue };
         if voltage.si() >= TRV_CLASSES_BELOW || network.facts.mentions(&system::CONNECTION) {
+            continue;
+        }
+        let is_line = |circuit: &Facts| circuit.word(&circuit::KIND).is_some_and(|(kind, _)| kind == DIRECT_LINE);
+        if circuits_of(set, &network.breakers).iter().any(is_line) {
             continue;
         }
         let open = |b: &&Apparatus<'_>| {
@@ -437,8 +446,7 @@ fn network_kind(set: &Set, _: &Policy, findings: &mut Findings) {
         };
         let Some(first) = network.breakers.iter().find(open) else { continue };
         let message = format!(
-            "{} does not say whether lines or cables leave the busbar: below 100 kV the TRV class, S1 or S2, depends on it and cannot \
-             be checked",
+            "{} does not say whether lines or cables leave the busbar: below 100 kV the TRV class, S1 or S2, depends on it",
             network.sheet.title()
         );
         let finding = findings.add(&NETWORK_KIND_MISSING, network.sheet.heading, message);
@@ -536,7 +544,7 @@ mod tests {
         let bay = Bay::new().without("system", "study year").without("system", "level valid with").and(SECOND);
         let found = bay.one("fault-level-basis");
         assert_eq!(found.kind, FindingKind::Remark);
-        assert!(found.message.contains("study year and level valid with"), "{}", found.message);
+        assert!(found.message.contains("study year and switching state"), "{}", found.message);
     }
 
     #[test]
@@ -602,12 +610,16 @@ mod tests {
 
     #[test]
     fn what_leaves_the_busbar_below_100_kv() {
-        let bay = medium_voltage().without("system", "connection");
-        bay.clone().and(SECOND).one("network-kind-missing");
+        let second = SECOND.replace("overhead line", "transformer");
+        let bay = medium_voltage().without("system", "connection").set("circuit", "kind", "cable");
+        bay.clone().and(&second).one("network-kind-missing");
+        bay.clone().and(SECOND).silent("network-kind-missing");
         bay.clone().set("breaker", "classes", "C2, M2, S1").one("network-kind-missing");
+        bay.clone().set("system", "connection", "later").silent("network-kind-missing");
         bay.set("breaker", "classes", "C2, M2, S2").silent("network-kind-missing");
         Bay::new().without("system", "connection").silent("network-kind-missing");
-        let edge = Bay::new().without("system", "connection").set("system", "highest voltage", "100 kV");
-        edge.silent("network-kind-missing");
+        let edge = Bay::new().without("system", "connection").set("circuit", "kind", "cable");
+        edge.clone().set("system", "highest voltage", "100 kV").silent("network-kind-missing");
+        edge.set("system", "highest voltage", "72.5 kV").one("network-kind-missing");
     }
 }

@@ -7,6 +7,21 @@ use crate::particular::{Particular, SheetKind, breaker, circuit};
 use crate::quantity::{ElectricCurrent, ElectricPotential, Physical, Time};
 use crate::sheet::{Sequence, Statement};
 
+/// Whether all that the breaker takes over could be found. Where not, a finding says so, and what seems to be missing may stand there.
+fn is_whole(case: &Case<'_>) -> bool {
+    let mut seen = Vec::new();
+    let mut next = Some(case.sheet);
+    while let Some(sheet) = next.filter(|sheet| !seen.contains(&sheet.id)) {
+        seen.push(sheet.id);
+        let above = sheet.target("like").and_then(|id| case.set.sheet(id));
+        if above.is_none() && sheet.links.iter().any(|(link, _)| link.word == "like") {
+            return false;
+        }
+        next = above;
+    }
+    true
+}
+
 /// It is said what the breaker switches.
 pub static CIRCUIT_MISSING: Rule = Rule {
     name: "circuit-missing",
@@ -129,6 +144,9 @@ fn has_line_charging(case: &Case<'_>) -> bool {
 }
 
 fn rating_for_object(case: &Case<'_>, findings: &mut Findings) {
+    if !is_whole(case) {
+        return;
+    }
     for object in OBJECTS {
         let mut circuits = case.circuits_of(object.kinds).filter(|circuit| (object.applies)(case, circuit));
         let Some((_, kind)) = circuits.next().and_then(|circuit| circuit.word(&circuit::KIND)) else { continue };
@@ -186,6 +204,9 @@ const RAPID_BELOW: f64 = 10.0;
 const SECOND_PAUSE: &str = "3 min";
 
 fn reclosing(case: &Case<'_>, findings: &mut Findings) {
+    if !is_whole(case) {
+        return;
+    }
     if case.breaker.mentions(&breaker::RATED_OPERATING_SEQUENCE) {
         scheme_missing(case, findings);
     } else {
@@ -282,6 +303,9 @@ const SUPPLY_RANGE: (f64, f64) = (0.85, 1.10);
 
 fn supply_range(case: &Case<'_>, findings: &mut Findings) {
     let Some(supply) = case.breaker.quantity::<ElectricPotential>(&breaker::RATED_SUPPLY_VOLTAGE) else { return };
+    if !is_whole(case) {
+        return;
+    }
     let ranges = [&breaker::CLOSING_RANGE, &breaker::OPENING_RANGE].iter().all(|range| case.breaker.mentions(range));
     let bounded = supply.statement.quantity().is_some_and(|reading| reading.tolerance.is_some() || reading.is_range());
     if ranges || bounded || case.breaker.mentions(&breaker::SUPPLY_VOLTAGE_AT_THE_TERMINALS) {
@@ -326,6 +350,17 @@ mod tests {
         assert!(found.message.contains("breaker LineBay"), "{}", found.message);
         Bay::new().without_sheet("circuit").set("breaker", "spare for", "LineBay").silent("circuit-missing");
         Bay::new().heading("circuit", "circuit Line1 for Nobody").silent("circuit-missing");
+    }
+
+    /// What is taken over from a sheet that cannot be found is not missing.
+    #[test]
+    fn a_family_that_cannot_be_found() {
+        let bay = switching("cable").heading("breaker", "breaker LineBay on Ring at Yard like Nobody");
+        let bay =
+            bay.without("breaker", "supply voltage at the terminals").without("breaker", "rated operating sequence");
+        for rule in ["rating-for-object-missing", "reclosing-half-stated", "supply-range-missing"] {
+            bay.silent(rule);
+        }
     }
 
     #[test]

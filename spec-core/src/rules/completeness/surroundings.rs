@@ -255,7 +255,8 @@ fn total(set: &Set, sheet: &Sheet, findings: &mut Findings) {
     let mut message = format!("the quantities of the breakers add up to {text}, and the tender's total is {stated}");
     if unknown > 0 {
         let verb = if unknown == 1 { "states" } else { "state" };
-        message.push_str(&format!(", though {unknown} more {verb} no quantity"));
+        let also = format!(", though {unknown} more {verb} no quantity");
+        message.push_str(&also);
     }
     let finding = findings.add(&QUANTITY_SUM, total.place(), message);
     finding.label(format!("{text} by the breakers")).stated(stated.as_str()).needed(text.as_str());
