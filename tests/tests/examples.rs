@@ -48,7 +48,7 @@ fn seeded_mistakes_are_found() {
                 "making-current-factor",
                 "short-time-below-breaking",
                 "dc-component-disagrees",
-                "fault-level-basis",
+                "fault-level-disagrees",
                 "insulation-set",
             ],
         ),
