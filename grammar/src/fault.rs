@@ -28,7 +28,9 @@ impl Fault {
             Self::UnclosedText => "a text in quotes is not closed on this line",
             Self::MissingColon => "this is neither a heading nor a particular: a particular is written LABEL: VALUE",
             Self::MissingLabel => "a label is missing before the colon",
-            Self::Heading => "this heading cannot be read: it is written KIND NAME, then pairs such as on SYSTEM or at SITE",
+            Self::Heading => {
+                "this heading cannot be read: it is written KIND NAME, then pairs such as on SYSTEM or at SITE"
+            }
             Self::Use => "use wants the path of a specification in quotes: use \"families/lines.cbspec\"",
             Self::Edition => "the edition is a whole number: cbspec 1",
             Self::TooLong => "this line is longer than 4096 characters and was not read",
@@ -76,7 +78,9 @@ pub(crate) fn look(text: &str) -> (Fault, Span, Look) {
         Some(_) => Fault::MissingColon,
         None => {
             let linked = whole.of(text).split_whitespace().skip(1);
-            let has_link = linked.into_iter().any(|w| matches!(w, "on" | "at" | "into" | "for" | "like" | "from" | "in" | "through"));
+            let has_link = linked
+                .into_iter()
+                .any(|w| matches!(w, "on" | "at" | "into" | "for" | "like" | "from" | "in" | "through"));
             if has_link { Fault::Heading } else { Fault::MissingColon }
         }
     };
@@ -131,5 +135,9 @@ pub(crate) fn trimmed(text: &str, start: usize, end: usize) -> Span {
     let part = text.get(start..end).unwrap_or("");
     let left = part.len() - part.trim_start().len();
     let right = part.trim_end().len();
-    if right < left { Span::new(start as u32, start as u32) } else { Span::new((start + left) as u32, (start + right) as u32) }
+    if right < left {
+        Span::new(start as u32, start as u32)
+    } else {
+        Span::new((start + left) as u32, (start + right) as u32)
+    }
 }

@@ -302,7 +302,10 @@ mod tests {
         assert_eq!(particular_of("a:").value.form, ValueForm::Missing);
         assert_eq!(particular_of("a: # later").value.form, ValueForm::Missing);
         assert_eq!(particular_of("a: open point").value.form, ValueForm::OpenPoint(None));
-        assert_eq!(particular_of("a: open point \"B, until May\"").value.form, ValueForm::OpenPoint(Some("B, until May".into())));
+        assert_eq!(
+            particular_of("a: open point \"B, until May\"").value.form,
+            ValueForm::OpenPoint(Some("B, until May".into()))
+        );
         assert_eq!(particular_of("a: from dutyx").value.form, ValueForm::Plain);
     }
 
@@ -324,7 +327,9 @@ mod tests {
     fn edition_and_use() {
         assert!(matches!(read_line("cbspec 1"), LineKind::Edition { number: Some(1), .. }));
         assert!(matches!(read_line("cbspec 99999999999"), LineKind::Edition { number: None, .. }));
-        assert!(matches!(read_line("use \"families/lines.cbspec\""), LineKind::Use { path, .. } if path == "families/lines.cbspec"));
+        assert!(
+            matches!(read_line("use \"families/lines.cbspec\""), LineKind::Use { path, .. } if path == "families/lines.cbspec")
+        );
     }
 
     #[test]

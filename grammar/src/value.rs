@@ -298,11 +298,8 @@ fn read_amount(pair: Pair<'_, Rule>) -> Option<Amount> {
 fn read_number(pair: &Pair<'_, Rule>) -> Number {
     let text = pair.as_str();
     let comma = text.contains(',');
-    let plain: String = text
-        .chars()
-        .filter(|c| !c.is_whitespace())
-        .map(|c| if matches!(c, '−' | '–') { '-' } else { c })
-        .collect();
+    let plain: String =
+        text.chars().filter(|c| !c.is_whitespace()).map(|c| if matches!(c, '−' | '–') { '-' } else { c }).collect();
     let mantissa = plain.split(['e', 'E']).next().unwrap_or("");
     let decimals = mantissa.split_once('.').map_or(0, |(_, fraction)| fraction.len().min(20) as u8);
     Number { span: pair.as_span().into(), value: plain.parse().unwrap_or(f64::NAN), decimals, comma }
@@ -423,7 +420,12 @@ mod tests {
 
     #[test]
     fn sequences_with_any_dash() {
-        for text in ["O - 0.3 s - CO - 3 min - CO", "O-0.3s-CO-3min-CO", "O – 0.3 s – CO – 3 min – CO", "o-0.3 sec-co-3 mins-co"] {
+        for text in [
+            "O - 0.3 s - CO - 3 min - CO",
+            "O-0.3s-CO-3min-CO",
+            "O – 0.3 s – CO – 3 min – CO",
+            "o-0.3 sec-co-3 mins-co",
+        ] {
             let steps = sequence(text).expect(text);
             assert_eq!(steps.len(), 5, "{text}");
             assert!(matches!(&steps[2], Step::Operation(o, _) if o == "CO"), "{text}");
@@ -448,7 +450,8 @@ mod tests {
         assert_eq!(date("2029-09").expect("month"), Date { year: 2029, month: 9, day: None });
         assert_eq!(date("2029-09-30").expect("day").day, Some(30));
         assert!(date("09/2029").is_err());
-        let texts: Vec<_> = list("IEC 62271-1:2017, IEC 62271-100:2021").expect("list").into_iter().map(|i| i.text).collect();
+        let texts: Vec<_> =
+            list("IEC 62271-1:2017, IEC 62271-100:2021").expect("list").into_iter().map(|i| i.text).collect();
         assert_eq!(texts, ["IEC 62271-1:2017", "IEC 62271-100:2021"]);
         let texts: Vec<_> = options("live tank or dead tank").expect("options").into_iter().map(|i| i.text).collect();
         assert_eq!(texts, ["live tank", "dead tank"]);
@@ -463,7 +466,9 @@ mod tests {
         assert!(gases("SF6 ;").is_err());
         assert!(date("2029-09 x").is_err());
         let grammar = include_str!("../cbspec.pest");
-        for entry in ["line ", "quantity_value", "sequence_value", "gas_value", "date_value", "options_value", "list_value"] {
+        for entry in
+            ["line ", "quantity_value", "sequence_value", "gas_value", "date_value", "options_value", "list_value"]
+        {
             let rule = grammar.lines().find(|l| l.starts_with(entry)).expect(entry);
             assert!(rule.contains("SOI") && rule.trim_end().ends_with("EOI }"), "{rule}");
         }

@@ -27,7 +27,10 @@ pub struct Assessor {
 
 impl std::fmt::Debug for Assessor {
     fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
-        f.debug_struct("Assessor").field("rules", &self.rules.len()).field("policy", &self.policy).finish_non_exhaustive()
+        f.debug_struct("Assessor")
+            .field("rules", &self.rules.len())
+            .field("policy", &self.policy)
+            .finish_non_exhaustive()
     }
 }
 

@@ -134,11 +134,15 @@ impl Loader for FolderLoader {
             match part {
                 Component::Normal(name) => target.push(name),
                 Component::CurDir => {}
-                Component::ParentDir if target.components().next_back().is_some_and(|c| matches!(c, Component::Normal(_))) => {
+                Component::ParentDir
+                    if target.components().next_back().is_some_and(|c| matches!(c, Component::Normal(_))) =>
+                {
                     target.pop();
                 }
                 Component::ParentDir => return Err(refuse("it leads out of the folder that was given")),
-                Component::RootDir | Component::Prefix(_) => return Err(refuse("a path is relative to the file that uses it")),
+                Component::RootDir | Component::Prefix(_) => {
+                    return Err(refuse("a path is relative to the file that uses it"));
+                }
             }
         }
         // Symbolic links are followed before the folder is compared, so that none leads out.

@@ -8,8 +8,7 @@ pub fn root() -> PathBuf {
 }
 
 /// The example specifications that are clean: no contradiction, shortfall, omission or caution.
-pub const CLEAN: [&str; 4] =
-    ["cable-feeders-12kV", "transmission-72.5kV-60Hz", "cold-climate-245kV", "station-420kV"];
+pub const CLEAN: [&str; 4] = ["cable-feeders-12kV", "transmission-72.5kV-60Hz", "cold-climate-245kV", "station-420kV"];
 
 /// The example specifications with seeded mistakes.
 pub const SEEDED: [&str; 4] = ["reclosing-line-24kV", "substation-36kV", "line-bay-145kV", "generation-tie-550kV"];

@@ -94,7 +94,8 @@ fn no_example_is_forgotten() {
 /// A snapshot that no test asks for would say nothing.
 #[test]
 fn no_snapshot_is_an_orphan() {
-    let names: Vec<String> = CLEAN.iter().chain(&SEEDED).flat_map(|n| [format!("{n}.text"), format!("{n}.json")]).collect();
+    let names: Vec<String> =
+        CLEAN.iter().chain(&SEEDED).flat_map(|n| [format!("{n}.text"), format!("{n}.json")]).collect();
     for entry in std::fs::read_dir(root().join("tests/tests/snapshots")).expect("snapshots").flatten() {
         let file = entry.file_name().to_string_lossy().into_owned();
         let stem = file.strip_suffix(".snap").unwrap_or_else(|| panic!("{file} is no accepted snapshot"));

@@ -6,7 +6,16 @@ use std::path::Path;
 use firstpole_tests::root;
 
 const FORBIDDEN: [&str; 10] = [
-    "std::fs", "std::env", "SystemTime", "Instant::now", "std::net", "std::process", "println!", "print!(", "stdin()", "std::thread",
+    "std::fs",
+    "std::env",
+    "SystemTime",
+    "Instant::now",
+    "std::net",
+    "std::process",
+    "println!",
+    "print!(",
+    "stdin()",
+    "std::thread",
 ];
 
 fn sources(folder: &Path, found: &mut Vec<(String, String)>) {

@@ -3,7 +3,8 @@
 use super::Case;
 use crate::particular::{Particular, breaker};
 use crate::quantity::{
-    Dimension, ElectricCurrent, ElectricPotential, Frequency, Measure, Physical, Ratio, Time, canonical, look_up, significant,
+    Dimension, ElectricCurrent, ElectricPotential, Frequency, Measure, Physical, Ratio, Time, canonical, look_up,
+    significant,
 };
 use crate::sheet::{About, QuantityReading, Reading};
 use crate::standards::{self, PreferredCurrents, RatingSeries, Regime, TimeConstants};
@@ -36,7 +37,10 @@ pub(super) fn fill(case: &mut Case<'_>) -> bool {
         let asked = case.breaker.all(particular).any(|s| s.reading == Reading::FromDuty);
         let Some(chosen) = asked.then(|| choose(case)).flatten() else { continue };
         for statement in case.breaker.facts.statements_mut() {
-            if statement.about == About::Value && statement.particular.is(particular) && statement.reading == Reading::FromDuty {
+            if statement.about == About::Value
+                && statement.particular.is(particular)
+                && statement.reading == Reading::FromDuty
+            {
                 statement.reading = Reading::Quantity(QuantityReading {
                     measure: chosen.measure,
                     second: None,
@@ -113,7 +117,8 @@ fn making(case: &Case<'_>) -> Option<Chosen> {
     let breaking = case.breaker.quantity::<ElectricCurrent>(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT)?;
     let (factor, why) = crate::duty::making_factor_of(case, &case.duty)?;
     let rated = breaking.value * factor;
-    let working = format!("F Isc with F = {} ({why}), Isc = {}: {}", significant(factor, 3), breaking.measure, rated.show());
+    let working =
+        format!("F Isc with F = {} ({why}), Isc = {}: {}", significant(factor, 3), breaking.measure, rated.show());
     Some(Chosen { measure: measure(rated.si(), Dimension::Current, "kA"), working })
 }
 

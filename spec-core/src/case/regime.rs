@@ -26,7 +26,8 @@ impl Regimes {
             let ieee = joint || text.starts_with("IEEE") || text.starts_with("ANSI") || text.starts_with("C37");
             regimes.ieee |= ieee;
             regimes.iec |= joint || text.starts_with("IEC") || text.starts_with("62271");
-            regimes.national |= !ieee && !text.contains("IEC") && !text.starts_with("62271") && !text.starts_with("ISO");
+            regimes.national |=
+                !ieee && !text.contains("IEC") && !text.starts_with("62271") && !text.starts_with("ISO");
             regimes.generator |= text.contains("37-013") || text.contains("C37.013");
         }
         if !regimes.iec && !regimes.ieee {

@@ -98,7 +98,9 @@ fn value(kind: &Kind) -> String {
         Kind::Words { list, alternatives } => {
             format!("{}{}", words(list), if *alternatives { "; several joined by or" } else { "" })
         }
-        Kind::WordsOrQuantity(list, quantity) => format!("{}, or a value in {}", words(list), quantity.units.join(", ")),
+        Kind::WordsOrQuantity(list, quantity) => {
+            format!("{}, or a value in {}", words(list), quantity.units.join(", "))
+        }
         Kind::WordsOrText(list) => format!("{}, or a text in quotes", words(list)),
         Kind::DateOrWords(list) => format!("date, or {}", words(list)),
         Kind::YesNo => "yes / no".to_owned(),

@@ -59,7 +59,8 @@ impl<Q: Physical> Figure<Q> {
     /// An input that was computed before.
     #[must_use]
     pub fn from<I: Physical>(mut self, symbol: &'static str, figure: &Figure<I>) -> Self {
-        let place = figure.working.inputs.first().filter(|_| figure.working.formula == "as stated").and_then(|i| i.place);
+        let place =
+            figure.working.inputs.first().filter(|_| figure.working.formula == "as stated").and_then(|i| i.place);
         self.working.inputs.push(Input { symbol, text: figure.value.show(), place });
         self
     }

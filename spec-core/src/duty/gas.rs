@@ -9,7 +9,8 @@ use crate::sheet::Statement;
 use crate::source::Place;
 use crate::standards::REFERENCE_TEMPERATURE;
 
-const BASIS: &str = "equation of state of SF6 (fit to CoolProp 8.0.0), vapour pressure by Guder and Wagner 2009 (from memory)";
+const BASIS: &str =
+    "equation of state of SF6 (fit to CoolProp 8.0.0), vapour pressure by Guder and Wagner 2009 (from memory)";
 
 /// A level of the gas.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]

@@ -166,10 +166,14 @@ fn named_temperature(key: &'static str, figure: Option<&Figure<ThermodynamicTemp
 fn load_current(case: &Case<'_>) -> Option<Figure<ElectricCurrent>> {
     let mut largest: Option<Figure<ElectricCurrent>> = None;
     for circuit in &case.circuits {
-        for (symbol, particular) in [("load", &circuit::LOAD_CURRENT), ("emergency load", &circuit::EMERGENCY_LOAD_CURRENT)] {
+        for (symbol, particular) in
+            [("load", &circuit::LOAD_CURRENT), ("emergency load", &circuit::EMERGENCY_LOAD_CURRENT)]
+        {
             let Some(stated) = circuit.quantity::<ElectricCurrent>(particular) else { continue };
             if largest.as_ref().is_none_or(|old| stated.value > old.value) {
-                largest = Some(Figure::new(stated.value, "largest steady current of a circuit", "practice").with(symbol, &stated));
+                largest = Some(
+                    Figure::new(stated.value, "largest steady current of a circuit", "practice").with(symbol, &stated),
+                );
             }
         }
     }

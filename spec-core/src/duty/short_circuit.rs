@@ -4,9 +4,7 @@ use super::{Duty, Figure, percent};
 use crate::case::Case;
 use crate::particular::{breaker, system, tender};
 use crate::physics::{dc_component, short_circuit};
-use crate::quantity::{
-    ElectricCurrent, ElectricPotential, Frequency, Physical, Power, Ratio, Time, significant,
-};
+use crate::quantity::{ElectricCurrent, ElectricPotential, Frequency, Physical, Power, Ratio, Time, significant};
 use crate::sheet::Stated;
 use crate::standards::{MakingCase, TimeConstantCase, TimeConstants, making_factor};
 
@@ -30,7 +28,8 @@ fn currents(case: &Case<'_>, duty: &mut Duty) {
     duty.short_circuit_current = stated.map(|figure| grown(case, figure));
     duty.single_phase_current =
         system.quantity(&system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT).map(|s| Figure::stated("Ik1", &s));
-    let two_phase = system.quantity(&system::TWO_PHASE_TO_EARTH_SHORT_CIRCUIT_CURRENT).map(|s| Figure::stated("Ik2E", &s));
+    let two_phase =
+        system.quantity(&system::TWO_PHASE_TO_EARTH_SHORT_CIRCUIT_CURRENT).map(|s| Figure::stated("Ik2E", &s));
     duty.breaking_duty = largest(&[
         ("Ik3", duty.short_circuit_current.as_ref()),
         ("Ik1", duty.single_phase_current.as_ref()),
@@ -40,7 +39,8 @@ fn currents(case: &Case<'_>, duty: &mut Duty) {
     if let Some(share) = case.breaker.quantity::<ElectricCurrent>(&breaker::SHORT_CIRCUIT_CURRENT_THROUGH_THE_BREAKER) {
         duty.breaking_duty = Some(Figure::stated("share of the breaker", &share));
     }
-    let decayed = system.quantity(&system::SYMMETRICAL_SHORT_CIRCUIT_BREAKING_CURRENT).map(|s| Figure::stated("Ib", &s));
+    let decayed =
+        system.quantity(&system::SYMMETRICAL_SHORT_CIRCUIT_BREAKING_CURRENT).map(|s| Figure::stated("Ib", &s));
     duty.symmetrical_breaking_current = decayed.or_else(|| {
         let initial = duty.breaking_duty.as_ref()?;
         Some(Figure::new(initial.value, "Ib = Ik'' far from generators", IEC_60909).from("Ik''", initial))
@@ -58,13 +58,17 @@ fn of_fault_level(case: &Case<'_>) -> Option<Figure<ElectricCurrent>> {
 
 /// The level at the end of the service life, where growth is stated: the stated percentage of each year upon the last.
 fn grown(case: &Case<'_>, initial: Figure<ElectricCurrent>) -> Figure<ElectricCurrent> {
-    let Some((growth, _)) = case.system.quantity_reading(&system::GROWTH_OF_SHORT_CIRCUIT_CURRENT) else { return initial };
+    let Some((growth, _)) = case.system.quantity_reading(&system::GROWTH_OF_SHORT_CIRCUIT_CURRENT) else {
+        return initial;
+    };
     let Some(a_second) = growth.measure.si else { return initial };
     let life: Option<Stated<'_, Time>> = case.tender.quantity(&tender::SERVICE_LIFE);
-    let year = crate::quantity::canonical(crate::quantity::Dimension::SharePerYear).to_si(100.0).map_or(1.0, f64::recip);
+    let year =
+        crate::quantity::canonical(crate::quantity::Dimension::SharePerYear).to_si(100.0).map_or(1.0, f64::recip);
     let years = life.map_or(SERVICE_LIFE_YEARS, |l| l.value.si() / year);
     let factor = (1.0 + a_second * year).powf(years);
-    let figure = Figure::new(initial.value * factor, "Ik3 (1 + growth)^years", "buyer's growth, common practice, no source");
+    let figure =
+        Figure::new(initial.value * factor, "Ik3 (1 + growth)^years", "buyer's growth, common practice, no source");
     figure.from("Ik3", &initial).given("growth", growth.measure.to_string()).given("years", significant(years, 3))
 }
 
@@ -127,7 +131,8 @@ fn peak(case: &Case<'_>, duty: &mut Duty) {
             .given("f", frequency.show())
     });
     duty.peak_factor = factor;
-    let stated = case.system.quantity::<ElectricCurrent>(&system::PEAK_SHORT_CIRCUIT_CURRENT).map(|s| Figure::stated("ip", &s));
+    let stated =
+        case.system.quantity::<ElectricCurrent>(&system::PEAK_SHORT_CIRCUIT_CURRENT).map(|s| Figure::stated("ip", &s));
     duty.peak_current = stated.or_else(|| {
         let (kappa, initial) = duty.peak_factor.as_ref().zip(duty.breaking_duty.as_ref())?;
         let peak = short_circuit::peak_current(initial.value, kappa.value.value);
@@ -153,7 +158,8 @@ fn making(case: &Case<'_>, duty: &Duty) -> Option<Figure<ElectricCurrent>> {
         let is_rms = stated.statement.quantity().is_some_and(|q| q.is(crate::quantity::Qualifier::Rms));
         return (!is_rms).then(|| Figure::stated("Ima", &stated));
     }
-    let breaking: Stated<'_, ElectricCurrent> = case.breaker.quantity(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT)?;
+    let breaking: Stated<'_, ElectricCurrent> =
+        case.breaker.quantity(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT)?;
     let (factor, named) = making_factor_of(case, duty)?;
     Some(
         Figure::new(breaking.value * factor, "Ima = F Isc", "IEC 62271-100 5.103 (from memory)")
@@ -179,8 +185,7 @@ pub(crate) fn making_factor_of(case: &Case<'_>, duty: &Duty) -> Option<(f64, Str
 }
 
 fn separation(case: &Case<'_>, duty: &mut Duty) {
-    let (Some(opening), Some(frequency)) =
-        (case.breaker.least::<Time>(&breaker::OPENING_TIME), case.frequency())
+    let (Some(opening), Some(frequency)) = (case.breaker.least::<Time>(&breaker::OPENING_TIME), case.frequency())
     else {
         return;
     };

@@ -41,10 +41,7 @@ impl TrvDuty {
                     unit,
                     working: found.map(|(_, working)| working.clone()),
                 };
-                [
-                    figure(peak, "V", found.map(|(e, _)| e.uc.si())),
-                    figure(rate, "V/s", found.map(|(e, _)| e.rate.si())),
-                ]
+                [figure(peak, "V", found.map(|(e, _)| e.uc.si())), figure(rate, "V/s", found.map(|(e, _)| e.rate.si()))]
             })
             .collect()
     }
@@ -97,9 +94,13 @@ fn needed_factor(case: &Case<'_>, duty: &Duty) -> Option<Figure<Ratio>> {
     if not_earthed {
         let (word, _) = word?;
         let factor = standards::first_pole_factors().last()?;
-        return Some(Figure::new(Ratio::from_si(factor), "1.5 where the neutral is not effectively earthed", BASIS).given("neutral", word));
+        return Some(
+            Figure::new(Ratio::from_si(factor), "1.5 where the neutral is not effectively earthed", BASIS)
+                .given("neutral", word),
+        );
     }
-    if let Some(ratio) = system.quantity::<Ratio>(&system::X0_OVER_X1).or_else(|| system.quantity(&system::Z0_OVER_Z1)) {
+    if let Some(ratio) = system.quantity::<Ratio>(&system::X0_OVER_X1).or_else(|| system.quantity(&system::Z0_OVER_Z1))
+    {
         let factor = Ratio::from_si(first_pole_factor(ratio.value.value));
         return Some(Figure::new(factor, "kpp = 3a/(1 + 2a)", BASIS).with("a = X0/X1", &ratio));
     }

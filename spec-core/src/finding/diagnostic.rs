@@ -3,7 +3,9 @@
 //! `miette` panics on a span past the end, draws no label without width at the end of a file, and scans a text from its start
 //! for each snippet; the line index and the clamping here are for that.
 
-use miette::{Diagnostic, LabeledSpan, MietteError, MietteSpanContents, Severity, SourceCode, SourceSpan, SpanContents};
+use miette::{
+    Diagnostic, LabeledSpan, MietteError, MietteSpanContents, Severity, SourceCode, SourceSpan, SpanContents,
+};
 
 use super::{Finding, FindingKind};
 use crate::assess::Assessment;
@@ -136,10 +138,8 @@ impl Diagnostic for FindingDiagnostic<'_> {
         }
         lines.push(format!("basis: {}", self.finding.basis));
         if let Some(acceptance) = &self.finding.accepted {
-            lines.push(format!(
-                "accepted by {} until {}: {}",
-                acceptance.approved, acceptance.until, acceptance.reason
-            ));
+            lines
+                .push(format!("accepted by {} until {}: {}", acceptance.approved, acceptance.until, acceptance.reason));
         }
         Some(Box::new(lines.join("\n")))
     }

@@ -68,9 +68,8 @@ impl Findings {
 
     /// In the order of the text: by file, start, rule, message; each one once.
     pub fn sorted(mut self) -> Vec<Finding> {
-        self.all.sort_by(|a, b| {
-            (a.place, a.rule, &a.breaker, &a.message).cmp(&(b.place, b.rule, &b.breaker, &b.message))
-        });
+        self.all
+            .sort_by(|a, b| (a.place, a.rule, &a.breaker, &a.message).cmp(&(b.place, b.rule, &b.breaker, &b.message)));
         self.all.dedup();
         self.all
     }

@@ -1,6 +1,6 @@
 //! Particulars of the sheet `circuit`. One thing that a breaker switches.
 
-use crate::particular::{Kind, QuantityKind, words, particulars};
+use crate::particular::{Kind, QuantityKind, particulars, words};
 use crate::quantity::{Dimension, Qualifier};
 
 particulars! { Circuit, "circuit";

@@ -1,6 +1,6 @@
 //! Particulars of the sheet `infeed`. One source of short-circuit current.
 
-use crate::particular::{Kind, QuantityKind, Tail, words, particulars};
+use crate::particular::{Kind, QuantityKind, Tail, particulars, words};
 use crate::quantity::{Dimension, Qualifier};
 
 particulars! { Infeed, "infeed";

@@ -47,6 +47,16 @@ pub enum Lookup {
     Unknown,
 }
 
+/// Words before a label that set a bound of it.
+const BOUNDS: [(&str, Limit); 6] = [
+    ("minimum ", Limit::Least),
+    ("min ", Limit::Least),
+    ("least ", Limit::Least),
+    ("maximum ", Limit::Greatest),
+    ("max ", Limit::Greatest),
+    ("greatest ", Limit::Greatest),
+];
+
 /// The labels and symbols of one sheet.
 struct Labels {
     declared: Vec<&'static Particular>,
@@ -57,7 +67,8 @@ struct Labels {
 
 impl Labels {
     fn of(declared: Vec<&'static Particular>) -> Self {
-        let mut labels = Self { declared, by_label: HashMap::new(), by_symbol: HashMap::new(), refused: HashMap::new() };
+        let mut labels =
+            Self { declared, by_label: HashMap::new(), by_symbol: HashMap::new(), refused: HashMap::new() };
         for particular in &labels.declared {
             for wording in std::iter::once(&particular.label).chain(particular.wordings) {
                 labels.by_label.entry(folded(wording)).or_insert(particular);
@@ -89,14 +100,6 @@ impl Labels {
         if let Some(particular) = self.with_or_without_rated(label, &folded_label) {
             return Some((particular, None));
         }
-        const BOUNDS: [(&str, Limit); 6] = [
-            ("minimum ", Limit::Least),
-            ("min ", Limit::Least),
-            ("least ", Limit::Least),
-            ("maximum ", Limit::Greatest),
-            ("max ", Limit::Greatest),
-            ("greatest ", Limit::Greatest),
-        ];
         BOUNDS.iter().find_map(|(word, limit)| {
             let rest = folded_label.strip_prefix(word)?;
             let symbol = label.split_whitespace().next_back().unwrap_or("");
@@ -141,7 +144,9 @@ pub fn find(sheet: SheetKind, label: &str) -> Lookup {
             let about = ["reason for ", "justification of "]
                 .iter()
                 .find_map(|start| plain.starts_with(start).then(|| label.trim().get(start.len()..).unwrap_or("")))
-                .or_else(|| plain.ends_with(" because").then(|| label.trim().get(..label.trim().len() - 8).unwrap_or("")));
+                .or_else(|| {
+                    plain.ends_with(" because").then(|| label.trim().get(..label.trim().len() - 8).unwrap_or(""))
+                });
             about.and_then(|rest| labels.find(rest.trim())).map(|(p, _)| Lookup::Found(Found::ReasonFor(p)))
         }
         SheetKind::Offer => {
@@ -238,8 +243,17 @@ mod tests {
 
     #[test]
     fn further_wordings_of_both_communities() {
-        for label in ["rated interrupting current", "symmetrical interrupting capability", "Isc", "short-circuit breaking current"] {
-            assert_eq!(label_of(SheetKind::Breaker, label), Some(("rated short-circuit breaking current", None)), "{label}");
+        for label in [
+            "rated interrupting current",
+            "symmetrical interrupting capability",
+            "Isc",
+            "short-circuit breaking current",
+        ] {
+            assert_eq!(
+                label_of(SheetKind::Breaker, label),
+                Some(("rated short-circuit breaking current", None)),
+                "{label}"
+            );
         }
         assert_eq!(label_of(SheetKind::Breaker, "BIL"), Some(("rated lightning impulse withstand voltage", None)));
     }
@@ -255,7 +269,10 @@ mod tests {
         assert_eq!(label_of(SheetKind::Breaker, "maximum opening time"), Some(("opening time", Some(Limit::Greatest))));
         assert_eq!(label_of(SheetKind::Breaker, "min opening time"), Some(("opening time", Some(Limit::Least))));
         assert_eq!(label_of(SheetKind::Site, "minimum ambient"), Some(("lowest ambient", None)));
-        assert_eq!(label_of(SheetKind::Breaker, "minimum functional pressure"), Some(("minimum functional pressure", None)));
+        assert_eq!(
+            label_of(SheetKind::Breaker, "minimum functional pressure"),
+            Some(("minimum functional pressure", None))
+        );
     }
 
     #[test]
@@ -268,16 +285,22 @@ mod tests {
 
     #[test]
     fn reasons_and_tested_values_go_with_every_label() {
-        assert!(matches!(find(SheetKind::Breaker, "reason for Ur"), Lookup::Found(Found::ReasonFor(p)) if p.label == "rated voltage"));
+        assert!(
+            matches!(find(SheetKind::Breaker, "reason for Ur"), Lookup::Found(Found::ReasonFor(p)) if p.label == "rated voltage")
+        );
         let tested = find(SheetKind::Offer, "type-tested DC time constant");
         assert!(matches!(tested, Lookup::Found(Found::TypeTested(p)) if p.label == "DC time constant"));
     }
 
     #[test]
     fn ambiguous_symbols_are_refused_with_their_readings() {
-        for (sheet, symbol) in
-            [(SheetKind::Breaker, "Us"), (SheetKind::System, "Us"), (SheetKind::System, "Ik"), (SheetKind::Breaker, "Id"), (SheetKind::Breaker, "Ic")]
-        {
+        for (sheet, symbol) in [
+            (SheetKind::Breaker, "Us"),
+            (SheetKind::System, "Us"),
+            (SheetKind::System, "Ik"),
+            (SheetKind::Breaker, "Id"),
+            (SheetKind::Breaker, "Ic"),
+        ] {
             let Lookup::Refused { readings, .. } = find(sheet, symbol) else { panic!("{symbol} is not refused") };
             assert_eq!(readings.len(), 2, "{symbol}: {:?}", readings.iter().map(|p| p.label).collect::<Vec<_>>());
         }
@@ -286,7 +309,10 @@ mod tests {
 
     #[test]
     fn the_nearest_label_is_proposed_and_the_other_sheet_named() {
-        assert_eq!(nearest(SheetKind::Breaker, "rated continous current", 3).first(), Some(&"rated continuous current"));
+        assert_eq!(
+            nearest(SheetKind::Breaker, "rated continous current", 3).first(),
+            Some(&"rated continuous current")
+        );
         assert!(nearest(SheetKind::Breaker, "qwertyuiop", 3).is_empty());
         assert_eq!(others_with_label(SheetKind::Breaker, "altitude"), [SheetKind::Site]);
     }
@@ -319,7 +345,10 @@ mod tests {
                 assert!(!particular.basis.is_empty(), "{label}: no basis");
                 if let Kind::Quantity(kind) | Kind::WordsOrQuantity(_, kind) = &particular.kind {
                     for unit in kind.units {
-                        assert!(look_up(unit, kind.dimensions).is_some_and(|u| kind.dimensions.contains(&u.unit.dimension)), "{label}: {unit}");
+                        assert!(
+                            look_up(unit, kind.dimensions).is_some_and(|u| kind.dimensions.contains(&u.unit.dimension)),
+                            "{label}: {unit}"
+                        );
                     }
                     assert!(!kind.units.is_empty(), "{label}: no unit");
                 }

@@ -77,9 +77,10 @@ impl SheetKind {
                 ("like", Target::Sheet(&[Self::Family, Self::Breaker])),
             ],
             Self::Circuit | Self::Offer => &[("for", Target::Sheet(&[Self::Breaker]))],
-            Self::Deviation => {
-                &[("from", Target::Rule), ("in", Target::Sheet(&[Self::Breaker, Self::System, Self::Site, Self::Tender]))]
-            }
+            Self::Deviation => &[
+                ("from", Target::Rule),
+                ("in", Target::Sheet(&[Self::Breaker, Self::System, Self::Site, Self::Tender])),
+            ],
         }
     }
 

@@ -1,6 +1,6 @@
 //! Particulars of the sheet `site`. Service conditions.
 
-use crate::particular::{Extent, Kind, QuantityKind, words, particulars};
+use crate::particular::{Extent, Kind, QuantityKind, particulars, words};
 use crate::quantity::{Dimension, Qualifier};
 
 particulars! { Site, "site";

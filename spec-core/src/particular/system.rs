@@ -1,6 +1,6 @@
 //! Particulars of the sheet `system`. The network at the connection point.
 
-use crate::particular::{Kind, QuantityKind, Tail, words, particulars};
+use crate::particular::{Kind, QuantityKind, Tail, particulars, words};
 use crate::quantity::{Dimension, Qualifier};
 
 particulars! { System, "system";

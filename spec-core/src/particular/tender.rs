@@ -1,6 +1,6 @@
 //! Particulars of the sheet `tender`. What holds for the whole tender.
 
-use crate::particular::{Kind, QuantityKind, words, particulars};
+use crate::particular::{Kind, QuantityKind, particulars, words};
 use crate::quantity::Dimension;
 
 particulars! { Tender, "tender";

@@ -86,7 +86,10 @@ mod tests {
         let level = Power::from_si(4000e6);
         assert!(close(current_of_fault_level(level, ElectricPotential::from_si(72.5e3)).si(), 31.854e3, 1e-4));
         assert!(close(current_of_fault_level(level, ElectricPotential::from_si(69e3)).si(), 33.470e3, 1e-4));
-        let back = fault_level_of_current(current_of_fault_level(level, ElectricPotential::from_si(69e3)), ElectricPotential::from_si(69e3));
+        let back = fault_level_of_current(
+            current_of_fault_level(level, ElectricPotential::from_si(69e3)),
+            ElectricPotential::from_si(69e3),
+        );
         assert!(close(back.si(), level.si(), 1e-12));
     }
 

@@ -64,7 +64,17 @@ fn from_100(
     let Some(t2_over_t1) = row.t2_over_t1 else {
         let rate = VoltageRate::from_si(row.rate_kv_per_us? * 1e9);
         let t3 = uc / rate;
-        return Some(Envelope { duty, kpp: factor, kaf: row.kaf, uc, rate, u1: None, t1: None, t2: None, t3: Some(t3) });
+        return Some(Envelope {
+            duty,
+            kpp: factor,
+            kaf: row.kaf,
+            uc,
+            rate,
+            u1: None,
+            t1: None,
+            t2: None,
+            t3: Some(t3),
+        });
     };
     let u1 = crest(rated) * (FIRST_REFERENCE * factor);
     let (rate, t1) = match (row.rate_kv_per_us, row.t1_over_t100) {

@@ -14,8 +14,9 @@ pub use measure::{Measure, Physical};
 pub use unit::{Qualifier, SpeltUnit, Unit, canonical, look_up, normalised, units_of};
 
 pub use uom::si::f64::{
-    Acceleration, Angle, Capacitance, ElectricCurrent, ElectricPotential, ElectricalResistance, Force, Frequency, Inductance,
-    Length, Mass, MassDensity, Power, Pressure, Ratio, TemperatureInterval, ThermodynamicTemperature, Time, Velocity, Volume,
+    Acceleration, Angle, Capacitance, ElectricCurrent, ElectricPotential, ElectricalResistance, Force, Frequency,
+    Inductance, Length, Mass, MassDensity, Power, Pressure, Ratio, TemperatureInterval, ThermodynamicTemperature, Time,
+    Velocity, Volume,
 };
 
 use uom::si::{ISQ, Quantity, SI};

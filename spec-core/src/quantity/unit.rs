@@ -11,6 +11,9 @@ use uom::si::f64 as q;
 
 use super::Dimension;
 
+/// To SI base units, and back.
+type Scale = (fn(f64) -> f64, fn(f64) -> f64);
+
 /// A unit of the table.
 #[derive(Debug)]
 pub struct Unit {
@@ -20,7 +23,7 @@ pub struct Unit {
     pub dimension: Dimension,
     spellings: &'static [&'static str],
     /// Value in SI base units of a number of these units; absent for cycles, which need a frequency.
-    scale: Option<(fn(f64) -> f64, fn(f64) -> f64)>,
+    scale: Option<Scale>,
 }
 
 impl PartialEq for Unit {
@@ -84,7 +87,8 @@ impl Qualifier {
 
     /// The qualifier that a word stands for.
     pub fn read(word: &str) -> Option<Self> {
-        let plain: String = word.chars().filter(|c| !matches!(c, '.' | '(' | ')')).collect::<String>().to_ascii_lowercase();
+        let plain: String =
+            word.chars().filter(|c| !matches!(c, '.' | '(' | ')')).collect::<String>().to_ascii_lowercase();
         Some(match plain.as_str() {
             "rms" | "r" | "sym" | "symmetrical" => Self::Rms,
             "peak" | "pk" | "crest" | "p" => Self::Peak,
@@ -175,8 +179,20 @@ static UNITS: &[Unit] = &[
     unit!(Speed, "m/s", [], Velocity, velocity::meter_per_second),
     unit!(Speed, "km/h", ["kmh", "kph"], Velocity, velocity::kilometer_per_hour),
     unit!(Speed, "mph", [], Velocity, velocity::mile_per_hour),
-    unit!(Temperature, "degC", ["C", "deg.C", "degreesC", "celsius"], ThermodynamicTemperature, thermodynamic_temperature::degree_celsius),
-    unit!(Temperature, "degF", ["F", "deg.F", "fahrenheit"], ThermodynamicTemperature, thermodynamic_temperature::degree_fahrenheit),
+    unit!(
+        Temperature,
+        "degC",
+        ["C", "deg.C", "degreesC", "celsius"],
+        ThermodynamicTemperature,
+        thermodynamic_temperature::degree_celsius
+    ),
+    unit!(
+        Temperature,
+        "degF",
+        ["F", "deg.F", "fahrenheit"],
+        ThermodynamicTemperature,
+        thermodynamic_temperature::degree_fahrenheit
+    ),
     unit!(Temperature, "K", ["kelvin"], ThermodynamicTemperature, thermodynamic_temperature::kelvin),
     unit!(TemperatureDifference, "K", ["kelvin"], TemperatureInterval, temperature_interval::kelvin),
     unit!(TemperatureDifference, "degC", ["C"], TemperatureInterval, temperature_interval::degree_celsius),
@@ -395,7 +411,11 @@ mod tests {
     fn a_name_means_one_unit_of_its_dimension() {
         for (i, (spelling, _, unit)) in SPELLINGS.iter().enumerate() {
             for (other, _, twin) in SPELLINGS.iter().skip(i + 1) {
-                assert!(spelling != other || unit.dimension != twin.dimension, "{spelling} twice in {:?}", unit.dimension);
+                assert!(
+                    spelling != other || unit.dimension != twin.dimension,
+                    "{spelling} twice in {:?}",
+                    unit.dimension
+                );
             }
         }
     }

@@ -39,7 +39,9 @@ fn below_load(case: &Case<'_>, findings: &mut Findings) {
     for place in load.places() {
         finding.related(place, "the largest load");
     }
-    if let Some(needed) = PreferredCurrents::of(RatingSeries::Continuous, &case.regimes().families()).at_or_above(load.value) {
+    if let Some(needed) =
+        PreferredCurrents::of(RatingSeries::Continuous, &case.regimes().families()).at_or_above(load.value)
+    {
         let text = rated.like(needed);
         finding.needed(Datum { text: text.clone(), si: Some(needed.si()) }).replace_by(text);
     }
@@ -91,7 +93,10 @@ mod tests {
 
     #[test]
     fn values_of_the_series_cited() {
-        assert_eq!(Bay::new().set("breaker", IR, "1500 A").one("continuous-current-not-preferred").edits[0].text, "1600 A");
+        assert_eq!(
+            Bay::new().set("breaker", IR, "1500 A").one("continuous-current-not-preferred").edits[0].text,
+            "1600 A"
+        );
         Bay::new().silent("continuous-current-not-preferred");
         let ieee = Bay::new().set("breaker", IR, "1200 A");
         ieee.one("continuous-current-not-preferred");

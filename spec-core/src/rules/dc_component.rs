@@ -9,7 +9,7 @@ use crate::particular::{breaker, circuit, system};
 use crate::physics::{dc_component, short_circuit};
 use crate::quantity::{ElectricCurrent, Physical, Ratio, Time, significant};
 use crate::sheet::Stated;
-use crate::standards::{TimeConstants};
+use crate::standards::TimeConstants;
 
 /// The rules of this subject.
 pub static ALL: &[&Rule] = &[
@@ -66,7 +66,11 @@ fn time_constant(case: &Case<'_>, findings: &mut Findings) {
     }
     let finding = findings.add(&DC_TIME_CONSTANT, place, message);
     finding.kind(if short { FindingKind::Shortfall } else { FindingKind::Caution });
-    finding.label(if stated.is_some() { "shorter than the network's" } else { "45 ms by the standard, shorter than the network's" });
+    finding.label(if stated.is_some() {
+        "shorter than the network's"
+    } else {
+        "45 ms by the standard, shorter than the network's"
+    });
     finding.stated(Datum::of(rating.value)).needed(Datum::of(network.value)).working(network.working.to_string());
     if let Some((duty, rated)) = totals {
         finding.working(duty.working.to_string()).working(rated.working.to_string());
@@ -84,14 +88,20 @@ fn time_constant(case: &Case<'_>, findings: &mut Findings) {
             isc.like(reduced)
         ));
     }
-    let listed = case.rated_voltage().and_then(|ur| TimeConstants::of(ur.value, case.is_generator_breaker()).at_or_above(network.value));
+    let listed = case
+        .rated_voltage()
+        .and_then(|ur| TimeConstants::of(ur.value, case.is_generator_breaker()).at_or_above(network.value));
     match (listed, stated) {
         (Some(tau), Some(stated)) => {
             finding.replace_by(stated.like(tau));
             finding.advice("the making current and the DC percentage follow from the time constant");
         }
         (Some(tau), None) => {
-            finding.edit(format!("ask for {}", tau.show()), case.sheet.end, format!("\n    DC time constant: {}", tau.show()));
+            finding.edit(
+                format!("ask for {}", tau.show()),
+                case.sheet.end,
+                format!("\n    DC time constant: {}", tau.show()),
+            );
         }
         (None, _) => {
             finding.advice(
@@ -115,7 +125,8 @@ pub static DC_TIME_CONSTANT_NOT_LISTED: Rule = Rule {
 };
 
 fn not_listed(case: &Case<'_>, findings: &mut Findings) {
-    let (Some(tau), Some(ur)) = (case.breaker.quantity::<Time>(&breaker::DC_TIME_CONSTANT), case.rated_voltage()) else {
+    let (Some(tau), Some(ur)) = (case.breaker.quantity::<Time>(&breaker::DC_TIME_CONSTANT), case.rated_voltage())
+    else {
         return;
     };
     let listed = TimeConstants::of(ur.value, case.is_generator_breaker());
@@ -123,7 +134,8 @@ fn not_listed(case: &Case<'_>, findings: &mut Findings) {
         return;
     }
     let values: Vec<String> = listed.values().map(|t| tau.like(t)).collect();
-    let message = format!("{} is nobody's test value; at {} they are {}", tau.measure, ur.measure, values.join(" and "));
+    let message =
+        format!("{} is nobody's test value; at {} they are {}", tau.measure, ur.measure, values.join(" and "));
     let finding = findings.add(&DC_TIME_CONSTANT_NOT_LISTED, tau.place(), message);
     finding.label("not a listed time constant").stated(&tau.measure).beside(ur.statement, "the rated voltage");
     if let Some(next) = listed.at_or_above(tau.value) {
@@ -222,9 +234,11 @@ fn dc_base(case: &Case<'_>, findings: &mut Findings) {
         return;
     }
     let of_rms = isc.value * share.value.value;
-    let why = if apart(of_rms) <= AGREES { format!("it is {} of the rms value; ", share.measure) } else { String::new() };
+    let why =
+        if apart(of_rms) <= AGREES { format!("it is {} of the rms value; ", share.measure) } else { String::new() };
     let text = current.like(expected);
-    let message = format!("{} is not {} of {}: {why}the DC current is {text}", current.measure, share.measure, isc.measure);
+    let message =
+        format!("{} is not {} of {}: {why}the DC current is {text}", current.measure, share.measure, isc.measure);
     findings
         .add(&DC_COMPONENT_BASE, current.place(), message)
         .label("not the percentage of the AC peak")
@@ -269,7 +283,11 @@ fn asymmetrical(case: &Case<'_>, findings: &mut Findings) {
         .label("not the total rms current")
         .stated(&stated.measure)
         .needed(Datum { text: text.clone(), si: Some(total.si()) })
-        .working(format!("Isc sqrt(1 + 2 p^2) = {} x sqrt(1 + 2 x {}^2) = {text}", isc.measure, significant(share.value, 3)))
+        .working(format!(
+            "Isc sqrt(1 + 2 p^2) = {} x sqrt(1 + 2 x {}^2) = {text}",
+            isc.measure,
+            significant(share.value, 3)
+        ))
         .beside(isc.statement, "the breaking current")
         .replace_by(text);
 }
@@ -294,8 +312,11 @@ fn constants(case: &Case<'_>, findings: &mut Findings) {
     let tau = system.quantity::<Time>(&system::DC_TIME_CONSTANT);
     let x_over_r = system.quantity::<Ratio>(&system::X_OVER_R);
     let r_over_x = system.quantity::<Ratio>(&system::R_OVER_X).filter(|s| s.value.value > 0.0);
-    let of_x = x_over_r.as_ref().map(|s| (short_circuit::time_constant(s.value.value, frequency), s.statement, s.measure));
-    let of_r = r_over_x.as_ref().map(|s| (short_circuit::time_constant(s.value.value.recip(), frequency), s.statement, s.measure));
+    let of_x =
+        x_over_r.as_ref().map(|s| (short_circuit::time_constant(s.value.value, frequency), s.statement, s.measure));
+    let of_r = r_over_x
+        .as_ref()
+        .map(|s| (short_circuit::time_constant(s.value.value.recip(), frequency), s.statement, s.measure));
     let first = tau.as_ref().map(|s| (s.value, s.statement, s.measure)).or(of_x);
     let Some((value, statement, measure)) = first else { return };
     for (other, other_statement, other_measure) in [of_x, of_r].into_iter().flatten() {
@@ -318,9 +339,10 @@ fn constants(case: &Case<'_>, findings: &mut Findings) {
             .working(format!("tau = (X/R)/(2 pi f), f = {}: {}", frequency.show(), other.show()))
             .beside(statement, "the one that checks take");
     }
-    let (Some(peak), Some(initial)) =
-        (system.quantity::<ElectricCurrent>(&system::PEAK_SHORT_CIRCUIT_CURRENT), case.duty.short_circuit_current.as_ref())
-    else {
+    let (Some(peak), Some(initial)) = (
+        system.quantity::<ElectricCurrent>(&system::PEAK_SHORT_CIRCUIT_CURRENT),
+        case.duty.short_circuit_current.as_ref(),
+    ) else {
         return;
     };
     let kappa = short_circuit::peak_factor(short_circuit::x_over_r(value, frequency).recip());
@@ -409,10 +431,11 @@ mod tests {
     /// 28.4 kA at X/R 21 (66.8 ms) against 31.5 kA at 45 ms with 30 ms of opening time: the total still fits (36.0 of 36.4 kA).
     #[test]
     fn a_longer_time_constant_whose_total_fits_is_a_caution() {
-        let bay = Bay::new()
-            .without("system", "DC time constant")
-            .set("system", "X/R", "21")
-            .set("breaker", "opening time", "at most 30 ms");
+        let bay = Bay::new().without("system", "DC time constant").set("system", "X/R", "21").set(
+            "breaker",
+            "opening time",
+            "at most 30 ms",
+        );
         let finding = bay.one("dc-time-constant");
         assert_eq!(finding.kind, FindingKind::Caution);
         for number in ["66.8 ms", "45 ms", "36 kA", "36.4 kA"] {
@@ -450,7 +473,10 @@ mod tests {
     fn a_time_constant_that_nobody_tests() {
         let finding = Bay::new().set("breaker", "DC time constant", "72 ms").one("dc-time-constant-not-listed");
         assert!(finding.message.contains("45 ms and 60 ms"), "{}", finding.message);
-        assert_eq!(Bay::new().set("breaker", "DC time constant", "50 ms").one("dc-time-constant-not-listed").edits[0].text, "60 ms");
+        assert_eq!(
+            Bay::new().set("breaker", "DC time constant", "50 ms").one("dc-time-constant-not-listed").edits[0].text,
+            "60 ms"
+        );
         Bay::new().set("breaker", "DC time constant", "60 ms").silent("dc-time-constant-not-listed");
         Bay::new().silent("dc-time-constant-not-listed");
         // A generator circuit-breaker has 133 ms.
@@ -524,7 +550,9 @@ mod tests {
 
     #[test]
     fn current_zeros_are_missing_near_generators() {
-        let bay = |share: &str| Bay::new().set("circuit", "kind", "generator").set("circuit", "generator-source DC component", share);
+        let bay = |share: &str| {
+            Bay::new().set("circuit", "kind", "generator").set("circuit", "generator-source DC component", share)
+        };
         bay("130 %").one("delayed-current-zero");
         bay("99 %").silent("delayed-current-zero");
         bay("100 %").one("delayed-current-zero");

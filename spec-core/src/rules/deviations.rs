@@ -41,8 +41,8 @@ pub fn apply(set: &Set, policy: &Policy, findings: &mut Findings) {
             let message = format!("this deviation accepts nothing: {} is missing", missing.join(" and "));
             let finding = findings.add(&DEVIATION_INCOMPLETE, sheet.heading, message);
             finding.label("incomplete");
-            let added: String = missing.iter().map(|label| format!("\n    {label}: ")).collect();
-            finding.edit(format!("add {}", missing.join(" and ")), sheet.end, added);
+            let added = missing.join(":\n    ");
+            finding.edit(format!("add {}", missing.join(" and ")), sheet.end, format!("\n    {added}:"));
             continue;
         }
         let Some(acceptance) = acceptance(&facts) else { continue };
@@ -139,8 +139,8 @@ mod tests {
     #[test]
     fn each_of_the_three_is_needed() {
         for label in ["reason", "approved", "until"] {
-            let text: String =
-                DEVIATION.lines().filter(|line| !line.contains(&format!("{label}:"))).map(|l| format!("{l}\n")).collect();
+            let lines: Vec<&str> = DEVIATION.lines().filter(|line| !line.contains(&format!("{label}:"))).collect();
+            let text = lines.join("\n") + "\n";
             let findings = bay().and(&text).findings();
             let found = findings.iter().find(|f| f.rule == DEVIATION_INCOMPLETE.name).expect(label);
             assert!(found.message.contains(label), "{}", found.message);

@@ -44,11 +44,15 @@ fn first_pole(case: &Case<'_>, findings: &mut Findings) {
     if stated.value.value >= needed.value.value - FACTOR_SLACK {
         return;
     }
-    let Some(standard) = standards::first_pole_factors().find(|f| *f >= needed.value.value - FACTOR_SLACK) else { return };
+    let Some(standard) = standards::first_pole_factors().find(|f| *f >= needed.value.value - FACTOR_SLACK) else {
+        return;
+    };
     let number = significant(stated.value.value, 3);
     let message = match case.system.word(&system::NEUTRAL) {
         Some((word, _)) if needed.working.inputs.iter().any(|input| input.symbol == "neutral") => {
-            format!("a first-pole-to-clear factor of {number} contradicts a neutral that is {word}: it has to be {standard}")
+            format!(
+                "a first-pole-to-clear factor of {number} contradicts a neutral that is {word}: it has to be {standard}"
+            )
         }
         _ => format!(
             "the network asks for a first-pole-to-clear factor of {}, {number} is stated",
@@ -91,10 +95,8 @@ fn unusual(case: &Case<'_>, findings: &mut Findings) {
     if rated.value.si() < RARE_FROM * (1.0 - 1e-6) || stated.value.value < 1.5 - FACTOR_SLACK || known {
         return;
     }
-    let message = format!(
-        "few breakers are tested with 1.5 at {}, and nothing says that the neutral asks for it",
-        rated.measure
-    );
+    let message =
+        format!("few breakers are tested with 1.5 at {}, and nothing says that the neutral asks for it", rated.measure);
     findings
         .add(&FIRST_POLE_FACTOR_UNUSUAL, stated.place(), message)
         .label("unusual at this voltage")
@@ -156,7 +158,9 @@ pub static OUT_OF_PHASE_FACTOR: Rule = Rule {
 
 fn out_of_phase(case: &Case<'_>, findings: &mut Findings) {
     let Some(stated) = case.breaker.quantity::<Ratio>(&breaker::OUT_OF_PHASE_VOLTAGE_FACTOR) else { return };
-    let (Some((effective, earthing)), Some(rated)) = (case.duty.effectively_earthed, case.rated_voltage()) else { return };
+    let (Some((effective, earthing)), Some(rated)) = (case.duty.effectively_earthed, case.rated_voltage()) else {
+        return;
+    };
     let Some(needed) = standards::out_of_phase_factor(effective) else { return };
     // Below 100 kV 2.5 is the standard's own whatever the neutral.
     let below_100 = rated.value.si() < FACTOR_BY_EARTHING_FROM;
@@ -215,7 +219,9 @@ mod tests {
     #[test]
     fn more_than_the_duty_is_permitted() {
         let bay = Bay::new().set("breaker", KPP, "1.5");
-        for rule in ["first-pole-factor", "first-pole-factor-unusual", "first-pole-factor-excess", "out-of-phase-factor"] {
+        for rule in
+            ["first-pole-factor", "first-pole-factor-unusual", "first-pole-factor-excess", "out-of-phase-factor"]
+        {
             bay.silent(rule);
         }
     }
@@ -225,7 +231,9 @@ mod tests {
     }
 
     fn unsaid(bay: Bay) -> Bay {
-        bay.without("system", "neutral").without("system", "X0/X1").without("system", "single-phase short-circuit current")
+        bay.without("system", "neutral")
+            .without("system", "X0/X1")
+            .without("system", "single-phase short-circuit current")
     }
 
     #[test]
@@ -238,7 +246,9 @@ mod tests {
         not_said.silent("first-pole-factor-excess");
         unsaid(at("170 kV")).silent("first-pole-factor-unusual");
         at("170 kV").silent("first-pole-factor-excess");
-        at("245 kV").set("breaker", "reason for first-pole-to-clear factor", "\"faults clear of earth\"").silent("first-pole-factor-excess");
+        at("245 kV")
+            .set("breaker", "reason for first-pole-to-clear factor", "\"faults clear of earth\"")
+            .silent("first-pole-factor-excess");
     }
 
     #[test]

@@ -92,12 +92,15 @@ pub static ENDURANCE_NOT_VERIFIABLE: Rule = Rule {
 const ENDURANCE_CLASSES_TO: f64 = 52e3;
 
 fn endurance(case: &Case<'_>, findings: &mut Findings) {
-    let (Some((class, _)), Some(rated)) = (case.breaker.class(&breaker::CLASSES, 'E'), case.rated_voltage()) else { return };
+    let (Some((class, _)), Some(rated)) = (case.breaker.class(&breaker::CLASSES, 'E'), case.rated_voltage()) else {
+        return;
+    };
     let numbered = case.breaker.mentions(&breaker::NUMBER_OF_SHORT_CIRCUIT_INTERRUPTIONS);
     if rated.value.si() <= ENDURANCE_CLASSES_TO * (1.0 + EQUAL) || numbered {
         return;
     }
-    let message = format!("class {class} has no test at {}: the classes of electrical endurance end at 52 kV", rated.measure);
+    let message =
+        format!("class {class} has no test at {}: the classes of electrical endurance end at 52 kV", rated.measure);
     findings
         .add(&ENDURANCE_NOT_VERIFIABLE, class.place, message)
         .label("no test at this voltage")
@@ -119,7 +122,9 @@ pub static DOUBLE_EARTH_FAULT: Rule = Rule {
 };
 
 fn double_earth(case: &Case<'_>, findings: &mut Findings) {
-    let Some((word @ ("isolated" | "resonant earthed"), statement)) = case.system.word(&system::NEUTRAL) else { return };
+    let Some((word @ ("isolated" | "resonant earthed"), statement)) = case.system.word(&system::NEUTRAL) else {
+        return;
+    };
     if case.breaker.mentions(&breaker::DOUBLE_EARTH_FAULT_BREAKING_CURRENT) {
         return;
     }
@@ -160,7 +165,8 @@ fn demand(case: &Case<'_>, findings: &mut Findings) {
         return;
     }
     let count = significant(number.value.value, 4);
-    let message = format!("{count} full short-circuits before maintenance exceed what is usual: confirm that they are needed");
+    let message =
+        format!("{count} full short-circuits before maintenance exceed what is usual: confirm that they are needed");
     findings
         .add(&ENDURANCE_DEMAND, number.place(), message)
         .label("an unusual demand")
@@ -175,7 +181,11 @@ mod tests {
     #[test]
     fn a_generator_has_a_standard_of_its_own() {
         let bay = |ur: &str| {
-            Bay::new().set("breaker", "rated voltage", ur).set("system", "highest voltage", ur).set("circuit", "kind", "generator")
+            Bay::new().set("breaker", "rated voltage", ur).set("system", "highest voltage", ur).set(
+                "circuit",
+                "kind",
+                "generator",
+            )
         };
         bay("17.5 kV").one("generator-breaker-standard");
         bay("17.5 kV").set("tender", "standards", "IEC/IEEE 62271-37-013:2021").silent("generator-breaker-standard");

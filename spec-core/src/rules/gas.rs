@@ -94,11 +94,14 @@ fn begin<'f>(
     let dew = |level: Level| gas.level(level).and_then(|s| s.dew_point.as_ref());
     let lowest = gas.lowest.as_ref().map_or_else(String::new, |l| celsius(l.value));
     let filling = gas.level(Level::Filling).map_or("", |f| f.written.as_str());
-    let (from, phase) = dew(Level::Filling).map_or((String::new(), Phase::Liquid), |(d, c)| (celsius(d.value), c.phase));
+    let (from, phase) =
+        dew(Level::Filling).map_or((String::new(), Phase::Liquid), |(d, c)| (celsius(d.value), c.phase));
     let becomes = if phase == Phase::Frost { "come down as frost" } else { "liquefy" };
     let own = state.dew_point.as_ref().map_or_else(String::new, |(dew, _)| celsius(dew.value));
     let message = match state.level {
-        Level::Filling => format!("SF6 filled to {filling} begins to {becomes} at {from}, and the site goes down to {lowest}"),
+        Level::Filling => {
+            format!("SF6 filled to {filling} begins to {becomes} at {from}, and the site goes down to {lowest}")
+        }
         level => format!(
             "SF6 filled to {filling} begins to {becomes} at {from}; at {lowest} the vapour that is left stands below the {} {}, \
              which is reached at {own}",
@@ -116,7 +119,12 @@ fn tell(case: &Case<'_>, finding: &mut Finding) {
     let gas = &case.duty.gas;
     for state in &gas.levels {
         if let Some((dew, _)) = &state.dew_point {
-            finding.working(format!("dew point of the {}, {}: {}", state.level.word(), state.written, celsius(dew.value)));
+            finding.working(format!(
+                "dew point of the {}, {}: {}",
+                state.level.word(),
+                state.written,
+                celsius(dew.value)
+            ));
         }
     }
     if let (Some(condensed), Some(remaining), Some(lowest)) = (&gas.condensed, &gas.remaining, &gas.lowest) {
@@ -197,14 +205,17 @@ fn order(case: &Case<'_>, findings: &mut Findings) {
             })
             .collect();
         for pair in known.windows(2) {
-            let [(_, above_reading, above, above_statement), (rank, reading, below, statement)] = pair else { continue };
+            let [(_, above_reading, above, above_statement), (rank, reading, below, statement)] = pair else {
+                continue;
+            };
             // Reference temperatures apart, or one reference unsaid: not one scale.
             if above.stated != below.stated || above_reading.at.map(|m| m.si) != reading.at.map(|m| m.si) {
                 continue;
             }
             let (high, low) = (above.pressure.si(), below.pressure.si());
             let touching = (high - low).abs() <= 1e-6 * high;
-            let may_touch = *rank == levels.len() - 1 && above_statement.particular.is(levels.get(2).copied().unwrap_or(above_statement.particular));
+            let may_touch = *rank == levels.len() - 1
+                && above_statement.particular.is(levels.get(2).copied().unwrap_or(above_statement.particular));
             if high > low && !touching || touching && may_touch {
                 continue;
             }
@@ -386,7 +397,10 @@ mod tests {
     #[test]
     fn gauge_levels_in_the_units_of_the_author() {
         let at = |lowest: &str| {
-            cold(lowest).set("breaker", FILLING, "75 psig").set("breaker", ALARM, "69 psig").set("breaker", MINIMUM, "62 psig")
+            cold(lowest)
+                .set("breaker", FILLING, "75 psig")
+                .set("breaker", ALARM, "69 psig")
+                .set("breaker", MINIMUM, "62 psig")
         };
         assert_eq!(at("-31 degC").one("gas-liquefaction").kind, FindingKind::Remark);
         at("-33 degC").one("gas-density-at-cold");
@@ -443,7 +457,10 @@ mod tests {
         let finding = Bay::new().set("breaker", FILLING, "1.7 MPa abs").one("gas-liquefaction");
         assert!(finding.message.contains("1.6 MPa"), "{}", finding.message);
         assert_eq!(finding.kind, FindingKind::Caution);
-        Bay::new().set("breaker", FILLING, "1.6 MPa abs").set("site", "lowest ambient", "10 degC").silent("gas-liquefaction");
+        Bay::new()
+            .set("breaker", FILLING, "1.6 MPa abs")
+            .set("site", "lowest ambient", "10 degC")
+            .silent("gas-liquefaction");
     }
 
     #[test]
@@ -471,7 +488,9 @@ mod tests {
 
     #[test]
     fn a_bare_pressure_takes_the_reference_of_its_bracket() {
-        let bay = |text: &str| cold("-27 degC").set("breaker", FILLING, text).without("breaker", ALARM).without("breaker", MINIMUM);
+        let bay = |text: &str| {
+            cold("-27 degC").set("breaker", FILLING, text).without("breaker", ALARM).without("breaker", MINIMUM)
+        };
         // 0.7 MPa abs condenses from -26.2 degC, 0.6 from -31.1.
         bay("5.987 bar (0.7 MPa abs)").one("gas-liquefaction");
         bay("6.0 bar (0.6 MPa abs)").silent("gas-liquefaction");
@@ -492,6 +511,9 @@ mod tests {
         let finding = Bay::new().set("breaker", "temperature class", "minus 5 indoor").one("indoor-class-outdoors");
         assert_eq!(finding.edits[0].text, "minus 25 outdoor");
         Bay::new().silent("indoor-class-outdoors");
-        Bay::new().set("breaker", "temperature class", "minus 5 indoor").set("site", "installation", "indoor").silent("indoor-class-outdoors");
+        Bay::new()
+            .set("breaker", "temperature class", "minus 5 indoor")
+            .set("site", "installation", "indoor")
+            .silent("indoor-class-outdoors");
     }
 }

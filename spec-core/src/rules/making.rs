@@ -92,9 +92,11 @@ fn below_duty(case: &Case<'_>, findings: &mut Findings) {
     let making = making_peak(case);
     let breaking = breaking_current(case);
     // A stated value that is short of its own factor, and would cover the peak with it, is told by making-current-factor.
-    let by_factor = breaking.as_ref().zip(making_factor_of(case, &case.duty)).map(|(isc, (factor, _))| isc.value * factor);
+    let by_factor =
+        breaking.as_ref().zip(making_factor_of(case, &case.duty)).map(|(isc, (factor, _))| isc.value * factor);
     let slipped = making.as_ref().zip(by_factor).is_some_and(|(making, right)| {
-        making.value.si() < right.si() * (1.0 - case.policy.making_below) && right.si() >= peak.value.si() * (1.0 - EQUAL)
+        making.value.si() < right.si() * (1.0 - case.policy.making_below)
+            && right.si() >= peak.value.si() * (1.0 - EQUAL)
     });
     if slipped {
         return;
@@ -203,7 +205,10 @@ fn rms(case: &Case<'_>, findings: &mut Findings) {
         message += &format!("; today the making current of {} is {} peak", breaking.measure, making.like(today));
     }
     let finding = findings.add(&CLOSE_AND_LATCH_RMS, making.place(), message);
-    finding.label("rms of the old structure").stated(&making.measure).beside(breaking.statement, "the breaking current");
+    finding
+        .label("rms of the old structure")
+        .stated(&making.measure)
+        .beside(breaking.statement, "the breaking current");
     finding.working(format!("1.6 x {} = {} rms", breaking.measure, making.like(breaking.value * OLD_FACTOR)));
     if let Some(today) = today {
         let text = format!("{} peak", making.like(today));
@@ -236,7 +241,10 @@ mod tests {
         let finding = at_60_hz(Bay::new().set("breaker", IMA, "79 kA")).one("making-current-factor");
         assert_eq!(finding.kind, FindingKind::Contradiction);
         assert_eq!(finding.edits[0].text, "81.9 kA");
-        assert_eq!(Bay::new().set("breaker", IMA, "77.1 kA").one("making-current-factor").kind, FindingKind::Contradiction);
+        assert_eq!(
+            Bay::new().set("breaker", IMA, "77.1 kA").one("making-current-factor").kind,
+            FindingKind::Contradiction
+        );
     }
 
     #[test]
@@ -259,8 +267,10 @@ mod tests {
                 .set("breaker", IMA, "108 kA")
                 .silent("making-current-factor");
         }
-        at_60_hz(Bay::new().set("breaker", "rated short-circuit breaking current", "25 kA").set("breaker", IMA, "65 kA"))
-            .silent("making-current-factor");
+        at_60_hz(
+            Bay::new().set("breaker", "rated short-circuit breaking current", "25 kA").set("breaker", IMA, "65 kA"),
+        )
+        .silent("making-current-factor");
     }
 
     #[test]
@@ -276,7 +286,8 @@ mod tests {
     /// Isc 31.5, Ik 31.2, tau 45 ms, 50 Hz: ip 80.0 above 78.75 kA, adequate by definition.
     #[test]
     fn the_rounded_factor_is_adequate_by_definition() {
-        let bay = Bay::new().set("system", "short-circuit current", "31.2 kA").set("system", "DC time constant", "45 ms");
+        let bay =
+            Bay::new().set("system", "short-circuit current", "31.2 kA").set("system", "DC time constant", "45 ms");
         let finding = bay.one("making-current-below-duty");
         assert_eq!(finding.kind, FindingKind::Caution);
         assert!(finding.message.contains("80 kA"), "{}", finding.message);
@@ -285,7 +296,8 @@ mod tests {
 
     #[test]
     fn beyond_time_constant_or_current_it_is_a_shortfall() {
-        let bay = Bay::new().set("system", "short-circuit current", "31.2 kA").set("system", "DC time constant", "80 ms");
+        let bay =
+            Bay::new().set("system", "short-circuit current", "31.2 kA").set("system", "DC time constant", "80 ms");
         assert_eq!(bay.one("making-current-below-duty").kind, FindingKind::Shortfall);
         let bay = Bay::new().set("system", "short-circuit current", "33 kA");
         assert_eq!(bay.one("making-current-below-duty").kind, FindingKind::Shortfall);

@@ -43,7 +43,8 @@ fn form(case: &Case<'_>, findings: &mut Findings) {
             finding.edit(format!("write {text}"), pause.place, text);
         }
     }
-    let alternates = sequence.steps.iter().enumerate().all(|(at, step)| matches!(step, SequenceStep::Pause(_)) == (at % 2 == 1));
+    let alternates =
+        sequence.steps.iter().enumerate().all(|(at, step)| matches!(step, SequenceStep::Pause(_)) == (at % 2 == 1));
     if !alternates || sequence.steps.len() % 2 == 0 {
         findings
             .add(&SEQUENCE_MALFORMED, statement.value, "operations and pauses have to follow each other in turn")
@@ -106,7 +107,8 @@ fn rapid(case: &Case<'_>, findings: &mut Findings) {
         }
         let within = dead.as_ref().map_or_else(String::new, |dead| format!(" in {}", dead.measure));
         let message = format!("the circuit recloses{within}, and {sequence} cannot");
-        let rest = sequence.pauses().last().and_then(|p| p.measure).map_or_else(|| "3 min".to_owned(), |m| m.to_string());
+        let rest =
+            sequence.pauses().last().and_then(|p| p.measure).map_or_else(|| "3 min".to_owned(), |m| m.to_string());
         let text = format!("O - 0.3 s - CO - {rest} - CO");
         findings
             .add(&SEQUENCE_WITHOUT_RAPID_RECLOSING, statement.value, message)
@@ -145,7 +147,10 @@ fn interval(case: &Case<'_>, findings: &mut Findings) {
     }
     let shown = pause.measure.map_or_else(|| second.show(), |m| m.to_string());
     let message = if is(15.0) {
-        format!("a pause of {shown} is a value of the standard up to 52 kV; at {} it is by agreement", rated_voltage.measure)
+        format!(
+            "a pause of {shown} is a value of the standard up to 52 kV; at {} it is by agreement",
+            rated_voltage.measure
+        )
     } else {
         format!("a pause of {shown} before the second closing is no value of the standard")
     };
@@ -182,8 +187,10 @@ fn dead_time(case: &Case<'_>, findings: &mut Findings) {
         if dead.value.si() >= first.si() * (1.0 - EQUAL) {
             continue;
         }
-        let unit = look_up("s", &[]).map_or_else(|| first.show(), |s| format!("{} {}", significant(first.si(), 3), s.unit.name));
-        let message = format!("a dead time of {} is shorter than the first pause of the sequence, {unit}", dead.measure);
+        let unit = look_up("s", &[])
+            .map_or_else(|| first.show(), |s| format!("{} {}", significant(first.si(), 3), s.unit.name));
+        let message =
+            format!("a dead time of {} is shorter than the first pause of the sequence, {unit}", dead.measure);
         findings
             .add(&DEAD_TIME, dead.place(), message)
             .label("shorter than the sequence's pause")
@@ -208,7 +215,8 @@ mod tests {
         let edits: Vec<_> = findings.iter().map(|f| f.edits[0].text.as_str()).collect();
         assert_eq!(edits, ["0.3 s", "3 min"]);
         assert_eq!(sequence("O - t - CO - t' - CO").of("sequence-malformed").len(), 2);
-        for good in ["O - 0.3 s - CO - 3 min - CO", "O-3min-CO-3min-CO", "CO - 15 s - CO", "O–0.3 s–CO–1 min–CO"] {
+        for good in ["O - 0.3 s - CO - 3 min - CO", "O-3min-CO-3min-CO", "CO - 15 s - CO", "O–0.3 s–CO–1 min–CO"]
+        {
             sequence(good).silent("sequence-malformed");
         }
     }
@@ -251,10 +259,11 @@ mod tests {
         Bay::new().set("circuit", "single-phase dead time", "0.2 s").one("dead-time");
         // 18 to 22 cycles at 60 Hz fit 0.3 s.
         let cycles = |n: &str| {
-            Bay::new()
-                .set("system", "frequency", "60 Hz")
-                .set("breaker", "rated frequency", "60 Hz")
-                .set("circuit", "auto-reclosing dead time", n)
+            Bay::new().set("system", "frequency", "60 Hz").set("breaker", "rated frequency", "60 Hz").set(
+                "circuit",
+                "auto-reclosing dead time",
+                n,
+            )
         };
         cycles("18 cycles").silent("dead-time");
         cycles("22 cycles").silent("dead-time");

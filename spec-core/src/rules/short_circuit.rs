@@ -70,7 +70,9 @@ fn below_duty(case: &Case<'_>, findings: &mut Findings) {
     if let Some(needed) = needed {
         let text = rated.like(needed);
         finding.needed(Datum { text: text.clone(), si: Some(needed.si()) }).replace_by(text);
-        finding.advice("making current, short-time and peak withstand current and the out-of-phase current follow from it");
+        finding.advice(
+            "making current, short-time and peak withstand current and the out-of-phase current follow from it",
+        );
     }
 }
 
@@ -147,12 +149,7 @@ fn margin(case: &Case<'_>, findings: &mut Findings) {
     );
     let finding = findings.add(&SHORT_CIRCUIT_MARGIN, rated.place(), message);
     finding.label("less reserve than asked for").stated(percent(reserve)).needed(&policy.measure);
-    finding.working(format!(
-        "(Isc - Ik'')/Isc = ({} - {})/{}",
-        rated.measure,
-        rated.like(duty.value),
-        rated.measure
-    ));
+    finding.working(format!("(Isc - Ik'')/Isc = ({} - {})/{}", rated.measure, rated.like(duty.value), rated.measure));
     finding.beside(policy.statement, "the buyer's policy");
     if let Some(value) = series(case).at_or_above(needed) {
         finding.replace_by(rated.like(value));
@@ -238,7 +235,12 @@ fn fault_level(case: &Case<'_>, findings: &mut Findings) {
         .label("does not agree with the current")
         .stated(&level.measure)
         .needed(Datum { text: level.like(right), si: Some(right.si()) })
-        .working(format!("Ik'' = S/(sqrt3 U) = {}/(1.732 x {}) = {}", level.measure, nearest.show(), current.like(of_level)))
+        .working(format!(
+            "Ik'' = S/(sqrt3 U) = {}/(1.732 x {}) = {}",
+            level.measure,
+            nearest.show(),
+            current.like(of_level)
+        ))
         .beside(current.statement, "the short-circuit current")
         .edit(
             format!("write {} at {}", level.like(right), nearest.show()),
@@ -260,13 +262,16 @@ mod tests {
         assert_eq!(finding.edits[0].text, "40 kA");
         Bay::new().silent("breaking-current-below-duty");
         Bay::new().set("system", "short-circuit current", "31.5 kA").silent("breaking-current-below-duty");
-        let single = Bay::new().set("system", "single-phase short-circuit current", "32 kA").one("breaking-current-below-duty");
+        let single =
+            Bay::new().set("system", "single-phase short-circuit current", "32 kA").one("breaking-current-below-duty");
         assert!(single.message.contains("32 kA"), "{}", single.message);
     }
 
     #[test]
     fn a_fault_level_in_mva_is_a_current() {
-        let bay = Bay::new().without("system", "short-circuit current").without("system", "single-phase short-circuit current");
+        let bay = Bay::new()
+            .without("system", "short-circuit current")
+            .without("system", "single-phase short-circuit current");
         bay.clone().set("system", "fault level", "7.5 GVA at 132 kV").one("breaking-current-below-duty");
         bay.set("system", "fault level", "7000 MVA at 132 kV").silent("breaking-current-below-duty");
     }
@@ -297,7 +302,9 @@ mod tests {
         assert_eq!(finding.kind, FindingKind::Caution);
         assert!(finding.message.contains("30 kA") && finding.message.contains("33 kA"), "{}", finding.message);
         bay.silent("breaking-current-below-duty");
-        bay.clone().set("system", "symmetrical short-circuit breaking current", "32 kA").one("breaking-current-below-duty");
+        bay.clone()
+            .set("system", "symmetrical short-circuit breaking current", "32 kA")
+            .one("breaking-current-below-duty");
         // Without its time the decayed current does not count.
         bay.clone().without("system", "minimum time delay").one("breaking-current-below-duty");
         Bay::new().silent("decayed-current-basis");

@@ -42,7 +42,11 @@ fn twice(set: &Set, _: &Policy, findings: &mut Findings) {
         for statement in &sheet.statements {
             let Reading::Classes(classes) = &statement.reading else { continue };
             for (at, class) in classes.iter().enumerate() {
-                let earlier = classes.get(..at).unwrap_or(&[]).iter().find(|c| c.letter == class.letter && c.grade != class.grade);
+                let earlier = classes
+                    .get(..at)
+                    .unwrap_or(&[])
+                    .iter()
+                    .find(|c| c.letter == class.letter && c.grade != class.grade);
                 if let Some(first) = earlier {
                     findings
                         .add(&STATED_TWICE, class.place, format!("the classes {first} and {class} are both asked for"))
@@ -75,7 +79,9 @@ fn agree(first: &Reading, second: &Reading) -> bool {
             }
         }
         (Reading::List(a), Reading::List(b)) => a.iter().map(|i| &i.text).eq(b.iter().map(|i| &i.text)),
-        (Reading::Classes(a), Reading::Classes(b)) => a.iter().map(ToString::to_string).eq(b.iter().map(ToString::to_string)),
+        (Reading::Classes(a), Reading::Classes(b)) => {
+            a.iter().map(ToString::to_string).eq(b.iter().map(ToString::to_string))
+        }
         (Reading::Sequence(a), Reading::Sequence(b)) => a.to_string() == b.to_string(),
         (Reading::Gas(a), Reading::Gas(b)) => a.iter().map(|m| &m.portions).eq(b.iter().map(|m| &m.portions)),
         _ => first == second,
@@ -123,7 +129,9 @@ fn pairs<'a>(first: &'a QuantityReading, second: &'a QuantityReading) -> Vec<(&'
 /// The pressure of the air at the site of a breaker, Pa, where it is stated.
 fn air_of(set: &Set, sheet: &Sheet) -> Option<f64> {
     let site = set.sheet(sheet.target("at")?)?;
-    Facts::new(set.resolved(site.id)).quantity::<crate::quantity::Pressure>(&site::ATMOSPHERIC_PRESSURE).map(|s| s.value.si())
+    Facts::new(set.resolved(site.id))
+        .quantity::<crate::quantity::Pressure>(&site::ATMOSPHERIC_PRESSURE)
+        .map(|s| s.value.si())
 }
 
 fn compare(
@@ -155,8 +163,8 @@ fn compare(
     };
     let one_bare = is_pressure && said(first_reading) != said(second_reading);
     // A bare pressure beside one with its reference is whichever of the two it agrees as.
-    let bare_fits = one_bare
-        && references.iter().flatten().any(|r| [a + r - b, a - b, a - b - r].iter().any(|d| d.abs() <= slack));
+    let bare_fits =
+        one_bare && references.iter().flatten().any(|r| [a + r - b, a - b, a - b - r].iter().any(|d| d.abs() <= slack));
     if references.iter().flatten().any(|r| fits(*r)) || bare_fits {
         return;
     }
@@ -197,7 +205,9 @@ pub static BASIS_MISSING: Rule = Rule {
 
 fn basis(set: &Set, _: &Policy, findings: &mut Findings) {
     for statement in set.sheets.iter().flat_map(|sheet| &sheet.statements).filter(|s| s.about == About::Value) {
-        let (Some(reading), Kind::Quantity(kind)) = (statement.quantity(), &statement.particular.kind) else { continue };
+        let (Some(reading), Kind::Quantity(kind)) = (statement.quantity(), &statement.particular.kind) else {
+            continue;
+        };
         let words: [Qualifier; 2] = match kind.tail {
             Tail::DividingVoltage => [Qualifier::PhaseToPhase, Qualifier::PhaseToEarth],
             Tail::Supply => [Qualifier::Dc, Qualifier::Ac],
@@ -206,7 +216,8 @@ fn basis(set: &Set, _: &Policy, findings: &mut Findings) {
         if words.iter().any(|word| reading.is(*word)) {
             continue;
         }
-        let message = format!("{} {}: {} or {}?", statement.particular.label, reading.measure, words[0].word(), words[1].word());
+        let message =
+            format!("{} {}: {} or {}?", statement.particular.label, reading.measure, words[0].word(), words[1].word());
         let finding = findings.add(&BASIS_MISSING, reading.place, message);
         finding.label(format!("{} or {}?", words[0].word(), words[1].word())).stated(&reading.measure);
         for word in words {
@@ -282,12 +293,14 @@ fn bounds(set: &Set, _: &Policy, findings: &mut Findings) {
             let Some(reading) = statement.quantity() else { continue };
             if let (true, Some((_, second))) = (reading.is_range(), reading.second) {
                 if second.si < reading.measure.si {
-                    let message = format!("this range begins with the greater value: {second} to {} is meant", reading.measure);
+                    let message =
+                        format!("this range begins with the greater value: {second} to {} is meant", reading.measure);
                     let text = format!("{second} to {}", reading.measure);
-                    findings
-                        .add(&BOUNDS_ORDER, reading.place, message)
-                        .label("greater value first")
-                        .edit(format!("write {text}"), reading.place, text);
+                    findings.add(&BOUNDS_ORDER, reading.place, message).label("greater value first").edit(
+                        format!("write {text}"),
+                        reading.place,
+                        text,
+                    );
                 }
             }
         }
@@ -335,8 +348,13 @@ fn ambients(facts: &Facts, low: &'static Particular, high: &'static Particular, 
         return;
     }
     let message = match above_highest {
-        Some(highest) => format!("{} {} is not below {} {}: were the two swapped?", low.label, lowest.measure, high.label, highest.measure),
-        None => format!("{} {} is hotter than the standard's maximum: was the label swapped?", low.label, lowest.measure),
+        Some(highest) => format!(
+            "{} {} is not below {} {}: were the two swapped?",
+            low.label, lowest.measure, high.label, highest.measure
+        ),
+        None => {
+            format!("{} {} is hotter than the standard's maximum: was the label swapped?", low.label, lowest.measure)
+        }
     };
     let finding = findings.add(&BOUNDS_ORDER, lowest.place(), message);
     finding.label("not a lowest temperature").stated(&lowest.measure);
@@ -386,16 +404,19 @@ static BANDS: &[(&Particular, f64, f64)] = &[
 
 fn magnitude(set: &Set, _: &Policy, findings: &mut Findings) {
     for statement in set.sheets.iter().flat_map(|sheet| &sheet.statements).filter(|s| s.about == About::Value) {
-        let Some((_, least, greatest)) = BANDS.iter().find(|(particular, _, _)| particular.is(statement.particular)) else {
+        let Some((_, least, greatest)) = BANDS.iter().find(|(particular, _, _)| particular.is(statement.particular))
+        else {
             continue;
         };
         let Some(reading) = statement.quantity() else { continue };
         for measure in [reading.lower(), reading.upper()] {
             let Some(value) = measure.si.filter(|value| value < least || value > greatest) else { continue };
             let Kind::Quantity(kind) = &statement.particular.kind else { continue };
-            let meant = kind.dimensions.iter().flat_map(|d| crate::quantity::units_of(*d)).find(|unit| {
-                unit.to_si(measure.number).is_some_and(|si| (*least..=*greatest).contains(&si))
-            });
+            let meant = kind
+                .dimensions
+                .iter()
+                .flat_map(|d| crate::quantity::units_of(*d))
+                .find(|unit| unit.to_si(measure.number).is_some_and(|si| (*least..=*greatest).contains(&si)));
             let shown = Measure::from_si(value, measure.dimension());
             let label = statement.particular.label;
             let message = match meant {
@@ -437,7 +458,13 @@ mod tests {
         let filling = |text: &str| Bay::new().set("breaker", "rated filling pressure", text);
         let finding = filling("80 psig (5.5 bar abs)").one("dual-units-disagree");
         assert_eq!(finding.edits[0].text, "6.53 bar abs");
-        for good in ["80 psig (6.53 bar abs)", "80 psig (6.52 bar abs)", "80 psig (5.5 bar gauge)", "0.6 MPa abs (87 psi)", "6 bar (0.6 MPa abs)"] {
+        for good in [
+            "80 psig (6.53 bar abs)",
+            "80 psig (6.52 bar abs)",
+            "80 psig (5.5 bar gauge)",
+            "0.6 MPa abs (87 psi)",
+            "6 bar (0.6 MPa abs)",
+        ] {
             filling(good).silent("dual-units-disagree");
         }
         let altitude = |text: &str| Bay::new().set("site", "altitude", text);
@@ -475,7 +502,9 @@ mod tests {
             let asked = bay.findings_with(Policy { issued: true, ..Policy::default() });
             assert!(asked.iter().any(|f| f.rule == "open-point" && f.kind == FindingKind::Contradiction));
         }
-        let owned = Bay::new().set("breaker", "break time", "open point \"protection, until May\"").set("tender", "status", "issued");
+        let owned = Bay::new()
+            .set("breaker", "break time", "open point \"protection, until May\"")
+            .set("tender", "status", "issued");
         assert_eq!(owned.one("open-point").kind, FindingKind::Omission);
         Bay::new().silent("open-point");
     }
@@ -488,8 +517,14 @@ mod tests {
         Bay::new().set("site", "lowest ambient", "45 degC").one("bounds-order");
         Bay::new().set("site", "lowest ambient", "39.9 degC").silent("bounds-order");
         Bay::new().set("site", "highest ambient", "-30 degC").one("bounds-order");
-        Bay::new().set("breaker", "minimum closing time", "60 ms").set("breaker", "maximum closing time", "50 ms").one("bounds-order");
-        Bay::new().set("breaker", "minimum closing time", "40 ms").set("breaker", "maximum closing time", "50 ms").silent("bounds-order");
+        Bay::new()
+            .set("breaker", "minimum closing time", "60 ms")
+            .set("breaker", "maximum closing time", "50 ms")
+            .one("bounds-order");
+        Bay::new()
+            .set("breaker", "minimum closing time", "40 ms")
+            .set("breaker", "maximum closing time", "50 ms")
+            .silent("bounds-order");
     }
 
     #[test]

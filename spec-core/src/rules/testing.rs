@@ -80,6 +80,12 @@ pub struct Bay {
     text: String,
 }
 
+impl Default for Bay {
+    fn default() -> Self {
+        Self::new()
+    }
+}
+
 impl Bay {
     /// The clean specification.
     pub fn new() -> Self {
@@ -191,7 +197,11 @@ impl Bay {
 
     /// What is found in it by another policy.
     pub fn findings_with(&self, policy: Policy) -> Vec<Finding> {
-        Assessor::standard().with_policy(policy).assess(&Sources::of("bay.cbspec", self.text.as_str())).findings().to_vec()
+        Assessor::standard()
+            .with_policy(policy)
+            .assess(&Sources::of("bay.cbspec", self.text.as_str()))
+            .findings()
+            .to_vec()
     }
 
     /// The findings of one rule.
@@ -222,6 +232,7 @@ impl Bay {
 /// The clean specification gives no contradiction, shortfall, omission or caution.
 #[test]
 fn the_clean_bay_is_clean() {
-    let grave: Vec<_> = Bay::new().findings().into_iter().filter(|f| f.kind < crate::finding::FindingKind::Excess).collect();
+    let grave: Vec<_> =
+        Bay::new().findings().into_iter().filter(|f| f.kind < crate::finding::FindingKind::Excess).collect();
     assert!(grave.is_empty(), "{grave:#?}");
 }

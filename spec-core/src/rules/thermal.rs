@@ -40,7 +40,9 @@ fn below_breaking(case: &Case<'_>, findings: &mut Findings) {
     );
     let finding = findings.add(&SHORT_TIME_BELOW_BREAKING, short_time.place(), message);
     finding.label("below the breaking current").stated(&short_time.measure);
-    finding.needed(Datum { text: text.clone(), si: Some(breaking.value.si()) }).beside(breaking.statement, "the breaking current");
+    finding
+        .needed(Datum { text: text.clone(), si: Some(breaking.value.si()) })
+        .beside(breaking.statement, "the breaking current");
     // Only the current is replaced; a duration written behind it stays.
     let measure = short_time.statement.quantity().map_or(short_time.place(), |q| q.place);
     let lasting = short_time.statement.quantity().and_then(|q| q.lasting);
@@ -62,7 +64,9 @@ pub static THERMAL_DUTY: Rule = Rule {
 
 fn heat(case: &Case<'_>, findings: &mut Findings) {
     let (Some(duty), Some(rated)) = (case.duty.thermal_duty.as_ref(), case.duty.thermal_rated.as_ref()) else { return };
-    let Some(current) = case.breaker.quantity::<ElectricCurrent>(&breaker::RATED_SHORT_TIME_WITHSTAND_CURRENT) else { return };
+    let Some(current) = case.breaker.quantity::<ElectricCurrent>(&breaker::RATED_SHORT_TIME_WITHSTAND_CURRENT) else {
+        return;
+    };
     if rated.value.si() >= duty.value.si() * (1.0 - EQUAL) {
         return;
     }
@@ -186,7 +190,10 @@ mod tests {
         assert!(finding.working.iter().any(|w| w.contains("m = ")), "{:?}", finding.working);
         assert_eq!(finding.edits[0].text, "31.5 kA for 2 s");
         Bay::new().silent("thermal-duty");
-        Bay::new().set("system", "backup clearing time", "1.4 s").set("breaker", IK, "31.5 kA for 3 s").silent("thermal-duty");
+        Bay::new()
+            .set("system", "backup clearing time", "1.4 s")
+            .set("breaker", IK, "31.5 kA for 3 s")
+            .silent("thermal-duty");
         // 31.5 kA for 1 s is 992 kA2s; 28.4 kA reaches that, its DC component counted, at about 1.19 s.
         Bay::new().set("system", "backup clearing time", "1.18 s").silent("thermal-duty");
         Bay::new().set("system", "backup clearing time", "1.20 s").one("thermal-duty");

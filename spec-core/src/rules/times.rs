@@ -23,16 +23,18 @@ pub static BREAK_TIME_BELOW_OPENING: Rule = Rule {
 };
 
 fn break_time(case: &Case<'_>, findings: &mut Findings) {
-    let (Some(total), Some(opening)) = (
-        case.breaker.greatest::<Time>(&breaker::BREAK_TIME),
-        case.breaker.greatest::<Time>(&breaker::OPENING_TIME),
-    ) else {
+    let (Some(total), Some(opening)) =
+        (case.breaker.greatest::<Time>(&breaker::BREAK_TIME), case.breaker.greatest::<Time>(&breaker::OPENING_TIME))
+    else {
         return;
     };
     if total.value.si() > opening.value.si() * (1.0 + EQUAL) {
         return;
     }
-    let message = format!("a break time of {} leaves no time for the arc after an opening time of {}", total.measure, opening.measure);
+    let message = format!(
+        "a break time of {} leaves no time for the arc after an opening time of {}",
+        total.measure, opening.measure
+    );
     findings
         .add(&BREAK_TIME_BELOW_OPENING, total.place(), message)
         .label("not longer than the opening time")
@@ -66,7 +68,8 @@ fn cycles(case: &Case<'_>, findings: &mut Findings) {
             }
             let (Some(a), Some(b)) = (first.si, second.si) else { continue };
             // A whole number of cycles is meant exactly; only the milliseconds are rounded.
-            let slack = (case.policy.dual_tolerance * a.abs()).max(first.half_last_digit()).max(second.half_last_digit());
+            let slack =
+                (case.policy.dual_tolerance * a.abs()).max(first.half_last_digit()).max(second.half_last_digit());
             if (a - b).abs() <= slack * (1.0 + EQUAL) {
                 continue;
             }
@@ -102,10 +105,11 @@ mod tests {
     #[test]
     fn cycles_at_the_rated_frequency() {
         let at = |hertz: &str, time: &str| {
-            Bay::new()
-                .set("system", "frequency", hertz)
-                .set("breaker", "rated frequency", hertz)
-                .set("breaker", "break time", time)
+            Bay::new().set("system", "frequency", hertz).set("breaker", "rated frequency", hertz).set(
+                "breaker",
+                "break time",
+                time,
+            )
         };
         assert_eq!(at("60 Hz", "5 cycles (100 ms)").one("cycles-disagree").edits[0].text, "83.3 ms");
         at("50 Hz", "5 cycles (100 ms)").silent("cycles-disagree");

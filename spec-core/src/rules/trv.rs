@@ -61,7 +61,11 @@ fn class(case: &Case<'_>, findings: &mut Findings) {
     let stated = case.breaker.class(&breaker::CLASSES, 'S');
     match (stated, network) {
         (Some((class, _)), Network::Lines) if class.grade == 1 => {
-            let finding = findings.add(&TRV_CLASS, class.place, "class S1 is for cable systems, and overhead lines are connected: S2 is needed");
+            let finding = findings.add(
+                &TRV_CLASS,
+                class.place,
+                "class S1 is for cable systems, and overhead lines are connected: S2 is needed",
+            );
             finding.label("the class of a cable system").stated("S1").needed("S2").beside(said, "overhead lines");
             if let Some((found, working)) = case.duty.trv.envelope(Duty::T100) {
                 finding.working(format!("S1, T100: {working}; t3 {}", found.t3.map_or_else(String::new, |t| t.show())));
@@ -80,9 +84,14 @@ fn class(case: &Case<'_>, findings: &mut Findings) {
         }
         (None, _) if !unread(case) => {
             let needed = if network == Network::Lines { "S2" } else { "S1" };
-            let message = format!("below 100 kV the TRV goes by class, and none is stated: {needed} goes with what is connected");
+            let message =
+                format!("below 100 kV the TRV goes by class, and none is stated: {needed} goes with what is connected");
             let finding = findings.add(&TRV_CLASS, rated.place(), message);
-            finding.kind(FindingKind::Omission).label("S1 or S2 is missing").needed(needed).beside(said, "what is connected");
+            finding
+                .kind(FindingKind::Omission)
+                .label("S1 or S2 is missing")
+                .needed(needed)
+                .beside(said, "what is connected");
             match case.breaker.statement(&breaker::CLASSES) {
                 Some(classes) => finding.edit(format!("add {needed}"), classes.value.end(), format!(", {needed}")),
                 None => finding.edit(format!("state {needed}"), case.sheet.end, format!("\n    classes: {needed}")),
@@ -167,10 +176,34 @@ fn compare<Q: Physical>(
 fn values(case: &Case<'_>, findings: &mut Findings) {
     type Row = (Duty, &'static Particular, &'static Particular, &'static Particular, &'static Particular);
     let rows: [Row; 5] = [
-        (Duty::T100, &breaker::T100_TRV_PEAK, &breaker::T100_RATE_OF_RISE, &breaker::T100_AMPLITUDE_FACTOR, &breaker::T100_TIME_T3),
-        (Duty::T60, &breaker::T60_TRV_PEAK, &breaker::T60_RATE_OF_RISE, &breaker::T60_AMPLITUDE_FACTOR, &breaker::T60_TIME_T3),
-        (Duty::T30, &breaker::T30_TRV_PEAK, &breaker::T30_RATE_OF_RISE, &breaker::T30_AMPLITUDE_FACTOR, &breaker::T30_TIME_T3),
-        (Duty::T10, &breaker::T10_TRV_PEAK, &breaker::T10_RATE_OF_RISE, &breaker::T10_AMPLITUDE_FACTOR, &breaker::T10_TIME_T3),
+        (
+            Duty::T100,
+            &breaker::T100_TRV_PEAK,
+            &breaker::T100_RATE_OF_RISE,
+            &breaker::T100_AMPLITUDE_FACTOR,
+            &breaker::T100_TIME_T3,
+        ),
+        (
+            Duty::T60,
+            &breaker::T60_TRV_PEAK,
+            &breaker::T60_RATE_OF_RISE,
+            &breaker::T60_AMPLITUDE_FACTOR,
+            &breaker::T60_TIME_T3,
+        ),
+        (
+            Duty::T30,
+            &breaker::T30_TRV_PEAK,
+            &breaker::T30_RATE_OF_RISE,
+            &breaker::T30_AMPLITUDE_FACTOR,
+            &breaker::T30_TIME_T3,
+        ),
+        (
+            Duty::T10,
+            &breaker::T10_TRV_PEAK,
+            &breaker::T10_RATE_OF_RISE,
+            &breaker::T10_AMPLITUDE_FACTOR,
+            &breaker::T10_TIME_T3,
+        ),
         (
             Duty::OutOfPhase,
             &breaker::OP_TRV_PEAK,

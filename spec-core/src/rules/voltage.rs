@@ -130,7 +130,11 @@ fn not_preferred(case: &Case<'_>, findings: &mut Findings) {
     let needed = meant.or_else(|| rated_at_or_above(rated.value, &families));
     let message = match meant {
         Some(meant) => {
-            format!("{} is a nominal voltage, not a rated voltage: {} is the one that goes with it", rated.measure, rated.like(meant))
+            format!(
+                "{} is a nominal voltage, not a rated voltage: {} is the one that goes with it",
+                rated.measure,
+                rated.like(meant)
+            )
         }
         None => format!("{} is on no list of rated voltages of the standards cited", rated.measure),
     };
@@ -246,18 +250,27 @@ fn set(case: &Case<'_>, findings: &mut Findings) {
         rated.measure,
         pairs.join(", ")
     );
-    if let (Some(of_ud), Some(of_up)) = (origin(ud.value, InsulationLevel::power_frequency), origin(up.value, InsulationLevel::lightning)) {
+    if let (Some(of_ud), Some(of_up)) =
+        (origin(ud.value, InsulationLevel::power_frequency), origin(up.value, InsulationLevel::lightning))
+    {
         if of_ud != of_up {
             message += &format!("; the first is a value of {of_ud}, the second of {of_up}");
         }
     }
     let finding = findings.add(&INSULATION_SET, up.place(), message);
-    finding.label("not of one row with the power-frequency level").stated(format!("{}/{} kV", shown(ud.value), shown(up.value)));
+    finding.label("not of one row with the power-frequency level").stated(format!(
+        "{}/{} kV",
+        shown(ud.value),
+        shown(up.value)
+    ));
     finding.beside(ud.statement, "the power-frequency level");
     // The row that the stated impulse level belongs to, or the next above it.
     let next = rows
         .iter()
-        .filter(|row| row.lightning().si() >= up.value.si() * (1.0 - 1e-6) && row.power_frequency().si() >= ud.value.si() * (1.0 - 1e-6))
+        .filter(|row| {
+            row.lightning().si() >= up.value.si() * (1.0 - 1e-6)
+                && row.power_frequency().si() >= ud.value.si() * (1.0 - 1e-6)
+        })
         .min_by(|a, b| a.lightning().si().total_cmp(&b.lightning().si()));
     if let Some(row) = next {
         finding.needed(format!("{}/{} kV", shown(row.power_frequency()), shown(row.lightning())));
@@ -265,7 +278,11 @@ fn set(case: &Case<'_>, findings: &mut Findings) {
             finding.edit(format!("write {}", up.like(row.lightning())), up.place(), up.like(row.lightning()));
         }
         if (row.power_frequency().si() - ud.value.si()).abs() > 1.0 {
-            finding.edit(format!("write {}", ud.like(row.power_frequency())), ud.place(), ud.like(row.power_frequency()));
+            finding.edit(
+                format!("write {}", ud.like(row.power_frequency())),
+                ud.place(),
+                ud.like(row.power_frequency()),
+            );
         }
     }
 }
@@ -315,7 +332,8 @@ fn below_table(case: &Case<'_>, findings: &mut Findings) {
             continue;
         }
         let text = stated.like(least);
-        let message = format!("the {name} {} is below every row for {}: the lowest is {text}", stated.measure, rated.measure);
+        let message =
+            format!("the {name} {} is below every row for {}: the lowest is {text}", stated.measure, rated.measure);
         findings
             .add(&INSULATION_BELOW_TABLE, stated.place(), message)
             .label("below every row")
@@ -347,7 +365,8 @@ fn switching(case: &Case<'_>, findings: &mut Findings) {
     let particular = &breaker::RATED_SWITCHING_IMPULSE_WITHSTAND_VOLTAGE;
     if rated.value.si() < RANGE_TWO {
         if let Some(us) = case.breaker.quantity::<ElectricPotential>(particular) {
-            let message = format!("a switching impulse level is no rating at {}; it becomes one from 300 kV up", rated.measure);
+            let message =
+                format!("a switching impulse level is no rating at {}; it becomes one from 300 kV up", rated.measure);
             findings
                 .add(&SWITCHING_IMPULSE_LEVEL, us.place(), message)
                 .kind(FindingKind::Remark)
@@ -362,15 +381,21 @@ fn switching(case: &Case<'_>, findings: &mut Findings) {
     }
     let rows = rows(case, rated.value);
     let up = levels(case).up;
-    let of_row = rows.iter().find(|row| up.as_ref().is_some_and(|up| (row.lightning().si() - up.value.si()).abs() < 1.0));
+    let of_row =
+        rows.iter().find(|row| up.as_ref().is_some_and(|up| (row.lightning().si() - up.value.si()).abs() < 1.0));
     let level = of_row.or(rows.first()).and_then(|row| row.switching());
-    let message = format!("at {} the rated switching impulse withstand voltage is a rating, and it is not stated", rated.measure);
+    let message =
+        format!("at {} the rated switching impulse withstand voltage is a rating, and it is not stated", rated.measure);
     let finding = findings.add(&SWITCHING_IMPULSE_LEVEL, rated.place(), message);
     finding.label("switching impulse level is missing");
     if let Some(level) = level {
         let text = level.show();
         finding.needed(Datum { text: text.clone(), si: Some(level.si()) });
-        finding.edit(format!("state {text}, phase to earth"), case.sheet.end, format!("\n    {}: {text}", particular.label));
+        finding.edit(
+            format!("state {text}, phase to earth"),
+            case.sheet.end,
+            format!("\n    {}: {text}", particular.label),
+        );
     }
 }
 
@@ -420,7 +445,11 @@ mod tests {
 
     #[test]
     fn a_national_value_is_a_remark() {
-        let bay = Bay::new().set("tender", "standards", "IEC 62271-100:2021, IS 13118").set("breaker", "rated voltage", "150 kV");
+        let bay = Bay::new().set("tender", "standards", "IEC 62271-100:2021, IS 13118").set(
+            "breaker",
+            "rated voltage",
+            "150 kV",
+        );
         assert_eq!(bay.one("rated-voltage-not-preferred").kind, FindingKind::Remark);
     }
 

@@ -11,7 +11,8 @@ struct Row {
     factor: f64,
 }
 
-static FIRST_POLE: LazyLock<Vec<Row>> = LazyLock::new(|| table::rows(include_str!("../../data/first_pole_factors.csv")));
+static FIRST_POLE: LazyLock<Vec<Row>> =
+    LazyLock::new(|| table::rows(include_str!("../../data/first_pole_factors.csv")));
 static OUT_OF_PHASE: LazyLock<Vec<Row>> = LazyLock::new(|| table::rows(include_str!("../../data/out_of_phase.csv")));
 
 /// The standard first-pole-to-clear factors, least first.

@@ -21,7 +21,9 @@ pub use making::{MakingCase, making_factor};
 pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE};
 pub use time_constants::{TimeConstantCase, TimeConstants};
 pub use trv_duties::{Duty, DutyRow, SystemClass, VoltageRange, duty_row, s1_time};
-pub use voltages::{is_rated_voltage, nominal_as_rated, rated_at_or_above, rated_voltages, steps_between_voltages, usual_rated};
+pub use voltages::{
+    is_rated_voltage, nominal_as_rated, rated_at_or_above, rated_voltages, steps_between_voltages, usual_rated,
+};
 
 use serde::Deserialize;
 

@@ -17,7 +17,11 @@ mod tests {
             ("insulation", include_str!("../../data/insulation_levels.csv"), super::super::insulation_levels().len()),
             ("trv", include_str!("../../data/trv_duties.csv"), super::super::trv_duties::all().len()),
             ("currents", include_str!("../../data/preferred_currents.csv"), super::super::currents::all().len()),
-            ("time constants", include_str!("../../data/time_constants.csv"), super::super::time_constants::all().len()),
+            (
+                "time constants",
+                include_str!("../../data/time_constants.csv"),
+                super::super::time_constants::all().len(),
+            ),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
         ] {
             let mut reader = csv::Reader::from_reader(text.as_bytes());

@@ -66,7 +66,10 @@ impl TimeConstants {
 
     /// The least listed value that covers `tau`.
     pub fn at_or_above(&self, tau: Time) -> Option<Time> {
-        self.listed.iter().find(|(listed, _)| *listed >= tau.si() || same(*listed, tau.si())).map(|(t, _)| Time::from_si(*t))
+        self.listed
+            .iter()
+            .find(|(listed, _)| *listed >= tau.si() || same(*listed, tau.si()))
+            .map(|(t, _)| Time::from_si(*t))
     }
 
     /// All of them, least first.
@@ -80,7 +83,10 @@ mod tests {
     use super::*;
 
     fn listed(kv: f64, generator: bool) -> Vec<f64> {
-        TimeConstants::of(ElectricPotential::from_si(kv * 1e3), generator).values().map(|t| (t.si() * 1e3).round()).collect()
+        TimeConstants::of(ElectricPotential::from_si(kv * 1e3), generator)
+            .values()
+            .map(|t| (t.si() * 1e3).round())
+            .collect()
     }
 
     /// IEC 62271-100:2001+A1:2002, 4.101.2 (public scan); 1100 kV and generators from memory.

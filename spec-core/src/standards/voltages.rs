@@ -27,7 +27,8 @@ struct NominalVoltage {
     rated_kv: f64,
 }
 
-static RATED: LazyLock<Vec<RatedVoltage>> = LazyLock::new(|| table::rows(include_str!("../../data/rated_voltages.csv")));
+static RATED: LazyLock<Vec<RatedVoltage>> =
+    LazyLock::new(|| table::rows(include_str!("../../data/rated_voltages.csv")));
 static NOMINAL: LazyLock<Vec<NominalVoltage>> =
     LazyLock::new(|| table::rows(include_str!("../../data/nominal_voltages.csv")));
 
@@ -68,7 +69,10 @@ pub fn steps_between_voltages(from: ElectricPotential, to: ElectricPotential, re
 
 /// The rated voltage that usually goes with a nominal voltage (110 kV: 123 kV).
 pub fn usual_rated(nominal: ElectricPotential) -> Option<ElectricPotential> {
-    NOMINAL.iter().find(|row| same(row.nominal_kv * 1e3, nominal.si())).map(|row| ElectricPotential::from_si(row.rated_kv * 1e3))
+    NOMINAL
+        .iter()
+        .find(|row| same(row.nominal_kv * 1e3, nominal.si()))
+        .map(|row| ElectricPotential::from_si(row.rated_kv * 1e3))
 }
 
 /// The rated voltage that is meant, where somebody wrote a nominal voltage for it.
@@ -106,7 +110,9 @@ mod tests {
 
     #[test]
     fn nominal_voltages_of_both_pairings() {
-        for (nominal, rated) in [(110.0, 123.0), (115.0, 123.0), (132.0, 145.0), (138.0, 145.0), (400.0, 420.0), (69.0, 72.5)] {
+        for (nominal, rated) in
+            [(110.0, 123.0), (115.0, 123.0), (132.0, 145.0), (138.0, 145.0), (400.0, 420.0), (69.0, 72.5)]
+        {
             assert_eq!(usual_rated(kv(nominal)), Some(kv(rated)), "{nominal}");
         }
     }

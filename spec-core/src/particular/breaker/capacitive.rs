@@ -1,6 +1,6 @@
 //! Particulars of a breaker: capacitive and inductive.
 
-use crate::particular::{Kind, QuantityKind, words, particulars};
+use crate::particular::{Kind, QuantityKind, particulars, words};
 use crate::quantity::{Dimension, Qualifier};
 
 particulars! { Breaker, "capacitive and inductive";

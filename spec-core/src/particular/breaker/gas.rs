@@ -1,6 +1,6 @@
 //! Particulars of a breaker: gas.
 
-use crate::particular::{Kind, QuantityKind, Tail, words, particulars};
+use crate::particular::{Kind, QuantityKind, Tail, particulars, words};
 use crate::quantity::Dimension;
 
 particulars! { Breaker, "gas";

@@ -1,6 +1,6 @@
 //! Particulars of a breaker: identification.
 
-use crate::particular::{Kind, words, particulars};
+use crate::particular::{Kind, particulars, words};
 
 particulars! { Breaker, "identification";
     QUANTITY = "quantity" {

@@ -1,6 +1,6 @@
 //! Particulars of a breaker: construction and mechanical.
 
-use crate::particular::{Kind, QuantityKind, words, particulars};
+use crate::particular::{Kind, QuantityKind, particulars, words};
 use crate::quantity::{Dimension, Qualifier};
 
 particulars! { Breaker, "construction and mechanical";

@@ -1,6 +1,6 @@
 //! Particulars of a breaker: operation and times.
 
-use crate::particular::{Kind, QuantityKind, words, particulars};
+use crate::particular::{Kind, QuantityKind, particulars, words};
 use crate::quantity::Dimension;
 
 particulars! { Breaker, "operation and times";

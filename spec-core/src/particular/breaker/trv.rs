@@ -1,6 +1,6 @@
 //! Particulars of a breaker: TRV and fault duties.
 
-use crate::particular::{Kind, QuantityKind, words, particulars};
+use crate::particular::{Kind, QuantityKind, particulars, words};
 use crate::quantity::{Dimension, Qualifier};
 
 particulars! { Breaker, "TRV and fault duties";

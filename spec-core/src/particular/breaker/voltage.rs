@@ -1,6 +1,6 @@
 //! Particulars of a breaker: voltage and insulation.
 
-use crate::particular::{Extent, Kind, QuantityKind, Tail, words, particulars};
+use crate::particular::{Extent, Kind, QuantityKind, Tail, particulars, words};
 use crate::quantity::{Dimension, Qualifier};
 
 particulars! { Breaker, "voltage and insulation";

@@ -44,7 +44,10 @@ pub struct PureGas {
 }
 
 static ROWS: LazyLock<Vec<Row>> = LazyLock::new(|| {
-    csv::Reader::from_reader(include_str!("../../../data/gas_coefficients.csv").as_bytes()).into_deserialize().flatten().collect()
+    csv::Reader::from_reader(include_str!("../../../data/gas_coefficients.csv").as_bytes())
+        .into_deserialize()
+        .flatten()
+        .collect()
 });
 
 static SF6: LazyLock<PureGas> = LazyLock::new(|| pure("SF6"));
@@ -60,7 +63,8 @@ fn pure(medium: &'static str) -> PureGas {
     let series = |start: &str| -> Vec<f64> {
         (0..).map_while(|at| own().find(|row| row.name == format!("{start}{at}")).map(|row| row.value)).collect()
     };
-    let exponent = |row: &Row| row.meaning.split_whitespace().next_back().and_then(|e| e.parse().ok()).unwrap_or(f64::NAN);
+    let exponent =
+        |row: &Row| row.meaning.split_whitespace().next_back().and_then(|e| e.parse().ok()).unwrap_or(f64::NAN);
     PureGas {
         formula: medium,
         molar_mass: value("molar_mass_kg_mol"),
@@ -86,8 +90,16 @@ mod tests {
     fn no_constant_is_missing() {
         let gas = sf6();
         let numbers = [
-            gas.molar_mass, gas.triple_temperature, gas.triple_pressure, gas.critical_temperature, gas.critical_pressure,
-            gas.sublimation_slope, gas.liquid_density, gas.temperatures.0, gas.temperatures.1, gas.highest_filling,
+            gas.molar_mass,
+            gas.triple_temperature,
+            gas.triple_pressure,
+            gas.critical_temperature,
+            gas.critical_pressure,
+            gas.sublimation_slope,
+            gas.liquid_density,
+            gas.temperatures.0,
+            gas.temperatures.1,
+            gas.highest_filling,
         ];
         assert!(numbers.iter().all(|n| n.is_finite() && *n > 0.0), "{gas:?}");
         assert_eq!((gas.vapour.len(), gas.b.len(), gas.c.len()), (5, 4, 3));

@@ -77,11 +77,7 @@ pub struct TwoPhase {
 
 impl PureGas {
     /// Density of a filling: the root of p = rho R T (1 + B rho + C rho^2) that is a gas.
-    pub fn density(
-        &self,
-        filling: Pressure,
-        at: ThermodynamicTemperature,
-    ) -> Result<MassDensity, GasFault> {
+    pub fn density(&self, filling: Pressure, at: ThermodynamicTemperature) -> Result<MassDensity, GasFault> {
         let (p, t) = (filling.si(), at.si());
         self.within(t)?;
         if p <= 0.0 {
@@ -142,7 +138,9 @@ impl PureGas {
     /// A filling at a temperature: how much of it is condensed, and what vapour is left. The share of the liquid is
     /// (1 - rho_g/rho)/(1 - rho_g/rho_l).
     pub fn two_phase(&self, density: MassDensity, at: ThermodynamicTemperature) -> Result<TwoPhase, GasFault> {
-        if at.si() >= self.critical_temperature || self.pressure_of_gas(density.si(), at.si()) <= self.saturation(at.si()) {
+        if at.si() >= self.critical_temperature
+            || self.pressure_of_gas(density.si(), at.si()) <= self.saturation(at.si())
+        {
             self.within(at.si())?;
             return Ok(TwoPhase { condensed: Ratio::from_si(0.0), vapour: density });
         }
