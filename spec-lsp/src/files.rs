@@ -94,7 +94,7 @@ fn read(path: &Path) -> Result<Arc<str>, String> {
         Ok(text) => Ok(text.into()),
         Err(fault) => {
             let at = fault.utf8_error().valid_up_to();
-            let line = fault.as_bytes().get(..at).unwrap_or(&[]).iter().filter(|byte| **byte == b'\n').count() + 1;
+            let line = String::from_utf8_lossy(fault.as_bytes().get(..at).unwrap_or(&[])).matches('\n').count() + 1;
             Err(format!("it is not UTF-8 (first at line {line})"))
         }
     }

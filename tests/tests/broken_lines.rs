@@ -1,5 +1,7 @@
 //! N independent broken lines give N findings on exactly those lines, and everything else is read as before.
 
+#![allow(clippy::expect_used, reason = "a test fails by panicking")]
+
 use std::collections::BTreeSet;
 
 use firstpole_core::{Assessor, Sources};

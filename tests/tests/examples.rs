@@ -1,5 +1,7 @@
 //! The example specifications: what is said of each, as text and as json.
 
+#![allow(clippy::expect_used, reason = "a test fails by panicking")]
+
 use firstpole_tests::{CLEAN, SEEDED, example, program, root};
 
 fn assessed(name: &str, form: &str) -> String {
@@ -63,7 +65,9 @@ fn seeded_mistakes_are_found() {
                 "unreadable-line",
                 "unknown-label",
                 "cycles-disagree",
-                "out-of-phase-factor",
+                "first-pole-factor-excess",
+                "dual-units-disagree",
+                "dc-time-constant",
             ],
         ),
     ];

@@ -15,25 +15,34 @@ struct Chosen {
     working: String,
 }
 
+type Choice = fn(&Case<'_>) -> Option<Chosen>;
+
+/// What can be chosen, what has to be known for it, and how; in the order in which ratings hang on each other.
+static CHOICES: &[(&Particular, &str, Choice)] = &[
+    (&breaker::RATED_FREQUENCY, "the frequency of the system", frequency),
+    (&breaker::RATED_VOLTAGE, "the highest voltage of the system", voltage),
+    (&breaker::RATED_CONTINUOUS_CURRENT, "the load current of a circuit", continuous),
+    (&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT, "the short-circuit current of the system", breaking),
+    (
+        &breaker::DC_TIME_CONSTANT,
+        "the time constant or X/R of the system, and a listed value that covers it",
+        time_constant,
+    ),
+    (&breaker::RATED_SHORT_CIRCUIT_MAKING_CURRENT, "the breaking current, the time constant and the frequency", making),
+    (&breaker::RATED_SHORT_TIME_WITHSTAND_CURRENT, "the breaking current", short_time),
+    (&breaker::RATED_PEAK_WITHSTAND_CURRENT, "the breaking current, the time constant and the frequency", making),
+    (&breaker::FIRST_POLE_TO_CLEAR_FACTOR, "the earthing of the neutral, and the rated voltage", first_pole),
+];
+
+/// What has to be known before the checker can choose a particular; none where it cannot choose it at all.
+pub(crate) fn needed_for(particular: &Particular) -> Option<&'static str> {
+    CHOICES.iter().find(|(chosen, _, _)| chosen.is(particular)).map(|(_, needed, _)| *needed)
+}
+
 /// Puts a value wherever the text says `from duty` and the duty is known; tells whether any was put in.
-///
-/// Ratings are chosen in the order in which they hang on each other: voltage and frequency, breaking current and time
-/// constant, then what follows from those.
 pub(super) fn fill(case: &mut Case<'_>) -> bool {
-    type Choice = fn(&Case<'_>) -> Option<Chosen>;
-    let choices: [(&'static Particular, Choice); 9] = [
-        (&breaker::RATED_FREQUENCY, frequency),
-        (&breaker::RATED_VOLTAGE, voltage),
-        (&breaker::RATED_CONTINUOUS_CURRENT, continuous),
-        (&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT, breaking),
-        (&breaker::DC_TIME_CONSTANT, time_constant),
-        (&breaker::RATED_SHORT_CIRCUIT_MAKING_CURRENT, making),
-        (&breaker::RATED_SHORT_TIME_WITHSTAND_CURRENT, short_time),
-        (&breaker::RATED_PEAK_WITHSTAND_CURRENT, making),
-        (&breaker::FIRST_POLE_TO_CLEAR_FACTOR, first_pole),
-    ];
     let mut any = false;
-    for (particular, choose) in choices {
+    for (particular, _, choose) in CHOICES {
         let asked = case.breaker.all(particular).any(|s| s.reading == Reading::FromDuty);
         let Some(chosen) = asked.then(|| choose(case)).flatten() else { continue };
         for statement in case.breaker.facts.statements_mut() {

@@ -4,6 +4,8 @@
 mod choose;
 mod regime;
 
+pub(crate) use choose::needed_for;
+
 pub use regime::Regimes;
 
 use std::ops::Deref;
@@ -57,7 +59,7 @@ impl Deref for Part<'_> {
 
 impl<'a> Part<'a> {
     fn of(set: &'a Set, sheet: Option<&'a Sheet>) -> Self {
-        Self { sheet, facts: sheet.map(|sheet| Facts::new(set.resolved(sheet.id))).unwrap_or_default() }
+        Self { sheet, facts: sheet.map(|sheet| set.facts(sheet.id)).unwrap_or_default() }
     }
 }
 

@@ -90,22 +90,22 @@ impl GasDuty {
                     .shown(format!("{} MPa abs", significant(pressure.si() / 1e6, 3)))
             });
             let filling = duty.levels.iter().find(|state| state.level == Level::Filling);
-            if let Some(density) = filling.and_then(|state| state.density.as_ref().ok()) {
-                if let Ok(state) = gas.two_phase(density.value, lowest.value) {
-                    duty.condensed = Some(
-                        Figure::new(state.condensed, "(1 - rho_g/rho)/(1 - rho_g/rho_l)", BASIS)
-                            .from("rho", density)
-                            .given("rho_g", state.vapour.show())
-                            .given("temperature", celsius(lowest.value))
-                            .shown(percent(state.condensed.value)),
-                    );
-                    let left = gas.reference_pressure(state.vapour);
-                    duty.remaining = Some(
-                        Figure::new(left, "pressure at 20 degC of the remaining vapour", BASIS)
-                            .given("rho_g", state.vapour.show())
-                            .shown(format!("{} MPa abs", significant(left.si() / 1e6, 3))),
-                    );
-                }
+            if let Some(density) = filling.and_then(|state| state.density.as_ref().ok())
+                && let Ok(state) = gas.two_phase(density.value, lowest.value)
+            {
+                duty.condensed = Some(
+                    Figure::new(state.condensed, "(1 - rho_g/rho)/(1 - rho_g/rho_l)", BASIS)
+                        .from("rho", density)
+                        .given("rho_g", state.vapour.show())
+                        .given("temperature", celsius(lowest.value))
+                        .shown(percent(state.condensed.value)),
+                );
+                let left = gas.reference_pressure(state.vapour);
+                duty.remaining = Some(
+                    Figure::new(left, "pressure at 20 degC of the remaining vapour", BASIS)
+                        .given("rho_g", state.vapour.show())
+                        .shown(format!("{} MPa abs", significant(left.si() / 1e6, 3))),
+                );
             }
         }
         duty

@@ -45,19 +45,15 @@ struct Apparatus<'a> {
 fn breakers_of<'a>(set: &'a Set, word: &str, id: SheetId) -> Vec<Apparatus<'a>> {
     set.of_kind(SheetKind::Breaker)
         .filter(|breaker| breaker.target(word) == Some(id))
-        .map(|sheet| Apparatus { sheet, facts: facts_of(set, sheet) })
+        .map(|sheet| Apparatus { sheet, facts: set.facts(sheet.id) })
         .collect()
-}
-
-fn facts_of(set: &Set, sheet: &Sheet) -> Facts {
-    Facts::new(set.resolved(sheet.id))
 }
 
 /// What the circuits of these breakers state.
 fn circuits_of(set: &Set, breakers: &[Apparatus<'_>]) -> Vec<Facts> {
     set.of_kind(SheetKind::Circuit)
         .filter(|circuit| breakers.iter().any(|breaker| circuit.target("for") == Some(breaker.sheet.id)))
-        .map(|circuit| facts_of(set, circuit))
+        .map(|circuit| set.facts(circuit.id))
         .collect()
 }
 

@@ -47,16 +47,16 @@ pub fn apply(set: &Set, policy: &Policy, findings: &mut Findings) {
         }
         let Some(acceptance) = acceptance(&facts) else { continue };
         let Some(rule) = rule_of(sheet) else { continue };
-        if let Some((until, statement)) = facts.date(&deviation::UNTIL) {
-            if policy.today.is_some_and(|today| until.is_before(today)) {
-                let message = format!("this deviation from {rule} expired on {until}; the finding counts again");
-                findings
-                    .add(&DEVIATION_IDLE, statement.value, message)
-                    .label("expired")
-                    .stated(until.to_string().as_str())
-                    .advice("renew it with a new date and approval, or mend the finding");
-                continue;
-            }
+        if let Some((until, statement)) = facts.date(&deviation::UNTIL)
+            && policy.today.is_some_and(|today| until.is_before(today))
+        {
+            let message = format!("this deviation from {rule} expired on {until}; the finding counts again");
+            findings
+                .add(&DEVIATION_IDLE, statement.value, message)
+                .label("expired")
+                .stated(until.to_string().as_str())
+                .advice("renew it with a new date and approval, or mend the finding");
+            continue;
         }
         let mut matched = false;
         for finding in findings.iter_mut().filter(|finding| finding.rule == rule && belongs(finding, sheet, set)) {

@@ -5,6 +5,7 @@ use crate::case::Case;
 use crate::finding::{FindingKind, Findings};
 use crate::particular::{breaker, circuit, system, tender};
 use crate::quantity::{Physical, Ratio, significant};
+use crate::sheet::Stated;
 
 /// The rules of this subject.
 pub static ALL: &[&Rule] = &[
@@ -129,7 +130,7 @@ fn double_earth(case: &Case<'_>, findings: &mut Findings) {
         return;
     }
     let isc = breaking_current(case);
-    let place = isc.as_ref().map_or(case.sheet.heading, |isc| isc.place());
+    let place = isc.as_ref().map_or(case.sheet.heading, Stated::place);
     let message = format!("with the neutral {word}, the duty of a double earth fault is not stated");
     let finding = findings.add(&DOUBLE_EARTH_FAULT, place, message);
     finding.label("double earth faults may happen").beside(statement, "the earthing of the neutral");

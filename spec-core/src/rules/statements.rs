@@ -1,6 +1,7 @@
 //! Rules on single statements: said twice, in two units, without a basis, left open, out of order or of size.
 
 use super::{Check, EQUAL, Policy, Rule};
+use crate::case::{Case, needed_for};
 use crate::finding::{FindingKind, Findings};
 use crate::particular::{Kind, Limit, Particular, SheetKind, Tail, breaker, site, tender};
 use crate::quantity::{Dimension, Measure, Physical, Qualifier, ThermodynamicTemperature};
@@ -9,7 +10,7 @@ use crate::standards::GAUGE_REFERENCE;
 
 /// The rules of this subject.
 pub static ALL: &[&Rule] =
-    &[&STATED_TWICE, &DUAL_UNITS_DISAGREE, &BASIS_MISSING, &OPEN_POINT, &BOUNDS_ORDER, &MAGNITUDE];
+    &[&STATED_TWICE, &DUAL_UNITS_DISAGREE, &BASIS_MISSING, &OPEN_POINT, &BOUNDS_ORDER, &MAGNITUDE, &FROM_DUTY_OPEN];
 
 /// One quantity has one value.
 pub static STATED_TWICE: Rule = Rule {
@@ -129,9 +130,7 @@ fn pairs<'a>(first: &'a QuantityReading, second: &'a QuantityReading) -> Vec<(&'
 /// The pressure of the air at the site of a breaker, Pa, where it is stated.
 fn air_of(set: &Set, sheet: &Sheet) -> Option<f64> {
     let site = set.sheet(sheet.target("at")?)?;
-    Facts::new(set.resolved(site.id))
-        .quantity::<crate::quantity::Pressure>(&site::ATMOSPHERIC_PRESSURE)
-        .map(|s| s.value.si())
+    set.facts(site.id).quantity::<crate::quantity::Pressure>(&site::ATMOSPHERIC_PRESSURE).map(|s| s.value.si())
 }
 
 fn compare(
@@ -265,7 +264,7 @@ fn open(set: &Set, policy: &Policy, findings: &mut Findings) {
 
 fn issued(set: &Set, sheet: &Sheet, policy: &Policy) -> bool {
     let status = set.in_reach(sheet.file(), SheetKind::Tender).next().and_then(|tender_sheet| {
-        let facts = Facts::new(tender_sheet.statements.clone());
+        let facts = set.facts(tender_sheet.id);
         facts.word(&tender::STATUS).map(|(word, _)| word)
     });
     policy.issued || status == Some("issued")
@@ -291,20 +290,20 @@ fn bounds(set: &Set, _: &Policy, findings: &mut Findings) {
     for sheet in &set.sheets {
         for statement in sheet.statements.iter().filter(|s| s.about == About::Value) {
             let Some(reading) = statement.quantity() else { continue };
-            if let (true, Some((_, second))) = (reading.is_range(), reading.second) {
-                if second.si < reading.measure.si {
-                    let message =
-                        format!("this range begins with the greater value: {second} to {} is meant", reading.measure);
-                    let text = format!("{second} to {}", reading.measure);
-                    findings.add(&BOUNDS_ORDER, reading.place, message).label("greater value first").edit(
-                        format!("write {text}"),
-                        reading.place,
-                        text,
-                    );
-                }
+            if let (true, Some((_, second))) = (reading.is_range(), reading.second)
+                && second.si < reading.measure.si
+            {
+                let message =
+                    format!("this range begins with the greater value: {second} to {} is meant", reading.measure);
+                let text = format!("{second} to {}", reading.measure);
+                findings.add(&BOUNDS_ORDER, reading.place, message).label("greater value first").edit(
+                    format!("write {text}"),
+                    reading.place,
+                    text,
+                );
             }
         }
-        let facts = Facts::new(set.resolved(sheet.id));
+        let facts = set.facts(sheet.id);
         for statement in &sheet.statements {
             opposite_bounds(&facts, statement, findings);
         }
@@ -328,15 +327,15 @@ fn opposite_bounds(facts: &Facts, statement: &Statement, findings: &mut Findings
         Some((upper.measure, other))
     });
     let Some((upper, other)) = greatest else { return };
-    if let (Some(least), Some(most)) = (reading.measure.si, upper.si) {
-        if least > most {
-            let message = format!("at least {} and at most {upper} cannot both hold", reading.measure);
-            findings
-                .add(&BOUNDS_ORDER, statement.value, message)
-                .label("above the upper bound")
-                .stated(&reading.measure)
-                .beside(other, "the upper bound");
-        }
+    if let (Some(least), Some(most)) = (reading.measure.si, upper.si)
+        && least > most
+    {
+        let message = format!("at least {} and at most {upper} cannot both hold", reading.measure);
+        findings
+            .add(&BOUNDS_ORDER, statement.value, message)
+            .label("above the upper bound")
+            .stated(&reading.measure)
+            .beside(other, "the upper bound");
     }
 }
 
@@ -434,6 +433,32 @@ fn magnitude(set: &Set, _: &Policy, findings: &mut Findings) {
     }
 }
 
+/// What is left to the duty can be chosen from it.
+pub static FROM_DUTY_OPEN: Rule = Rule {
+    name: "from-duty-open",
+    title: "What is left to the duty can be chosen from it.",
+    kind: FindingKind::Omission,
+    basis: "the language, edition 1",
+    formula: "the duty says enough for the smallest standard value that meets it",
+    explanation: "from duty asks the checker for the smallest standard value that meets the duty. Where the duty does not say enough, \
+                  or the value is not one that the checker chooses, nothing is guessed, and the rules that need it are silent.",
+    check: Check::Case(from_duty_open),
+};
+
+fn from_duty_open(case: &Case<'_>, findings: &mut Findings) {
+    for statement in case.breaker.statements().iter().filter(|s| s.reading == Reading::FromDuty) {
+        let label = statement.particular.label;
+        let (message, advice) = match needed_for(statement.particular) {
+            Some(needed) => (
+                format!("{label} cannot be chosen: the duty does not say enough"),
+                format!("it needs {needed}; or state the value"),
+            ),
+            None => (format!("{label} is not chosen from the duty yet"), "state the value".to_owned()),
+        };
+        findings.add(&FROM_DUTY_OPEN, statement.value, message).label("no value").advice(advice);
+    }
+}
+
 #[cfg(test)]
 mod tests {
     use crate::finding::FindingKind;
@@ -525,6 +550,26 @@ mod tests {
             .set("breaker", "minimum closing time", "40 ms")
             .set("breaker", "maximum closing time", "50 ms")
             .silent("bounds-order");
+    }
+
+    #[test]
+    fn what_the_duty_says_enough_for_is_chosen() {
+        const ISC: &str = "rated short-circuit breaking current";
+        let chosen = Bay::new()
+            .set("breaker", ISC, "from duty")
+            .set("breaker", "rated short-circuit making current", "from duty")
+            .set("breaker", "rated voltage", "from duty")
+            .set("breaker", "rated continuous current", "from duty")
+            .set("breaker", "first-pole-to-clear factor", "from duty")
+            .set("breaker", "rated short-time withstand current", "from duty")
+            .set("breaker", "rated duration of short-circuit", "1 s");
+        let grave: Vec<_> = chosen.findings().into_iter().filter(|f| f.kind < FindingKind::Excess).collect();
+        assert!(grave.is_empty(), "{grave:#?}");
+        let open = Bay::new().set("breaker", ISC, "from duty").without("system", "short-circuit current");
+        let open = open.without("system", "single-phase short-circuit current");
+        assert!(open.one("from-duty-open").advice.expect("advice").contains("short-circuit current of the system"));
+        Bay::new().set("breaker", "T100 TRV peak", "from duty").one("from-duty-open");
+        Bay::new().silent("from-duty-open");
     }
 
     #[test]

@@ -5,6 +5,7 @@ use crate::case::Case;
 use crate::finding::{Datum, FindingKind, Findings};
 use crate::particular::{breaker, system};
 use crate::quantity::{ElectricCurrent, Physical, Time};
+use crate::sheet::Stated;
 use crate::standards;
 
 /// The rules of this subject.
@@ -72,7 +73,7 @@ fn heat(case: &Case<'_>, findings: &mut Findings) {
     }
     let time = case.breaker.quantity::<Time>(&breaker::RATED_DURATION_OF_SHORT_CIRCUIT);
     let message = format!("the rating covers {}, the longest fault brings {}", rated.value.show(), duty.value.show());
-    let place = time.as_ref().map_or(current.place(), |t| t.place());
+    let place = time.as_ref().map_or(current.place(), Stated::place);
     let finding = findings.add(&THERMAL_DUTY, place, message);
     finding.label("not enough heat covered").stated(Datum::of(rated.value)).needed(Datum::of(duty.value));
     finding.working(duty.working.to_string()).working(rated.working.to_string());

@@ -68,7 +68,8 @@ fn class(case: &Case<'_>, findings: &mut Findings) {
             );
             finding.label("the class of a cable system").stated("S1").needed("S2").beside(said, "overhead lines");
             if let Some((found, working)) = case.duty.trv.envelope(Duty::T100) {
-                finding.working(format!("S1, T100: {working}; t3 {}", found.t3.map_or_else(String::new, |t| t.show())));
+                finding
+                    .working(format!("S1, T100: {working}; t3 {}", found.t3.map_or_else(String::new, Physical::show)));
             }
             finding.replace_by("S2").advice("the TRV values and the short-line fault rating follow from the class");
         }

@@ -252,10 +252,9 @@ fn set(case: &Case<'_>, findings: &mut Findings) {
     );
     if let (Some(of_ud), Some(of_up)) =
         (origin(ud.value, InsulationLevel::power_frequency), origin(up.value, InsulationLevel::lightning))
+        && of_ud != of_up
     {
-        if of_ud != of_up {
-            message += &format!("; the first is a value of {of_ud}, the second of {of_up}");
-        }
+        message += &format!("; the first is a value of {of_ud}, the second of {of_up}");
     }
     let finding = findings.add(&INSULATION_SET, up.place(), message);
     finding.label("not of one row with the power-frequency level").stated(format!(

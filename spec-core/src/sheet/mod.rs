@@ -145,6 +145,11 @@ impl Set {
         self.sheets.get(id.0 as usize)
     }
 
+    /// What a sheet states, with what it takes over through `like`, as rules ask for it.
+    pub fn facts(&self, id: SheetId) -> Facts {
+        Facts::new(self.resolved(id))
+    }
+
     /// The sheets of one kind that `file` can refer to, in the order of the text, its own first.
     pub fn in_reach(&self, file: FileId, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
         self.scope
@@ -169,9 +174,9 @@ impl Set {
             let above = all.len();
             for statement in &sheet.statements {
                 let nearer = all.get(..above).unwrap_or(&[]);
-                let replaced = nearer
-                    .iter()
-                    .any(|s| s.particular.is(statement.particular) && s.about == statement.about && s.limit == statement.limit);
+                let replaced = nearer.iter().any(|s| {
+                    s.particular.is(statement.particular) && s.about == statement.about && s.limit == statement.limit
+                });
                 if !replaced {
                     all.push(statement.clone());
                 }

@@ -1,7 +1,7 @@
 //! What is missing of the network.
 
 use super::{
-    Apparatus, Check, Policy, Rule, be, breakers_of, breakers_without, circuits_of, facts_of, first_and_more, listed,
+    Apparatus, Check, Policy, Rule, be, breakers_of, breakers_without, circuits_of, first_and_more, listed,
     mentions_any,
 };
 use crate::case::Case;
@@ -24,7 +24,7 @@ fn networks(set: &Set) -> Vec<Network<'_>> {
     set.of_kind(SheetKind::System)
         .map(|sheet| Network {
             sheet,
-            facts: facts_of(set, sheet),
+            facts: set.facts(sheet.id),
             breakers: breakers_of(set, "on", sheet.id),
             has_infeeds: set.of_kind(SheetKind::Infeed).any(|infeed| infeed.target("into") == Some(sheet.id)),
         })

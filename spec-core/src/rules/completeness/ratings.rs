@@ -172,11 +172,7 @@ fn rating_for_object(case: &Case<'_>, findings: &mut Findings) {
             .find_map(|circuit| circuit.quantity::<ElectricCurrent>(&circuit::CHARGING_CURRENT));
         let at_least =
             own.map(|stated| format!(", at least the {} of the circuit", stated.measure)).unwrap_or_default();
-        finding.advice(format!(
-            "add {} to {} with its value{at_least}, or from duty",
-            listed(&missing, "and"),
-            case.sheet.title()
-        ));
+        finding.advice(format!("add {} to {} with its value{at_least}", listed(&missing, "and"), case.sheet.title()));
     }
 }
 

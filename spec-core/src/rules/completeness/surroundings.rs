@@ -1,8 +1,6 @@
 //! What is missing of the site and of the tender.
 
-use super::{
-    Apparatus, Check, Policy, Rule, be, breakers_of, breakers_without, facts_of, first_and_more, listed, mentions_any,
-};
+use super::{Apparatus, Check, Policy, Rule, be, breakers_of, breakers_without, first_and_more, listed, mentions_any};
 use crate::finding::{FindingKind, Findings};
 use crate::particular::{Particular, SheetKind, breaker, circuit, site, tender};
 use crate::quantity::{Physical, Ratio, significant};
@@ -76,7 +74,7 @@ fn site_data(set: &Set, _: &Policy, findings: &mut Findings) {
     for sheet in set.of_kind(SheetKind::Site) {
         let breakers = breakers_of(set, "at", sheet.id);
         if !breakers.is_empty() {
-            of_site(sheet, &facts_of(set, sheet), &breakers, findings);
+            of_site(sheet, &set.facts(sheet.id), &breakers, findings);
         }
     }
 }
@@ -153,7 +151,7 @@ static PRECEDENCE: &[(&Particular, &str)] = &[
 
 fn precedence(set: &Set, _: &Policy, findings: &mut Findings) {
     for sheet in set.of_kind(SheetKind::Tender) {
-        let facts = facts_of(set, sheet);
+        let facts = set.facts(sheet.id);
         let missing: Vec<_> = PRECEDENCE.iter().filter(|(particular, _)| !facts.mentions(particular)).collect();
         if missing.is_empty() {
             continue;
@@ -200,7 +198,7 @@ fn number_of(facts: &Facts) -> Option<f64> {
 }
 
 fn bays(set: &Set, sheet: &Sheet, findings: &mut Findings) {
-    let facts = facts_of(set, sheet);
+    let facts = set.facts(sheet.id);
     let (Some(quantity), Some((items, statement))) =
         (facts.quantity::<Ratio>(&breaker::QUANTITY), facts.list(&breaker::BAYS))
     else {
@@ -209,7 +207,7 @@ fn bays(set: &Set, sheet: &Sheet, findings: &mut Findings) {
     let listed = items.len() as f64;
     let mut circuits = set.of_kind(SheetKind::Circuit).filter(|circuit| circuit.target("for") == Some(sheet.id));
     let is_spare =
-        |circuit: &Sheet| facts_of(set, circuit).word(&circuit::KIND).is_some_and(|(kind, _)| kind == "spare");
+        |circuit: &Sheet| set.facts(circuit.id).word(&circuit::KIND).is_some_and(|(kind, _)| kind == "spare");
     let spare = facts.mentions(&breaker::SPARE_FOR) || circuits.any(is_spare);
     if listed == quantity.value.si() || (spare && quantity.value.si() > listed) {
         return;
@@ -230,7 +228,7 @@ fn bays(set: &Set, sheet: &Sheet, findings: &mut Findings) {
 }
 
 fn total(set: &Set, sheet: &Sheet, findings: &mut Findings) {
-    let facts = facts_of(set, sheet);
+    let facts = set.facts(sheet.id);
     let Some(total) = facts.quantity::<Ratio>(&tender::TOTAL_QUANTITY) else { return };
     let mut sum = 0.0;
     let mut unknown = 0_usize;
@@ -238,7 +236,7 @@ fn total(set: &Set, sheet: &Sheet, findings: &mut Findings) {
     let own =
         |breaker: &&Sheet| set.in_reach(breaker.file(), SheetKind::Tender).next().is_some_and(|t| t.id == sheet.id);
     for breaker in set.of_kind(SheetKind::Breaker).filter(own) {
-        match number_of(&facts_of(set, breaker)) {
+        match number_of(&set.facts(breaker.id)) {
             Some(number) => {
                 sum += number;
                 working.push(format!("{} {}", breaker.name, significant(number, 6)));
