@@ -4,11 +4,12 @@
 //! to findings. The same texts answer `firstpole clause`, the reference page and the hover.
 
 use crate::case::Case;
-use crate::finding::{FindingKind, Findings};
-use crate::particular::breaker;
-use crate::quantity::ElectricCurrent;
-use crate::sheet::{Set, Stated};
+use crate::finding::{Finding, FindingKind, Findings};
+use crate::particular::{Particular, breaker, site};
+use crate::quantity::{ElectricCurrent, Physical, Ratio, significant};
+use crate::sheet::{Set, Sheet, Stated, Statement};
 
+pub mod auxiliary;
 pub mod completeness;
 pub mod continuous_current;
 pub mod dc_component;
@@ -77,6 +78,8 @@ pub struct Policy {
     pub trv_tolerance: f64,
     /// Steps of the preferred series above the duty from which a rating is an excess.
     pub excess_steps: usize,
+    /// Share of the current at which a coil moves up to which it may carry a supervision current.
+    pub supervision_share: f64,
     /// Whether the tender counts as issued whatever its status says.
     pub issued: bool,
     /// The day on which deviations are held against their expiry; without one, none expires.
@@ -94,6 +97,7 @@ impl Default for Policy {
             making_above: 0.05,
             trv_tolerance: 0.02,
             excess_steps: 2,
+            supervision_share: 0.1,
             issued: false,
             today: None,
         }
@@ -106,6 +110,25 @@ const EQUAL: f64 = 1e-4;
 /// The rated short-circuit breaking current, on which many ratings hang.
 fn breaking_current<'a>(case: &'a Case<'_>) -> Option<Stated<'a, ElectricCurrent>> {
     case.breaker.quantity(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT)
+}
+
+/// A count as it is shown: without the blank that stands where a unit would be.
+fn number(stated: &Stated<'_, Ratio>) -> String {
+    significant(stated.value.si(), 6)
+}
+
+/// The edit that adds a line to a sheet.
+fn add_line(finding: &mut Finding, sheet: &Sheet, particular: &Particular, value: &str) {
+    finding.edit(
+        format!("add {}: {value}", particular.label),
+        sheet.end,
+        format!("\n    {}: {value}", particular.label),
+    );
+}
+
+/// Whether the site lies in the open, with the line that says so.
+fn outdoors<'a>(case: &'a Case<'_>) -> Option<&'a Statement> {
+    case.site.word(&site::INSTALLATION).and_then(|(word, statement)| (word == "outdoor").then_some(statement))
 }
 
 /// Every rule, subject by subject, in the order in which they are checked.
@@ -126,6 +149,7 @@ pub fn standard() -> Vec<&'static Rule> {
         sequence::ALL,
         times::ALL,
         gas::ALL,
+        auxiliary::ALL,
         deviations::ALL,
     ]
     .concat()

@@ -64,6 +64,8 @@ breaker LineBay on Ring at Yard
     temperature class: minus 25 outdoor
     rated supply voltage: 110 V DC
     supply voltage at the terminals: 93 to 121 V
+    trip coils: 2
+    low-gas action: block
 circuit Line1 for LineBay
     kind: overhead line
     length: 84 km
@@ -72,6 +74,7 @@ circuit Line1 for LineBay
     source at far end: yes
     auto-reclosing: three-phase
     auto-reclosing dead time: 0.3 s
+    protection systems: 2
 "#;
 
 /// The clean specification, with what a test changes in it.

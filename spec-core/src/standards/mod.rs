@@ -9,6 +9,7 @@ mod earthing;
 mod insulation;
 mod making;
 mod pressure;
+mod supply;
 mod table;
 mod time_constants;
 mod trv_duties;
@@ -19,6 +20,7 @@ pub use earthing::{first_pole_factors, out_of_phase_factor};
 pub use insulation::{InsulationLevel, insulation_levels};
 pub use making::{MakingCase, making_factor};
 pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE};
+pub use supply::{Device, Supply, coil_range, is_supply_voltage, supply_voltages};
 pub use time_constants::{TimeConstantCase, TimeConstants};
 pub use trv_duties::{Duty, DutyRow, SystemClass, VoltageRange, duty_row, s1_time};
 pub use voltages::{

@@ -22,6 +22,8 @@ mod tests {
                 include_str!("../../data/time_constants.csv"),
                 super::super::time_constants::all().len(),
             ),
+            ("supply voltages", include_str!("../../data/supply_voltages.csv"), super::super::supply::counts().0),
+            ("coil ranges", include_str!("../../data/coil_ranges.csv"), super::super::supply::counts().1),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
         ] {
             let mut reader = csv::Reader::from_reader(text.as_bytes());
