@@ -18,9 +18,11 @@ pub mod earthing;
 pub mod fault_duties;
 pub mod gas;
 pub mod making;
+pub mod mechanical;
 pub mod reading;
 pub mod sequence;
 pub mod short_circuit;
+pub mod standards_cited;
 pub mod statements;
 #[cfg(test)]
 pub mod testing;
@@ -150,6 +152,8 @@ pub fn standard() -> Vec<&'static Rule> {
         times::ALL,
         gas::ALL,
         auxiliary::ALL,
+        mechanical::ALL,
+        standards_cited::ALL,
         deviations::ALL,
     ]
     .concat()

@@ -88,6 +88,8 @@ pub struct Statement {
     pub limit: Option<Limit>,
     /// Where the label stands.
     pub label: Place,
+    /// The label as it was written.
+    pub wording: String,
     /// Where the value stands.
     pub value: Place,
     /// What was read there.

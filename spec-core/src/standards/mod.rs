@@ -4,10 +4,12 @@
 //! reproduces), D in doubt. No current edition of a breaker standard was at hand; the tables must be held against the standards
 //! in force before use.
 
+mod cited;
 mod currents;
 mod earthing;
 mod insulation;
 mod making;
+mod mechanical;
 mod pressure;
 mod supply;
 mod table;
@@ -15,10 +17,12 @@ mod time_constants;
 mod trv_duties;
 mod voltages;
 
+pub use cited::{Citation, OldWording, StandardScope, old_wordings, rating_structure, replacement_of};
 pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration};
 pub use earthing::{first_pole_factors, out_of_phase_factor};
 pub use insulation::{InsulationLevel, insulation_levels};
 pub use making::{MakingCase, making_factor};
+pub use mechanical::{TerminalLoads, seismic_level, seismic_level_for, terminal_loads, zinc_coating};
 pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE};
 pub use supply::{Device, Supply, coil_range, is_supply_voltage, supply_voltages};
 pub use time_constants::{TimeConstantCase, TimeConstants};

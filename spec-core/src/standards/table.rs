@@ -23,6 +23,13 @@ mod tests {
                 super::super::time_constants::all().len(),
             ),
             ("supply voltages", include_str!("../../data/supply_voltages.csv"), super::super::supply::counts().0),
+            ("seismic", include_str!("../../data/seismic_levels.csv"), super::super::mechanical::counts().0),
+            ("loads", include_str!("../../data/terminal_loads.csv"), super::super::mechanical::counts().1),
+            ("zinc", include_str!("../../data/zinc_coatings.csv"), super::super::mechanical::counts().2),
+            ("scopes", include_str!("../../data/standard_scopes.csv"), super::super::cited::counts().0),
+            ("superseded", include_str!("../../data/superseded_standards.csv"), super::super::cited::counts().1),
+            ("vocabulary", include_str!("../../data/edition_vocabulary.csv"), super::super::cited::counts().2),
+            ("rating standards", include_str!("../../data/rating_standards.csv"), super::super::cited::counts().3),
             ("coil ranges", include_str!("../../data/coil_ranges.csv"), super::super::supply::counts().1),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
         ] {

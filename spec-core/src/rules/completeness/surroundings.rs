@@ -152,7 +152,13 @@ static PRECEDENCE: &[(&Particular, &str)] = &[
 fn precedence(set: &Set, _: &Policy, findings: &mut Findings) {
     for sheet in set.of_kind(SheetKind::Tender) {
         let facts = set.facts(sheet.id);
-        let missing: Vec<_> = PRECEDENCE.iter().filter(|(particular, _)| !facts.mentions(particular)).collect();
+        // Undated standards have a rule of their own, which asks for the date.
+        let told = super::super::standards_cited::cites_undated(&facts);
+        let missing: Vec<_> = PRECEDENCE
+            .iter()
+            .filter(|(particular, _)| !facts.mentions(particular))
+            .filter(|(particular, _)| !(told && particular.is(&tender::REFERENCE_DATE_OF_STANDARDS)))
+            .collect();
         if missing.is_empty() {
             continue;
         }
