@@ -28,6 +28,7 @@ pub mod statements;
 pub mod testing;
 pub mod thermal;
 pub mod times;
+pub mod timing;
 pub mod trv;
 pub mod voltage;
 
@@ -82,6 +83,10 @@ pub struct Policy {
     pub excess_steps: usize,
     /// Share of the current at which a coil moves up to which it may carry a supervision current.
     pub supervision_share: f64,
+    /// Reserve between relay plus break time and the critical clearing time, s.
+    pub clearing_margin: f64,
+    /// Years over which operations are counted where the tender states no service life.
+    pub service_life: f64,
     /// Whether the tender counts as issued whatever its status says.
     pub issued: bool,
     /// The day on which deviations are held against their expiry; without one, none expires.
@@ -100,6 +105,8 @@ impl Default for Policy {
             trv_tolerance: 0.02,
             excess_steps: 2,
             supervision_share: 0.1,
+            clearing_margin: 0.020,
+            service_life: 30.0,
             issued: false,
             today: None,
         }
@@ -150,6 +157,7 @@ pub fn standard() -> Vec<&'static Rule> {
         trv::ALL,
         sequence::ALL,
         times::ALL,
+        timing::ALL,
         gas::ALL,
         auxiliary::ALL,
         mechanical::ALL,

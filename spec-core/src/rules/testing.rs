@@ -57,6 +57,7 @@ breaker LineBay on Ring at Yard
     classes: C2, M2
     opening time: 25 to 30 ms
     break time: 50 ms
+    open-close time: at most 0.3 s
     insulating gas: SF6
     rated filling pressure: 0.60 MPa abs
     alarm pressure: 0.54 MPa abs

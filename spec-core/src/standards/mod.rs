@@ -7,6 +7,7 @@
 mod cited;
 mod currents;
 mod earthing;
+mod endurance;
 mod insulation;
 mod making;
 mod mechanical;
@@ -20,6 +21,7 @@ mod voltages;
 pub use cited::{Citation, OldWording, StandardScope, old_wordings, rating_structure, replacement_of};
 pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration};
 pub use earthing::{first_pole_factors, out_of_phase_factor};
+pub use endurance::{class_for_operations, operations_of_class};
 pub use insulation::{InsulationLevel, insulation_levels};
 pub use making::{MakingCase, making_factor};
 pub use mechanical::{TerminalLoads, seismic_level, seismic_level_for, terminal_loads, zinc_coating};

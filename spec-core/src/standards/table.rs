@@ -30,6 +30,7 @@ mod tests {
             ("superseded", include_str!("../../data/superseded_standards.csv"), super::super::cited::counts().1),
             ("vocabulary", include_str!("../../data/edition_vocabulary.csv"), super::super::cited::counts().2),
             ("rating standards", include_str!("../../data/rating_standards.csv"), super::super::cited::counts().3),
+            ("endurance", include_str!("../../data/mechanical_classes.csv"), super::super::endurance::all().len()),
             ("coil ranges", include_str!("../../data/coil_ranges.csv"), super::super::supply::counts().1),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
         ] {
