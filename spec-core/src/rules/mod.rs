@@ -15,6 +15,7 @@ pub mod continuous_current;
 pub mod dc_component;
 pub mod deviations;
 pub mod earthing;
+pub mod excess;
 pub mod fault_duties;
 pub mod gas;
 pub mod making;
@@ -87,6 +88,8 @@ pub struct Policy {
     pub clearing_margin: f64,
     /// Years over which operations are counted where the tender states no service life.
     pub service_life: f64,
+    /// Extreme demands upon one breaker from which they are told together.
+    pub extremes: usize,
     /// Whether the tender counts as issued whatever its status says.
     pub issued: bool,
     /// The day on which deviations are held against their expiry; without one, none expires.
@@ -107,6 +110,7 @@ impl Default for Policy {
             supervision_share: 0.1,
             clearing_margin: 0.020,
             service_life: 30.0,
+            extremes: 5,
             issued: false,
             today: None,
         }
@@ -162,6 +166,7 @@ pub fn standard() -> Vec<&'static Rule> {
         auxiliary::ALL,
         mechanical::ALL,
         standards_cited::ALL,
+        excess::ALL,
         deviations::ALL,
     ]
     .concat()

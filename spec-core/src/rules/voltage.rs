@@ -199,7 +199,7 @@ fn levels<'a>(case: &'a Case<'_>) -> Levels<'a> {
 }
 
 /// The rows of the tables for the rated voltage, of the families cited.
-fn rows(case: &Case<'_>, rated: ElectricPotential) -> Vec<&'static InsulationLevel> {
+pub(super) fn rows(case: &Case<'_>, rated: ElectricPotential) -> Vec<&'static InsulationLevel> {
     let families = case.regimes().families();
     insulation_levels().iter().filter(|row| row.is_for(rated) && families.contains(&row.regime)).collect()
 }
@@ -208,7 +208,7 @@ fn rows(case: &Case<'_>, rated: ElectricPotential) -> Vec<&'static InsulationLev
 const NORMAL_ALTITUDE: f64 = 1000.0;
 
 /// Whether the levels are stated for the air of a high site, so that they need not be a row of the table.
-fn corrected_for_altitude(case: &Case<'_>) -> bool {
+pub(super) fn corrected_for_altitude(case: &Case<'_>) -> bool {
     let high = case.site.quantity::<Length>(&site::ALTITUDE).is_some_and(|h| h.value.si() > NORMAL_ALTITUDE);
     let for_site = case.breaker.word(&breaker::INSULATION_STATED_FOR).is_some_and(|(word, _)| word == "site altitude");
     high || for_site

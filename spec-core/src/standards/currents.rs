@@ -5,7 +5,7 @@ use std::sync::LazyLock;
 use serde::Deserialize;
 
 use super::{Regime, same, table};
-use crate::quantity::{ElectricCurrent, Physical, Time};
+use crate::quantity::{ElectricCurrent, ElectricPotential, Physical, Time};
 
 /// Which rating a series is of.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Deserialize)]
@@ -79,6 +79,26 @@ impl PreferredCurrents {
         let at = |v: f64| self.values.iter().filter(|value| **value < v && !same(**value, v)).count() as i64;
         at(to.si()) - at(from.si())
     }
+}
+
+#[derive(Clone, Debug, Deserialize)]
+pub(super) struct Usual {
+    to_kv: f64,
+    ampere: f64,
+}
+
+static USUAL: LazyLock<Vec<Usual>> =
+    LazyLock::new(|| table::rows(include_str!("../../data/usual_continuous_currents.csv")));
+
+#[cfg(test)]
+pub(super) fn usual() -> &'static [Usual] {
+    &USUAL
+}
+
+/// The continuous current below which breakers of this rated voltage are hardly made, so that it is never more than needed.
+pub fn usual_continuous_current(rated: ElectricPotential) -> Option<ElectricCurrent> {
+    let kv = rated.si() / 1e3;
+    USUAL.iter().find(|row| kv <= row.to_kv || same(kv, row.to_kv)).map(|row| ElectricCurrent::from_si(row.ampere))
 }
 
 /// The standard durations of short-circuit.

@@ -19,7 +19,7 @@ mod trv_duties;
 mod voltages;
 
 pub use cited::{Citation, OldWording, StandardScope, old_wordings, rating_structure, replacement_of};
-pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration};
+pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration, usual_continuous_current};
 pub use earthing::{first_pole_factors, out_of_phase_factor};
 pub use endurance::{class_for_operations, operations_of_class};
 pub use insulation::{InsulationLevel, insulation_levels};

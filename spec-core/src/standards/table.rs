@@ -31,6 +31,11 @@ mod tests {
             ("vocabulary", include_str!("../../data/edition_vocabulary.csv"), super::super::cited::counts().2),
             ("rating standards", include_str!("../../data/rating_standards.csv"), super::super::cited::counts().3),
             ("endurance", include_str!("../../data/mechanical_classes.csv"), super::super::endurance::all().len()),
+            (
+                "usual currents",
+                include_str!("../../data/usual_continuous_currents.csv"),
+                super::super::currents::usual().len(),
+            ),
             ("coil ranges", include_str!("../../data/coil_ranges.csv"), super::super::supply::counts().1),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
         ] {
