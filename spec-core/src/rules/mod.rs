@@ -22,6 +22,7 @@ pub mod making;
 pub mod mechanical;
 pub mod reading;
 pub mod sequence;
+pub mod several_breakers;
 pub mod short_circuit;
 pub mod standards_cited;
 pub mod statements;
@@ -166,6 +167,7 @@ pub fn standard() -> Vec<&'static Rule> {
         auxiliary::ALL,
         mechanical::ALL,
         standards_cited::ALL,
+        several_breakers::ALL,
         excess::ALL,
         deviations::ALL,
     ]

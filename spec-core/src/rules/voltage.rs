@@ -1,5 +1,6 @@
 //! Rules on voltage, frequency and insulation levels.
 
+use super::several_breakers::stands_on_wrong_system;
 use super::{Check, Rule};
 use crate::case::Case;
 use crate::finding::{Datum, FindingKind, Findings};
@@ -35,6 +36,9 @@ pub static RATED_VOLTAGE_BELOW_SYSTEM: Rule = Rule {
 
 fn below_system(case: &Case<'_>, findings: &mut Findings) {
     let Some(rated) = case.rated_voltage() else { return };
+    if stands_on_wrong_system(case) {
+        return;
+    }
     let highest = case.system.quantity::<ElectricPotential>(&system::HIGHEST_VOLTAGE);
     let (name, limit) = match &highest {
         Some(stated) => ("highest voltage of the system", stated),
@@ -88,7 +92,7 @@ fn excess(case: &Case<'_>, findings: &mut Findings) {
     };
     let families = case.regimes().families();
     let steps = steps_between_voltages(highest.value, rated.value, &families);
-    if steps < case.policy.excess_steps as i64 {
+    if steps < case.policy.excess_steps as i64 || stands_on_wrong_system(case) {
         return;
     }
     let Some(enough) = rated_at_or_above(highest.value, &families) else { return };
