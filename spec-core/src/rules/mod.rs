@@ -8,8 +8,10 @@ use crate::finding::{Finding, FindingKind, Findings};
 use crate::particular::{Particular, breaker, site};
 use crate::quantity::{ElectricCurrent, Physical, Ratio, significant};
 use crate::sheet::{Set, Sheet, Stated, Statement};
+use crate::source::Place;
 
 pub mod auxiliary;
+pub mod bay_current;
 pub mod completeness;
 pub mod continuous_current;
 pub mod dc_component;
@@ -18,14 +20,17 @@ pub mod earthing;
 pub mod excess;
 pub mod fault_duties;
 pub mod gas;
+pub mod insulation_details;
 pub mod making;
 pub mod mechanical;
 pub mod reading;
 pub mod sequence;
 pub mod several_breakers;
 pub mod short_circuit;
+pub mod special_faults;
 pub mod standards_cited;
 pub mod statements;
+pub mod switching_special;
 #[cfg(test)]
 pub mod testing;
 pub mod thermal;
@@ -91,6 +96,8 @@ pub struct Policy {
     pub service_life: f64,
     /// Extreme demands upon one breaker from which they are told together.
     pub extremes: usize,
+    /// Least ratio of a reduced lightning impulse level to the protective level of the arresters.
+    pub lightning_margin: f64,
     /// Whether the tender counts as issued whatever its status says.
     pub issued: bool,
     /// The day on which deviations are held against their expiry; without one, none expires.
@@ -112,6 +119,7 @@ impl Default for Policy {
             clearing_margin: 0.020,
             service_life: 30.0,
             extremes: 5,
+            lightning_margin: 1.2,
             issued: false,
             today: None,
         }
@@ -140,6 +148,13 @@ fn add_line(finding: &mut Finding, sheet: &Sheet, particular: &Particular, value
     );
 }
 
+/// The place just behind, to insert at.
+fn after(place: Place) -> Place {
+    let mut after = place;
+    after.span.start = after.span.end;
+    after
+}
+
 /// Whether the site lies in the open, with the line that says so.
 fn outdoors<'a>(case: &'a Case<'_>) -> Option<&'a Statement> {
     case.site.word(&site::INSTALLATION).and_then(|(word, statement)| (word == "outdoor").then_some(statement))
@@ -152,7 +167,9 @@ pub fn standard() -> Vec<&'static Rule> {
         statements::ALL,
         completeness::ALL,
         voltage::ALL,
+        insulation_details::ALL,
         continuous_current::ALL,
+        bay_current::ALL,
         short_circuit::ALL,
         dc_component::ALL,
         fault_duties::ALL,
@@ -160,6 +177,8 @@ pub fn standard() -> Vec<&'static Rule> {
         thermal::ALL,
         earthing::ALL,
         trv::ALL,
+        special_faults::ALL,
+        switching_special::ALL,
         sequence::ALL,
         times::ALL,
         timing::ALL,

@@ -295,7 +295,7 @@ fn wrong_system<'a>(case: &'a Case<'_>) -> Option<WrongSystem<'a>> {
         })
     });
     let ratio = rated.value.si() / system.value.si();
-    let far = ratio > OTHER_LEVEL || ratio < 1.0 / OTHER_LEVEL;
+    let far = !(1.0 / OTHER_LEVEL..=OTHER_LEVEL).contains(&ratio);
     (other.is_some() || far).then_some(WrongSystem { rated, system, other })
 }
 

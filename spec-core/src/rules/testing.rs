@@ -42,6 +42,7 @@ breaker LineBay on Ring at Yard
     rated frequency: 50 Hz
     rated short-duration power-frequency withstand voltage: 275 kV
     rated lightning impulse withstand voltage: 650 kV
+    radio interference voltage: 2500 uV
     rated continuous current: 2500 A
     rated short-circuit breaking current: 31.5 kA
     DC time constant: 45 ms

@@ -1,6 +1,6 @@
 //! Rules on clearing, reclosing, simultaneity and endurance of operation.
 
-use super::{Check, EQUAL, Rule, add_line};
+use super::{Check, EQUAL, Rule, add_line, after};
 use crate::case::Case;
 use crate::finding::{Datum, Finding, FindingKind, Findings};
 use crate::particular::{Particular, breaker, circuit, system, tender};
@@ -322,13 +322,6 @@ fn set_class(finding: &mut Finding, case: &Case<'_>, old: Option<Place>, class: 
     } else {
         add_line(finding, case.sheet, &breaker::CLASSES, class);
     }
-}
-
-/// The place just behind.
-fn after(place: Place) -> Place {
-    let mut after = place;
-    after.span.start = after.span.end;
-    after
 }
 
 /// Breakers that reclose up to 52 kV are of class E2.

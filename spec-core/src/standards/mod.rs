@@ -5,6 +5,7 @@
 //! in force before use.
 
 mod cited;
+mod cooling;
 mod currents;
 mod earthing;
 mod endurance;
@@ -19,6 +20,7 @@ mod trv_duties;
 mod voltages;
 
 pub use cited::{Citation, OldWording, StandardScope, old_wordings, rating_structure, replacement_of};
+pub use cooling::altitude_cooling;
 pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration, usual_continuous_current};
 pub use earthing::{first_pole_factors, out_of_phase_factor};
 pub use endurance::{class_for_operations, operations_of_class};

@@ -36,6 +36,7 @@ mod tests {
                 include_str!("../../data/usual_continuous_currents.csv"),
                 super::super::currents::usual().len(),
             ),
+            ("cooling", include_str!("../../data/altitude_cooling.csv"), super::super::cooling::all().len()),
             ("coil ranges", include_str!("../../data/coil_ranges.csv"), super::super::supply::counts().1),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
         ] {
