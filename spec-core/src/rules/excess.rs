@@ -214,7 +214,8 @@ pub static INSULATION_EXCESS: Rule = Rule {
     basis: "IEC 62271-1:2017 tables 1 to 4 (from memory); cost",
     formula: "Up <= highest row for Ur where H <= 1000 m",
     explanation: "No type of this rated voltage is tested with more, so that one of a higher voltage would have to be offered. Silent \
-                  above 1000 m and where the altitude is not stated, since the level may be corrected for it.",
+                  above 1000 m and where the altitude is not stated, since the level may be corrected for it; and where \
+                  insulation-set speaks, since the pair is no row at all.",
     check: Check::Case(insulation),
 };
 
@@ -226,7 +227,11 @@ fn insulation(case: &Case<'_>, findings: &mut Findings) {
     ) else {
         return;
     };
-    if voltage::corrected_for_altitude(case) {
+    let mixed = case
+        .breaker
+        .quantity::<ElectricPotential>(&breaker::RATED_SHORT_DURATION_POWER_FREQUENCY_WITHSTAND_VOLTAGE)
+        .is_some_and(|ud| !voltage::is_row_of_any(case, ud.value, up.value));
+    if mixed || voltage::corrected_for_altitude(case) {
         return;
     }
     let rows = voltage::rows(case, ur.value);
@@ -537,14 +542,26 @@ mod tests {
     #[test]
     fn levels_above_every_row() {
         let bay = |up: &str| {
-            Bay::new().set("breaker", "rated voltage", "245 kV").set(
-                "breaker",
-                "rated lightning impulse withstand voltage",
-                up,
-            )
+            Bay::new()
+                .set("breaker", "rated voltage", "245 kV")
+                .without("breaker", "rated short-duration power-frequency withstand voltage")
+                .set("breaker", "rated lightning impulse withstand voltage", up)
         };
         assert_eq!(bay("1300 kV").one("insulation-excess").edits[0].text, "1050 kV");
         bay("1050 kV").silent("insulation-excess");
+        let row = Bay::new().set("breaker", "rated short-duration power-frequency withstand voltage", "325 kV").set(
+            "breaker",
+            "rated lightning impulse withstand voltage",
+            "750 kV",
+        );
+        row.one("insulation-excess");
+        row.silent("insulation-set");
+        let mixed = Bay::new()
+            .set("breaker", "rated voltage", "36 kV")
+            .set("breaker", "rated short-duration power-frequency withstand voltage", "70 kV")
+            .set("breaker", "rated lightning impulse withstand voltage", "200 kV");
+        mixed.silent("insulation-excess");
+        mixed.one("insulation-set");
         bay("1300 kV").set("site", "altitude", "1800 m").silent("insulation-excess");
     }
 

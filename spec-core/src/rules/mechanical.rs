@@ -120,9 +120,11 @@ fn loads(case: &Case<'_>, findings: &mut Findings) {
         );
         let finding = findings.add(&TERMINAL_LOAD, built.value, message);
         finding.label("what pulls at the terminals?");
-        for (_, particular, load) in missing {
-            add_line(finding, case.sheet, particular, &newtons(*load));
-        }
+        let lines: Vec<String> = missing
+            .iter()
+            .map(|(_, particular, load)| format!("    {}: {}", particular.label, newtons(*load)))
+            .collect();
+        finding.edit("add the loads of the examples", case.sheet.end, format!("\n{}", lines.join("\n")));
     }
     for (way, particular, example) in directions {
         let Some(stated) = case.breaker.quantity::<Force>(particular) else { continue };

@@ -179,8 +179,9 @@ fn spare(case: &Case<'_>, findings: &mut Findings) {
     for place in related {
         finding.related(place, "the highest of its line");
     }
-    for (place, text) in edits {
-        finding.edit(format!("write {text}"), place, text);
+    // Edits are alternatives, so that one is given only where it cures all.
+    if let ([(place, text)], 1) = (edits.as_slice(), short.len()) {
+        finding.edit(format!("write {text}"), *place, text.as_str());
     }
     finding.advice("give the spare a schedule of its own with the highest of each line");
 }

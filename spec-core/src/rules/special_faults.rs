@@ -67,11 +67,11 @@ fn short_line(case: &Case<'_>, findings: &mut Findings) {
     );
     let place = denied.map_or(line.value, |statement| statement.value);
     let finding = findings.add(&SHORT_LINE_FAULT_MISSING, place, message);
-    finding.label("no short-line fault").needed("required: L90, L75").beside(line, "an overhead line");
+    finding.label("no short-line fault").needed("required: L90, L75");
     finding.related(case.sheet.heading, "the breaker").beside(isc.statement, "the breaking current");
     match denied {
         Some(_) => {
-            finding.replace_by("required");
+            finding.beside(line, "an overhead line").replace_by("required");
         }
         None => add_line(finding, case.sheet, &breaker::SHORT_LINE_FAULT, "required"),
     }

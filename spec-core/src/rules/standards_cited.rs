@@ -180,7 +180,8 @@ pub(super) fn cites_undated(facts: &Facts) -> bool {
 }
 
 fn undated(item: &Item) -> bool {
-    Citation::read(&item.text).is_some_and(|citation| citation.year.is_none())
+    // One that was replaced has its own finding.
+    Citation::read(&item.text).is_some_and(|cited| cited.year.is_none() && replacement_of(&cited.number).is_none())
 }
 
 /// Each standard has its edition.
@@ -191,7 +192,8 @@ pub static UNDATED_STANDARD: Rule = Rule {
     basis: "common practice, no source",
     formula: "a year at each standard, or a reference date of standards that is a date",
     explanation: "The edition may change between tender and test, and the latest edition is another one each year. Silent where the \
-                  tender's reference date of standards is a date or the tender date. One finding for each list.",
+                  tender's reference date of standards is a date or the tender date. One finding for each list, and none for \
+                  standards that were replaced.",
     check: Check::Set(editions),
 };
 
@@ -326,6 +328,9 @@ mod tests {
         open.silent("precedence-missing");
         let latest = bay.set("tender", "reference date of standards", "latest edition");
         assert_eq!(latest.one("undated-standard").edits[0].text, "tender date");
+        citing("IEC 62271-1:2017, IEC 60056")
+            .without("tender", "reference date of standards")
+            .silent("undated-standard");
         Bay::new().set("tender", "reference date of standards", "latest edition").silent("undated-standard");
         Bay::new().without("tender", "reference date of standards").silent("undated-standard");
     }

@@ -8,7 +8,6 @@ use crate::finding::{FindingKind, Findings};
 use crate::particular::{Particular, breaker, circuit, system, tender};
 use crate::quantity::{ElectricCurrent, ElectricPotential, ElectricalResistance, Length, Physical, Power, significant};
 use crate::sheet::{Facts, Statement};
-use crate::source::Place;
 use crate::standards::Citation;
 
 /// The rules of this subject.

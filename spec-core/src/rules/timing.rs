@@ -303,7 +303,9 @@ fn mechanical(case: &Case<'_>, findings: &mut Findings) {
     let place = class.map_or(operations.statement.value, |(class, _)| class.place);
     let finding = findings.add(&MECHANICAL_CLASS, place, message);
     finding.label("more operations than tested").stated(stated).working(operations.working);
-    finding.beside(operations.statement, "how often it is switched");
+    if class.is_some() {
+        finding.beside(operations.statement, "how often it is switched");
+    }
     match needed {
         Some(needed) => set_class(finding, case, class.map(|(class, _)| class.place), &format!("M{needed}")),
         None => {
@@ -399,7 +401,7 @@ pub static BREAK_TIME_UNUSUAL: Rule = Rule {
     basis: "IEEE C37.04 interrupting times (from memory)",
     formula: "break time >= 2 cycles",
     explanation: "2-cycle breakers are the fastest that are made for sale. A shorter time is more often the arcing or the opening \
-                  time. Silent where the frequency is not known.",
+                  time. Silent where the frequency is not known, and where the opening time is as long.",
     check: Check::Case(unusual),
 };
 
@@ -409,7 +411,10 @@ const SHORTEST_BREAK: f64 = 2.0;
 fn unusual(case: &Case<'_>, findings: &mut Findings) {
     let (Some(total), Some(frequency)) = (longest(case, &breaker::BREAK_TIME), case.frequency()) else { return };
     let least = SHORTEST_BREAK / frequency.si();
-    if total.value.si() + total.measure.half_last_digit() >= least * (1.0 - EQUAL) {
+    // Not longer than the opening time, it is told by break-time-below-opening.
+    let told = longest(case, &breaker::OPENING_TIME)
+        .is_some_and(|opening| total.value.si() <= opening.value.si() * (1.0 + EQUAL));
+    if told || total.value.si() + total.measure.half_last_digit() >= least * (1.0 - EQUAL) {
         return;
     }
     let message = format!(
@@ -615,7 +620,9 @@ mod tests {
 
     #[test]
     fn break_times_of_no_class() {
-        let bay = |time: &str| Bay::new().set("breaker", "break time", time);
+        let bay =
+            |time: &str| Bay::new().set("breaker", "break time", time).set("breaker", "opening time", "12 to 15 ms");
+        Bay::new().set("breaker", "break time", "25 ms").silent("break-time-unusual");
         assert_eq!(bay("25 ms").one("break-time-unusual").kind, FindingKind::Caution);
         bay("40 ms").silent("break-time-unusual");
         bay("2 cycles").silent("break-time-unusual");

@@ -240,7 +240,11 @@ fn set(case: &Case<'_>, findings: &mut Findings) {
     let is_row = rows.iter().any(|row| row.is_pair(ud.value, up.value));
     // A level below every row is a shortfall, of which another rule speaks.
     let below = up.value.si() < lowest_up.si() * (1.0 - 1e-6) || ud.value.si() < lowest_ud.si() * (1.0 - 1e-6);
-    if is_row || below || corrected_for_altitude(case) {
+    // A whole row of a higher rated voltage is an excess, of which another rule speaks where the altitude is known.
+    let above = rows.iter().all(|row| up.value.si() > row.lightning().si() * (1.0 + 1e-6))
+        && case.site.mentions(&site::ALTITUDE)
+        && is_row_of_any(case, ud.value, up.value);
+    if is_row || below || above || corrected_for_altitude(case) {
         return;
     }
     let pairs: Vec<String> = rows
@@ -292,6 +296,12 @@ fn set(case: &Case<'_>, findings: &mut Findings) {
 
 fn shown(voltage: ElectricPotential) -> String {
     crate::quantity::significant(voltage.si() / 1e3, 4)
+}
+
+/// Whether the pair is a row of some rated voltage, in the families cited.
+pub(super) fn is_row_of_any(case: &Case<'_>, ud: ElectricPotential, up: ElectricPotential) -> bool {
+    let families = case.regimes().families();
+    insulation_levels().iter().any(|row| families.contains(&row.regime) && row.is_pair(ud, up))
 }
 
 /// Where in the tables a level is at home, by family and rated voltage.
