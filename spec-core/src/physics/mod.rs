@@ -1,5 +1,6 @@
 //! Pure functions on typed quantities, each citing its equation. No tables of ratings, no text, no findings.
 
+pub mod atmosphere;
 pub mod dc_component;
 pub mod first_pole;
 pub mod gas;

@@ -9,6 +9,7 @@ use crate::particular::breaker;
 use crate::quantity::ElectricCurrent;
 use crate::sheet::{Set, Stated};
 
+pub mod climate;
 pub mod completeness;
 pub mod continuous_current;
 pub mod dc_component;
@@ -16,6 +17,7 @@ pub mod deviations;
 pub mod earthing;
 pub mod fault_duties;
 pub mod gas;
+pub mod gas_law;
 pub mod making;
 pub mod reading;
 pub mod sequence;
@@ -126,6 +128,8 @@ pub fn standard() -> Vec<&'static Rule> {
         sequence::ALL,
         times::ALL,
         gas::ALL,
+        climate::ALL,
+        gas_law::ALL,
         deviations::ALL,
     ]
     .concat()

@@ -6,6 +6,7 @@
 
 mod currents;
 mod earthing;
+mod gas_law;
 mod insulation;
 mod making;
 mod pressure;
@@ -16,6 +17,7 @@ mod voltages;
 
 pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration};
 pub use earthing::{first_pole_factors, out_of_phase_factor};
+pub use gas_law::{CountsFrom, ForbiddenGases, GasLaw, gas_law, is_fluorinated};
 pub use insulation::{InsulationLevel, insulation_levels};
 pub use making::{MakingCase, making_factor};
 pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE};

@@ -22,6 +22,7 @@ mod tests {
                 include_str!("../../data/time_constants.csv"),
                 super::super::time_constants::all().len(),
             ),
+            ("gas law", include_str!("../../data/gas_law.csv"), super::super::gas_law::all().len()),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
         ] {
             let mut reader = csv::Reader::from_reader(text.as_bytes());
