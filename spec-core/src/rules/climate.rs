@@ -64,17 +64,17 @@ const COLDEST_NORMAL: f64 = ZERO_CELSIUS - 40.0;
 
 fn ambient_class(case: &Case<'_>, findings: &mut Findings) {
     let Some(lowest) = lowest_ambient(case) else { return };
-    if let Some(service) = case.breaker.quantity::<ThermodynamicTemperature>(&breaker::LOWEST_SERVICE_TEMPERATURE) {
-        if service.value.si() > lowest.value.si() + DEGREE_SLACK {
-            let message = format!("ratings down to {} do not cover the site's {}", service.measure, lowest.measure);
-            findings
-                .add(&AMBIENT_CLASS, service.place(), message)
-                .label("warmer than the site")
-                .stated(&service.measure)
-                .needed(&lowest.measure)
-                .beside(lowest.statement, "the lowest ambient temperature")
-                .replace_by(lowest.measure.to_string());
-        }
+    if let Some(service) = case.breaker.quantity::<ThermodynamicTemperature>(&breaker::LOWEST_SERVICE_TEMPERATURE)
+        && service.value.si() > lowest.value.si() + DEGREE_SLACK
+    {
+        let message = format!("ratings down to {} do not cover the site's {}", service.measure, lowest.measure);
+        findings
+            .add(&AMBIENT_CLASS, service.place(), message)
+            .label("warmer than the site")
+            .stated(&service.measure)
+            .needed(&lowest.measure)
+            .beside(lowest.statement, "the lowest ambient temperature")
+            .replace_by(lowest.measure.to_string());
     }
     let Some((class, temperature, statement)) = class(case) else { return };
     let covered = temperature <= lowest.value.si() + DEGREE_SLACK;

@@ -121,14 +121,20 @@ impl PureGas {
         Ok(Condensation { temperature: ThermodynamicTemperature::from_si(temperature), phase })
     }
 
-    /// Density of the saturated vapour at a temperature.
-    pub fn saturated_density(&self, at: ThermodynamicTemperature) -> Result<MassDensity, GasFault> {
+    /// Pressure of saturation at a temperature: over the liquid, and over the frost below the triple point.
+    pub fn saturation_pressure(&self, at: ThermodynamicTemperature) -> Result<Pressure, GasFault> {
         let t = at.si();
         self.within(t)?;
         if t >= self.critical_temperature {
             return Err(GasFault::TemperatureOutside { bound: self.critical_temperature });
         }
-        let density = MassDensity::from_si(self.density_of_gas(self.saturation(t), t)?);
+        Ok(Pressure::from_si(self.saturation(t)))
+    }
+
+    /// Density of the saturated vapour at a temperature.
+    pub fn saturated_density(&self, at: ThermodynamicTemperature) -> Result<MassDensity, GasFault> {
+        let saturated = self.saturation_pressure(at)?;
+        let density = MassDensity::from_si(self.density_of_gas(saturated.si(), at.si())?);
         if self.reference_pressure(density).si() > self.highest_filling {
             return Err(GasFault::FillingTooHigh { bound: self.highest_filling });
         }
