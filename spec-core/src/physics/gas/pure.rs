@@ -121,12 +121,14 @@ impl PureGas {
         Ok(Condensation { temperature: ThermodynamicTemperature::from_si(temperature), phase })
     }
 
-    /// Pressure of saturation at a temperature: over the liquid, and over the frost below the triple point.
+    /// Pressure of saturation at a temperature up to 20 degC, at which fillings are stated: over the liquid, and over the frost
+    /// below the triple point.
     pub fn saturation_pressure(&self, at: ThermodynamicTemperature) -> Result<Pressure, GasFault> {
         let t = at.si();
         self.within(t)?;
-        if t >= self.critical_temperature {
-            return Err(GasFault::TemperatureOutside { bound: self.critical_temperature });
+        let bound = REFERENCE_TEMPERATURE.min(self.critical_temperature);
+        if t > bound {
+            return Err(GasFault::TemperatureOutside { bound });
         }
         Ok(Pressure::from_si(self.saturation(t)))
     }
