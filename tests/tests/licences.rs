@@ -6,9 +6,8 @@ use std::process::Command;
 
 use firstpole_tests::root;
 
-const PERMISSIVE: [&str; 10] = [
-    "MIT", "Apache-2.0", "Unlicense", "BSD-2-Clause", "BSD-3-Clause", "ISC", "Zlib", "0BSD", "CC0-1.0", "Unicode-3.0",
-];
+const PERMISSIVE: [&str; 10] =
+    ["MIT", "Apache-2.0", "Unlicense", "BSD-2-Clause", "BSD-3-Clause", "ISC", "Zlib", "0BSD", "CC0-1.0", "Unicode-3.0"];
 
 /// Whether a licence expression can be met with permissive licences alone: one side of each OR, both sides of each AND.
 fn permissive(expression: &str) -> bool {

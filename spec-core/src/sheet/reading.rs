@@ -9,6 +9,7 @@ use crate::standards::GAUGE_REFERENCE;
 
 /// What was read of a value.
 #[derive(Clone, Debug, PartialEq)]
+#[allow(clippy::large_enum_variant, reason = "most readings are quantities, so a box would only add a step")]
 pub enum Reading {
     /// It could not be read; a finding says so, and rules that need it stay silent.
     Unknown,
@@ -155,7 +156,10 @@ impl QuantityReading {
     pub fn bounds(&self, limit: Limit, by_label: Option<Limit>) -> bool {
         self.is_range()
             || by_label == Some(limit)
-            || matches!((self.bound, limit), (Some(Bound::Least), Limit::Least) | (Some(Bound::Greatest), Limit::Greatest))
+            || matches!(
+                (self.bound, limit),
+                (Some(Bound::Least), Limit::Least) | (Some(Bound::Greatest), Limit::Greatest)
+            )
     }
 
     /// What it measures.
