@@ -237,7 +237,7 @@ fn find_unit(reader: &mut Reader<'_>, words: &[Span], kind: &QuantityKind) -> Op
         None => {
             let text = first.of(reader.text);
             let near = nearest_unit(text, kind);
-            let message = format!("{text} is no unit that is known here; {} are", kind.units.join(", "));
+            let message = format!("{text} is no unit that is known here; in use are {}", kind.units.join(", "));
             let finding = reader.find(&rules::UNKNOWN_UNIT, place, message);
             finding.label("unknown unit").stated(text);
             if let Some(unit) = near {
