@@ -1,6 +1,6 @@
 //! Any text gives an assessment: no panic, lines that cover it, places that lie inside it on character borders.
 
-#![allow(clippy::expect_used, reason = "a test fails by panicking")]
+#![allow(clippy::expect_used, clippy::indexing_slicing, reason = "a test fails by panicking")]
 
 use firstpole_core::{Assessor, Place, Sources};
 use firstpole_grammar::{LineKind, read};
@@ -117,10 +117,10 @@ proptest! {
 #[test]
 fn texts_that_are_made_to_be_slow() {
     let long_line = format!("cbspec 1\nbreaker A\n bays: {}\n", "x, ".repeat(100_000));
-    let headings: String = (0..20_000).map(|n| format!("site S{n}\n")).collect();
-    let chain: String = (0..5_000).map(|n| format!("family F{n} like F{}\n", (n + 1) % 5_000)).collect();
+    let headings = (0..20_000).fold(String::new(), |text, n| text + &format!("site S{n}\n"));
+    let circle = (0..5_000).fold(String::new(), |text, n| text + &format!("family F{n} like F{}\n", (n + 1) % 5_000));
     let brackets = format!("breaker A\n rated voltage: {}\n{}\n", "(".repeat(4_000), "\"".repeat(4_000));
-    for text in [long_line, headings, chain, brackets] {
+    for text in [long_line, headings, circle, brackets] {
         let assessment = Assessor::standard().assess(&Sources::of("x.cbspec", text.as_str()));
         assert!(!assessment.findings().is_empty());
     }

@@ -1,5 +1,7 @@
 //! Quantities there and back: written, read, shown, and read again.
 
+#![allow(clippy::expect_used, clippy::indexing_slicing, reason = "a test fails by panicking")]
+
 use firstpole_core::particular::{Kind, SheetKind, declared};
 use firstpole_core::quantity::{Dimension, Measure, look_up, units_of};
 use firstpole_core::sheet::{Reading, Statement};

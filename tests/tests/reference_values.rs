@@ -4,11 +4,8 @@
 
 use std::collections::BTreeMap;
 
-use firstpole_core::physics::gas::{Condensation, GasFault, Phase, sf6};
 use firstpole_core::physics::{dc_component, first_pole, trv};
-use firstpole_core::quantity::{
-    ElectricCurrent, ElectricPotential, Frequency, MassDensity, Physical, Pressure, ThermodynamicTemperature, Time,
-};
+use firstpole_core::quantity::{ElectricCurrent, ElectricPotential, Frequency, Physical, Time};
 use firstpole_core::standards::{
     Duty, MakingCase, PreferredCurrents, RatingSeries, Regime, SystemClass, TimeConstantCase, TimeConstants,
     insulation_levels, is_rated_voltage, making_factor,
@@ -123,14 +120,6 @@ fn ms(number: f64) -> Time {
 
 fn hz(number: f64) -> Frequency {
     Frequency::from_si(number)
-}
-
-fn mpa(number: f64) -> Pressure {
-    Pressure::from_si(number * 1e6)
-}
-
-fn celsius(number: f64) -> ThermodynamicTemperature {
-    ThermodynamicTemperature::from_si(number + 273.15)
 }
 
 fn duty(row: &Row) -> Option<Duty> {
@@ -450,144 +439,4 @@ fn dc_time_constants() {
         tally.asserted += 1;
     }
     tally.end(6, 0);
-}
-
-/// The density of the filling in a row.
-fn filling(row: &Row) -> Result<MassDensity, String> {
-    let density = sf6().density(mpa(row.number("fill_p_MPa_abs")), celsius(row.number("fill_T_C")));
-    density.map_err(|fault| fault.to_string())
-}
-
-/// The quantity of a row of the gas fixtures, in its unit.
-fn gas_value(row: &Row) -> Result<f64, String> {
-    let at = || celsius(row.number("T_C"));
-    let value = match row.text("quantity") {
-        "density" => Ok(filling(row)?.si()),
-        "liquefaction_temperature" => sf6().dew_point(filling(row)?).map(|dew| dew.temperature.si() - 273.15),
-        "pressure_at_liquefaction" => {
-            let density = filling(row)?;
-            sf6().dew_point(density).and_then(|dew| sf6().pressure(density, dew.temperature)).map(|p| p.si() / 1e6)
-        }
-        "pressure_isochore" => sf6().pressure(filling(row)?, at()).map(|p| p.si() / 1e6),
-        "liquid_mass_fraction" => sf6().two_phase(filling(row)?, at()).map(|state| state.condensed.si()),
-        "gas_density" => sf6().two_phase(filling(row)?, at()).map(|state| state.vapour.si()),
-        "max_filling_pressure" => sf6().highest_filling(at()).map(|p| p.si() / 1e6),
-        "saturation_pressure" => sf6().saturation_pressure(at()).map(|p| p.si() / 1e6),
-        "saturated_vapour_density" => sf6().saturated_density(at()).map(Physical::si),
-        other => panic!("{}: quantity {other}", row.1),
-    };
-    value.map_err(|fault| fault.to_string())
-}
-
-/// A state that the library must refuse: no filling may be had from it.
-fn beyond_range(tally: &mut Tally, row: &Row) {
-    let quantity = row.text("quantity");
-    tally.holds(row, "taken as the highest filling", sf6().highest_filling(celsius(row.number("T_C"))).is_err());
-    if let Ok(value) = gas_value(row) {
-        tally.holds(row, &format!("{quantity} is not refused: {value}"), false);
-    }
-}
-
-/// The dew point of a density that is published to condense at a temperature. Below 205 K the equation of state does not hold,
-/// and the library must refuse.
-fn dew_point(tally: &mut Tally, row: &Row, density: MassDensity, celsius: f64) -> Option<Condensation> {
-    let found = sf6().dew_point(density);
-    if celsius < LOWEST {
-        let refused = matches!(found, Err(GasFault::TemperatureOutside { .. }));
-        tally.holds(row, &format!("the dew point is not refused: {found:?}"), refused);
-        return None;
-    }
-    tally.holds(row, &format!("{found:?}"), found.is_ok());
-    found.ok()
-}
-
-/// Lowest temperature of the equation of state, 205 K in degrees Celsius.
-const LOWEST: f64 = -68.15;
-
-#[test]
-fn gas_states() {
-    let mut tally = Tally::of("gas/fixtures.csv");
-    for row in rows(tally.file) {
-        assert_eq!((row.text("medium"), row.text("kind")), ("SF6", "eos"), "{}", row.1);
-        match row.text("in_model_range") {
-            "yes" => {}
-            "no" => {
-                beyond_range(&mut tally, &row);
-                tally.asserted += 1;
-                continue;
-            }
-            // The library has one density of the liquid, and no function for it.
-            "n/a" => {
-                tally.skipped += 1;
-                continue;
-            }
-            other => panic!("range {other}"),
-        }
-        let (quantity, expected) = (row.text("quantity"), row.number("value"));
-        match gas_value(&row) {
-            Ok(value) => {
-                let (tolerance, scale) = match row.text("unit") {
-                    "degC" => (0.02, 1.0),
-                    // The library has one density of the liquid for all temperatures.
-                    "1" => (0.001, 1.0),
-                    _ => (5e-4 * expected, expected),
-                };
-                tally.near(&row, quantity, value, expected, tolerance, scale);
-            }
-            Err(fault) => tally.holds(&row, &format!("{quantity}: {fault}"), false),
-        }
-        tally.asserted += 1;
-    }
-    tally.end(397, 11);
-}
-
-#[test]
-fn gas_liquefaction() {
-    let mut tally = Tally::of("gas/ref_pure_liquefaction.csv");
-    for row in rows(tally.file) {
-        let filling = row.number("fill_p_MPa_abs_at_20C");
-        let density = sf6().density(mpa(filling), celsius(20.0)).expect("a density");
-        let expected = row.number("density_kg_m3");
-        tally.near(&row, "density", density.si(), expected, 5e-4 * expected, expected);
-        if let Some(kelvin) = row.maybe("T_liq_K") {
-            let dew = sf6().dew_point(density).expect("a dew point");
-            tally.holds(&row, "not a liquid", dew.phase == Phase::Liquid);
-            tally.near(&row, "temperature", dew.temperature.si(), kelvin, 0.02, 1.0);
-            let pressure = sf6().pressure(density, dew.temperature).expect("a pressure").si() / 1e6;
-            let expected = row.number("p_at_liq_MPa_abs");
-            tally.near(&row, "pressure", pressure, expected, 5e-4 * expected, expected);
-        } else {
-            // Where it comes down as frost is in the other file; the filling of 0.1 MPa does so below the range.
-            let expected = if filling < 0.15 { LOWEST - 1.0 } else { LOWEST };
-            let dew = dew_point(&mut tally, &row, density, expected);
-            tally.holds(&row, "not frost", dew.is_none_or(|dew| dew.phase == Phase::Frost));
-        }
-        // Where there is frost the file has the vapour of the triple point, above which a filling liquefies.
-        let at = ThermodynamicTemperature::from_si(row.maybe("T_liq_K").unwrap_or(223.555));
-        let vapour = sf6().saturated_density(at).expect("a density").si();
-        let expected = row.number("sat_vapour_density_kg_m3");
-        tally.near(&row, "saturated vapour", vapour, expected, 5e-4 * expected, expected);
-        tally.asserted += 1;
-    }
-    tally.end(23, 0);
-}
-
-#[test]
-fn gas_frost() {
-    let mut tally = Tally::of("gas/ref_solid_deposit.csv");
-    for row in rows(tally.file) {
-        let density = sf6().density(mpa(row.number("fill_p_MPa_abs_at_20C")), celsius(20.0)).expect("a density");
-        let expected = row.number("density_kg_m3");
-        tally.near(&row, "density", density.si(), expected, 5e-4 * expected, expected);
-        if let Some(dew) = dew_point(&mut tally, &row, density, row.number("T_deposit_C")) {
-            tally.holds(&row, "not frost", dew.phase == Phase::Frost);
-            let (got, expected) = (dew.temperature.si() - 273.15, row.number("T_deposit_C"));
-            tally.near(&row, "temperature", got, expected, 0.02, 1.0);
-            let pressure = sf6().pressure(density, dew.temperature).expect("a pressure").si() / 1e6;
-            let expected = row.number("p_MPa_abs");
-            tally.near(&row, "pressure", pressure, expected, 5e-4 * expected, expected);
-        }
-        tally.asserted += 1;
-    }
-    tally.end(5, 0);
 }

@@ -70,12 +70,16 @@ fn circles_are_told_once_and_cut() {
     assert_eq!(of(&assess(&files), "circle").len(), 2, "each file closes the circle of the other");
 }
 
+fn chain_of(links: usize) -> String {
+    (0..links).fold(String::new(), |text, n| text + &format!("family F{n} like F{}\n", n + 1))
+}
+
 #[test]
 fn a_chain_that_nobody_can_follow_is_cut() {
-    let chain: String = (0..150).map(|n| format!("family F{n} like F{}\n", n + 1)).collect();
+    let chain = chain_of(150);
     let assessment = assess(&[("a.cbspec", &format!("cbspec 1\n{chain}family F150\n"))]);
     assert_eq!(of(&assessment, "circle").len(), 1);
-    let short: String = (0..99).map(|n| format!("family F{n} like F{}\n", n + 1)).collect();
+    let short = chain_of(99);
     assert!(of(&assess(&[("a.cbspec", &format!("cbspec 1\n{short}family F99\n"))]), "circle").is_empty());
 }
 

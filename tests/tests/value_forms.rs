@@ -1,6 +1,6 @@
 //! The forms of values, in the spellings of both communities: what is read of each, and what is refused with which repair.
 
-#![allow(clippy::expect_used, reason = "a test fails by panicking")]
+#![allow(clippy::expect_used, clippy::indexing_slicing, reason = "a test fails by panicking")]
 
 use firstpole_core::quantity::Qualifier;
 use firstpole_core::sheet::{QuantityReading, Reading};
