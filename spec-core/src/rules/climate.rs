@@ -14,6 +14,7 @@ pub static ALL: &[&Rule] = &[
     &AMBIENT_CLASS,
     &AMBIENT_EXCESS,
     &HEATER_DEPENDENCE,
+    &MONITOR_TEMPERATURE,
     &WIND_WITH_COLD,
     &ICE_WIND_CLASS,
     &LEAKAGE_RATE,
@@ -177,8 +178,47 @@ fn heaters(case: &Case<'_>, findings: &mut Findings) {
     finding.label("depends on heating");
     if let Some(lowest) = lowest_ambient(case) {
         finding.beside(lowest.statement, "the lowest ambient temperature");
+        // What happens without heating: the level that is reached first in the cold of the air itself.
+        let levels = case.duty.gas.levels.iter().rev();
+        let reached = levels.filter_map(|state| state.dew_point.as_ref().map(|dew| (state, dew)));
+        for (state, dew) in reached.filter(|(_, dew)| dew.figure.value.si() > lowest.value.si()).take(1) {
+            let (level, result) = (state.level.word(), &dew.figure.working.result);
+            finding.working(format!(
+                "without heating the {level} is reached at {result}, and the air goes down to {}",
+                lowest.measure
+            ));
+        }
     }
     finding.advice(format!("add {}", missing.join(" and ")));
+}
+
+/// A monitor has the temperature of the gas.
+pub static MONITOR_TEMPERATURE: Rule = Rule {
+    name: "monitor-temperature",
+    title: "Where the gas is heated, its density monitor has the temperature of the gas.",
+    kind: FindingKind::Caution,
+    basis: "common practice (from memory)",
+    formula: "tank heaters: yes, and the monitor apart and unheated",
+    explanation: "A monitor turns pressure into density by the temperature that it feels itself. In the cold air beside a heated tank \
+                  it takes the gas for denser than it is, and a leak stays unseen. Silent where the place of the monitor is not \
+                  stated.",
+    check: Check::Case(monitor),
+};
+
+fn monitor(case: &Case<'_>, findings: &mut Findings) {
+    let Some((true, heated)) = case.breaker.yes_no(&breaker::TANK_HEATERS) else { return };
+    let Some(("apart, unheated", statement)) = case.breaker.word(&breaker::DENSITY_MONITOR) else { return };
+    findings
+        .add(
+            &MONITOR_TEMPERATURE,
+            statement.value,
+            "the monitor feels the cold air while the gas is heated: it reads too dense",
+        )
+        .label("colder than the gas")
+        .stated("apart, unheated")
+        .needed("in the gas")
+        .beside(heated, "the gas is heated")
+        .replace_by("in the gas");
 }
 
 /// Wind takes the heat away.
@@ -448,6 +488,16 @@ mod tests {
         heated.clone().set("site", "wind at lowest ambient", "12 m/s").silent("wind-with-cold");
         heated.set("site", "installation", "indoor").silent("wind-with-cold");
         Bay::new().silent("wind-with-cold");
+    }
+
+    #[test]
+    fn a_monitor_beside_a_heated_tank() {
+        let bay =
+            |place: &str| Bay::new().set("breaker", "tank heaters", "yes").set("breaker", "density monitor", place);
+        assert_eq!(bay("remote").one("monitor-temperature").edits[0].text, "in the gas");
+        bay("on the tank").silent("monitor-temperature");
+        bay("apart, heated").silent("monitor-temperature");
+        bay("remote").set("breaker", "tank heaters", "no").silent("monitor-temperature");
     }
 
     #[test]

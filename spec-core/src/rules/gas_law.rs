@@ -12,7 +12,7 @@ use crate::standards::{CountsFrom, GasLaw, gas_law, is_fluorinated};
 pub static ALL: &[&Rule] = &[&FLUORINATED_GAS_DATE, &MEDIUM_AGAINST_LAW, &SERVICE_GAS];
 
 /// Whose law holds: the site's line, else the tender's.
-fn jurisdiction<'a>(case: &'a Case<'_>) -> Option<(&'static str, &'a Statement)> {
+pub(crate) fn jurisdiction<'a>(case: &'a Case<'_>) -> Option<(&'static str, &'a Statement)> {
     case.site.word(&site::JURISDICTION).or_else(|| case.tender.word(&tender::JURISDICTION))
 }
 

@@ -334,6 +334,21 @@ pub struct Share {
     pub fraction: Option<f64>,
 }
 
+impl std::fmt::Display for Mixture {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        for (at, portion) in self.portions.iter().enumerate() {
+            if at > 0 {
+                f.write_str(" + ")?;
+            }
+            f.write_str(portion.gas)?;
+            if let Some(fraction) = portion.fraction {
+                write!(f, " {} %", crate::quantity::rounded(fraction * 100.0, 2))?;
+            }
+        }
+        Ok(())
+    }
+}
+
 impl Mixture {
     /// The gas, where it is one pure gas.
     pub fn pure(&self) -> Option<&'static str> {
