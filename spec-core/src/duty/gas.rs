@@ -364,7 +364,8 @@ impl Medium {
                 let figure = Figure::new(dew, "a liquid is more stable than the gas at constant volume", self.basis())
                     .given("p", absolute(p))
                     .shown(told(dew, certainty));
-                Some(DewPoint { figure, phase: Phase::Liquid, certainty })
+                let frost = mixture.triple_of_heaviest().is_some_and(|triple| dew < triple);
+                Some(DewPoint { figure, phase: if frost { Phase::Frost } else { Phase::Liquid }, certainty })
             }
         }
     }

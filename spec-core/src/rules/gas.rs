@@ -6,7 +6,7 @@ use crate::duty::{Certainty, GasDuty, Level, LevelState, Medium, absolute, celsi
 use crate::finding::{Finding, FindingKind, Findings};
 use crate::particular::{Kind, Limit, Particular, Tail, breaker, site};
 use crate::physics::gas::{GasFault, Phase, sf6};
-use crate::quantity::{Physical, Pressure, ThermodynamicTemperature, significant};
+use crate::quantity::{Physical, Pressure, ThermodynamicTemperature, rounded, significant};
 use crate::sheet::{QuantityReading, Stated, Statement};
 use crate::standards::{GAUGE_REFERENCE, REFERENCE_TEMPERATURE};
 
@@ -137,6 +137,11 @@ fn mixture(case: &Case<'_>, gas: &GasDuty, lowest: ThermodynamicTemperature, fin
             "{shown}: from the rule of partial pressures to the model without interaction of the gases"
         ));
     }
+    if dew.phase == Phase::Frost {
+        finding.working(
+            "below the triple point of the gas that condenses it comes down as frost, a little warmer than this",
+        );
+    }
     tell(case, gas, finding);
     if matches!(dew.certainty, Certainty::Estimate { .. }) {
         finding.working("the lowest temperature that the bidder declares and proves decides");
@@ -166,7 +171,7 @@ fn unseen(gas: &GasDuty, state: &LevelState, lowest: ThermodynamicTemperature, f
         celsius(lowest),
         percent(liquid.condensed_share),
         gas.name,
-        percent(low.max(0.0))
+        format!("{} %", rounded(low.max(0.0) * 100.0, 1))
     );
     findings
         .add(&CONDENSATION_UNSEEN, state.place, message)
@@ -557,7 +562,7 @@ mod tests {
     fn a_monitor_does_not_see_a_mixture_condensing() {
         let finding = filled("C4F7N 6 % + CO2 94 %", "0.70 MPa abs", "-35 degC").one("condensation-unseen");
         // The pressure is held against the virial gas here, so that it is 2.2 % low.
-        assert!(finding.message.contains("34.9 %") && finding.message.contains("2.17 %"), "{}", finding.message);
+        assert!(finding.message.contains("34.9 %") && finding.message.contains("2.2 %"), "{}", finding.message);
         cold("-45 degC").silent("condensation-unseen");
     }
 

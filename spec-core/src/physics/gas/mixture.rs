@@ -20,8 +20,8 @@ const COLDEST: f64 = 150.0;
 const HOTTEST: f64 = 345.0;
 /// The highest filling that the mixture model is told of, Pa absolute at 20 degC (range of the pure gases' fits).
 const HIGHEST_FILLING: f64 = 1.6e6;
-/// Step in which the dew point is looked for, K.
-const STEP: f64 = 2.0;
+/// Step in which the dew point is looked for, K: below it a filling stays condensed, so that a wide step loses nothing.
+const STEP: f64 = 8.0;
 
 /// A mixture below its dew point, at constant volume.
 #[derive(Clone, Debug, PartialEq)]
@@ -146,7 +146,7 @@ impl GasMixture {
             let low = high - STEP;
             if self.condenses(molar_volume, low) {
                 let (mut cold, mut warm) = (low, high);
-                while warm - cold > 1e-6 {
+                while warm - cold > 1e-5 {
                     let middle = 0.5 * (cold + warm);
                     if self.condenses(molar_volume, middle) { cold = middle } else { warm = middle }
                 }
@@ -258,6 +258,12 @@ impl GasMixture {
     /// Whether its dew point is an estimate only: one of its gases has no equation of state of its own.
     pub fn is_estimate(&self) -> bool {
         self.gases.iter().any(|gas| gas.pure.is_none())
+    }
+
+    /// The triple point of the gas of the highest critical temperature, where it is known: below it that gas comes down as frost.
+    pub fn triple_of_heaviest(&self) -> Option<ThermodynamicTemperature> {
+        let heavy = self.gases.iter().max_by(|a, b| a.cubic.0.total_cmp(&b.cubic.0))?;
+        heavy.pure.as_ref().map(|pure| ThermodynamicTemperature::from_si(pure.triple_temperature))
     }
 
     /// The formulas of its gases.

@@ -194,7 +194,10 @@ impl PureGas {
 
     /// Pressure of saturation over the liquid, ln(p/pc) = (Tc/T) sum a (1 - T/Tc)^e, and over the frost below the triple point.
     fn saturation(&self, t: f64) -> f64 {
-        let series = |terms: &[(f64, f64)], x: f64| terms.iter().map(|(a, e)| a * x.max(0.0).powf(*e)).sum::<f64>();
+        let series = |terms: &[(f64, f64)], x: f64| {
+            let (x, root) = (x.max(0.0), x.max(0.0).sqrt());
+            terms.iter().map(|(a, e)| a * power(x, root, *e)).sum::<f64>()
+        };
         match &self.frost {
             Some(frost) if t < self.triple_temperature => {
                 let exponent = match frost {
@@ -229,6 +232,12 @@ impl PureGas {
         let fault = GasFault::FillingTooHigh { bound: self.highest_filling };
         molar_density(p, t, self.virial(t)).map(|rho| rho * self.molar_mass).ok_or(fault)
     }
+}
+
+/// x^e, by multiplication where e is a whole or half number, as most exponents of vapour-pressure equations are.
+fn power(x: f64, root: f64, e: f64) -> f64 {
+    let halves = 2.0 * e;
+    if halves.fract() == 0.0 { root.powi(halves as i32) } else { x.powf(e) }
 }
 
 /// The root of a falling function between two temperatures, to 1e-9 K: false position with halved weights (Illinois).
