@@ -3,5 +3,6 @@
 pub mod dc_component;
 pub mod first_pole;
 pub mod gas;
+pub mod infeed;
 pub mod short_circuit;
 pub mod trv;

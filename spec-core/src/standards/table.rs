@@ -12,14 +12,15 @@ mod tests {
     /// Every row of every table has a source and a status, and none is lost in reading.
     #[test]
     fn every_row_has_a_source() {
-        for (name, text, read) in [
+        let tables = [
             ("voltages", include_str!("../../data/rated_voltages.csv"), super::super::rated_voltages().len()),
             ("insulation", include_str!("../../data/insulation_levels.csv"), super::super::insulation_levels().len()),
             ("trv", include_str!("../../data/trv_duties.csv"), super::super::trv_duties::all().len()),
             ("currents", include_str!("../../data/preferred_currents.csv"), super::super::currents::all().len()),
             ("time constants", include_str!("../../data/time_constants.csv"), super::super::time_constants::all().len()),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
-        ] {
+        ];
+        for (name, text, read) in tables.into_iter().chain(super::super::short_circuit::lengths()) {
             let mut reader = csv::Reader::from_reader(text.as_bytes());
             let head = reader.headers().expect(name).clone();
             let column = |wanted: &str| head.iter().position(|h| h == wanted).expect(name);
