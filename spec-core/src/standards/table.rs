@@ -20,7 +20,13 @@ mod tests {
             ("time constants", include_str!("../../data/time_constants.csv"), super::super::time_constants::all().len()),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
         ];
-        for (name, text, read) in tables.into_iter().chain(super::super::short_circuit::lengths()) {
+        for (name, text, read) in tables
+            .into_iter()
+            .chain(super::super::short_circuit::lengths())
+            .chain(super::super::line_side::lengths())
+            .chain(super::super::capacitive::lengths())
+            .chain(super::super::surroundings::lengths())
+        {
             let mut reader = csv::Reader::from_reader(text.as_bytes());
             let head = reader.headers().expect(name).clone();
             let column = |wanted: &str| head.iter().position(|h| h == wanted).expect(name);
