@@ -2,7 +2,7 @@
 
 use std::f64::consts::{PI, SQRT_2};
 
-use crate::quantity::{ElectricCurrent, ElectricPotential, ElectricalResistance, Frequency, Physical, Time};
+use crate::quantity::{ElectricCurrent, ElectricPotential, ElectricalResistance, Frequency, Time};
 
 /// The first peak of the initial TRV over the current broken, fi = sqrt2 w Zb ti: an impedance, ohm (0.046 kV/kA is 46 mohm).
 ///
@@ -20,6 +20,7 @@ pub fn initial_peak(factor: ElectricalResistance, breaking: ElectricCurrent) -> 
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::quantity::Physical;
 
     /// Own calculation: 260 ohm and 0.6 us at 50 Hz give 0.0693 kV/kA, so 40 kA give 2.77 kV.
     #[test]

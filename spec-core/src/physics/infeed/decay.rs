@@ -3,8 +3,9 @@
 use crate::quantity::{ElectricCurrent, Physical, Power, Time};
 use crate::standards::{AtTime, asynchronous_decay, synchronous_decay};
 
-/// Up to this IkG/IrG the current does not decay. IEC 60909-0, equation for mu.
-const FAR_FROM_GENERATOR: f64 = 2.0;
+/// Up to this current over its rated current a machine is far from the fault, and its current does not decay.
+/// IEC 60909-0, equation for mu.
+pub(super) const FAR_FROM_MACHINE: f64 = 2.0;
 
 /// mu of a synchronous machine: breaking over initial current after the least time delay `tmin`.
 ///
@@ -12,7 +13,7 @@ const FAR_FROM_GENERATOR: f64 = 2.0;
 /// is 1, after the last it stays. IEC 60909-0, equations for mu.
 pub fn synchronous_decay_factor(initial: ElectricCurrent, rated: ElectricCurrent, tmin: Time) -> f64 {
     let ratio = (initial / rated).value;
-    if ratio <= FAR_FROM_GENERATOR {
+    if ratio <= FAR_FROM_MACHINE {
         return 1.0;
     }
     at_time(synchronous_decay(), tmin, |row| row.a + row.b * (-row.exponent * ratio).exp())

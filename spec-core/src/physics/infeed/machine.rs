@@ -1,5 +1,7 @@
 //! Synchronous generators, power station units and asynchronous motors (IEC 60909-0).
 
+use num_complex::Complex64;
+
 use super::{Element, Impedance, Infeed, Machine, TwoWindingTransformer, ZeroSequence};
 use crate::quantity::{ElectricCurrent, ElectricPotential, ElectricalResistance, Physical, Power, Ratio};
 use crate::standards::{generator_r_over_x, motor_r_over_x};
@@ -84,9 +86,8 @@ impl SynchronousGenerator {
 
     fn corrected(&self, factor: f64) -> Infeed {
         let (initial, peak) = self.impedances();
-        let own = initial.scaled(factor);
-        let machine = Machine { rated: self.rated_current(), share: 1.0, own, power_a_pole_pair: None, meshed: false };
-        Infeed::of_source(own, peak.scaled(factor), self.zero, vec![machine])
+        let machine = Machine::alone(self.rated_current(), initial.scaled(factor), None);
+        Infeed::of_source(initial.scaled(factor), peak.scaled(factor), self.zero, vec![machine])
     }
 
     /// ZGK = KG (RG + jXd''), connected without a unit transformer to a network of a nominal voltage. Ohm at its terminals.
@@ -132,14 +133,7 @@ impl PowerStationUnit {
     pub fn infeed(&self, nominal: ElectricPotential, c_max: f64) -> Infeed {
         let factor = self.correction(nominal, c_max);
         let transformer = self.transformer.upwards_corrected(factor);
-        let mut unit = self.generator.corrected(factor).through(&transformer);
-        // A unit counts as one source: its own impedance is that of generator and transformer.
-        if let Some(own) = unit.positive() {
-            for machine in &mut unit.machines {
-                machine.own = own;
-            }
-        }
-        unit
+        self.generator.corrected(factor).through(&transformer)
     }
 
     /// The generator's part of a fault between it and the unit transformer: ZG cmax / (1 + xd'' sin phi), without on-load tap
@@ -193,14 +187,16 @@ impl AsynchronousMotors {
         let power = self.power_a_pole_pair.unwrap_or(self.rated_power);
         let ratio = self.r_over_x.or_else(|| motor_r_over_x(self.rated_voltage, power)).unwrap_or_default();
         let own = Impedance::of_magnitude(magnitude, ratio);
-        let decays = self.power_a_pole_pair.map(|power| Machine {
-            rated: self.rated_current(),
-            share: 1.0,
-            own,
-            power_a_pole_pair: Some(power),
-            meshed: false,
-        });
+        let decays = self.power_a_pole_pair.map(|power| Machine::alone(self.rated_current(), own, Some(power)));
         Infeed::of_source(own, own, ZeroSequence::Open, decays.into_iter().collect())
+    }
+}
+
+impl Machine {
+    /// At its own terminals.
+    fn alone(rated: ElectricCurrent, impedance: Impedance, power_a_pole_pair: Option<Power>) -> Self {
+        let own = Impedance::new(ElectricalResistance::default(), impedance.reactance());
+        Self { rated, share: Complex64::new(1.0, 0.0), own, power_a_pole_pair, meshed: false }
     }
 }
 

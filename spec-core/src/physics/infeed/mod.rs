@@ -15,13 +15,15 @@ pub use decay::{asynchronous_decay_factor, synchronous_decay_factor};
 pub use fault::{Fault, PeakMethod, steady_heat};
 pub use impedance::{Impedance, ZeroSequence};
 pub use machine::{
-    AsynchronousMotors, PowerStationUnit, SynchronousGenerator, TapChanger, generator_correction, unit_correction_off_load,
-    unit_correction_on_load,
+    AsynchronousMotors, PowerStationUnit, SynchronousGenerator, TapChanger, generator_correction,
+    unit_correction_off_load, unit_correction_on_load,
 };
 pub use network::{ConverterPlant, FeederStrength, FeederZero, NetworkFeeder, PassiveElement, series_reactor};
 pub use transformer::{
     Neutral, PairOfWindings, ThreeWindingTransformer, TwoWindingTransformer, Winding, transformer_correction,
 };
+
+use num_complex::Complex64;
 
 use crate::quantity::{ElectricCurrent, Physical, Power};
 
@@ -133,8 +135,8 @@ struct Machine {
     /// Its rated current, referred to the point.
     rated: ElectricCurrent,
     /// Its part of the current of the voltage sources at the point.
-    share: f64,
-    /// Its own impedance with its correction, referred to the point.
+    share: Complex64,
+    /// Its own reactance with its correction, without resistance and unit transformer, referred to the point.
     own: Impedance,
     /// Rated power a pole pair, of asynchronous motors.
     power_a_pole_pair: Option<Power>,
@@ -170,6 +172,11 @@ impl Infeed {
     /// Z1 at the point, correction factors included; none where there are converter plants only.
     pub fn positive(&self) -> Option<Impedance> {
         self.network.seen(View::INITIAL)
+    }
+
+    /// Z1 at the point as the peak current has it: with the fictitious resistance of generators, at a share of the frequency.
+    pub fn positive_for_peak(&self, share: f64) -> Option<Impedance> {
+        self.network.seen(View { peak: true, share })
     }
 
     /// Z0 at the point.
@@ -221,10 +228,14 @@ impl Infeed {
         let all = network.seen(View::INITIAL);
         let shared = |infeed: &Self| {
             let part = match (all, infeed.positive()) {
-                (Some(all), Some(own)) => (all.magnitude() / own.magnitude()).value,
-                _ => 0.0,
+                (Some(all), Some(own)) => all.ohms() / own.ohms(),
+                _ => Complex64::new(0.0, 0.0),
             };
-            infeed.machines.iter().map(move |machine| Machine { share: machine.share * part, ..*machine }).collect::<Vec<_>>()
+            infeed
+                .machines
+                .iter()
+                .map(move |machine| Machine { share: machine.share * part, ..*machine })
+                .collect::<Vec<_>>()
         };
         Self {
             machines: [shared(self), shared(other)].concat(),

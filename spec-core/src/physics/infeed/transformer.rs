@@ -163,12 +163,17 @@ pub struct PairOfWindings {
 }
 
 impl PairOfWindings {
-    /// K Z of the pair at a voltage, K by [`transformer_correction`].
-    fn corrected(&self, voltage: ElectricPotential, c_max: f64) -> Impedance {
-        let base: ElectricalResistance = voltage * voltage / self.power;
+    /// Resistance and reactance as shares of the base.
+    fn relative(&self) -> (f64, f64) {
         let resistance = (self.load_losses / self.power).value;
-        let reactance = relative_reactance(self.impedance_voltage.si(), resistance);
-        Impedance::new(base * resistance, base * reactance).scaled(transformer_correction(reactance, c_max))
+        (resistance, relative_reactance(self.impedance_voltage.si(), resistance))
+    }
+
+    /// Z of the pair at a voltage, times a correction factor.
+    fn impedance(&self, voltage: ElectricPotential, factor: f64) -> Impedance {
+        let base: ElectricalResistance = voltage * voltage / self.power;
+        let (resistance, reactance) = self.relative();
+        Impedance::new(base * resistance, base * reactance).scaled(factor)
     }
 }
 
@@ -189,12 +194,20 @@ impl ThreeWindingTransformer {
     /// Impedances of the three branches of the equivalent star, ohm at a voltage: ZA = (ZAB + ZAC - ZBC)/2, every pair corrected
     /// first. A branch may be negative. IEC 60909-0, clause on three-winding transformers.
     pub fn star(&self, voltage: ElectricPotential, c_max: f64) -> [Impedance; 3] {
-        star(&self.pairs, voltage, c_max)
+        self.star_of(&self.pairs, voltage, c_max)
     }
 
-    /// The zero-sequence impedances of the same star, neutrals left out.
+    /// The zero-sequence impedances of the same star, with the corrections of the positive sequence; neutrals left out.
     pub fn zero_star(&self, voltage: ElectricPotential, c_max: f64) -> [Impedance; 3] {
-        star(self.zero.as_ref().unwrap_or(&self.pairs), voltage, c_max)
+        self.star_of(self.zero.as_ref().unwrap_or(&self.pairs), voltage, c_max)
+    }
+
+    fn star_of(&self, pairs: &[PairOfWindings; 3], voltage: ElectricPotential, c_max: f64) -> [Impedance; 3] {
+        let factors = self.pairs.map(|pair| transformer_correction(pair.relative().1, c_max));
+        let ([ab, ac, bc], [k_ab, k_ac, k_bc]) = (pairs, factors);
+        let (ab, ac, bc) = (ab.impedance(voltage, k_ab), ac.impedance(voltage, k_ac), bc.impedance(voltage, k_bc));
+        let half = |a: Impedance, b: Impedance, c: Impedance| (a + b + c.scaled(-1.0)).scaled(0.5);
+        [half(ab, ac, bc), half(ab, bc, ac), half(ac, bc, ab)]
     }
 
     /// As seen from one winding: the sources at each of the others, in the order of the windings, or nothing there.
@@ -258,12 +271,6 @@ impl Side {
             },
         }
     }
-}
-
-fn star(pairs: &[PairOfWindings; 3], voltage: ElectricPotential, c_max: f64) -> [Impedance; 3] {
-    let [ab, ac, bc] = pairs.map(|pair| pair.corrected(voltage, c_max));
-    let half = |a: Impedance, b: Impedance, c: Impedance| (a + b + c.scaled(-1.0)).scaled(0.5);
-    [half(ab, ac, bc), half(ab, bc, ac), half(ac, bc, ab)]
 }
 
 fn seen(own: &Side, others: [(&Side, Option<&Infeed>); 2]) -> Infeed {
