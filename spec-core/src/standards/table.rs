@@ -12,7 +12,7 @@ mod tests {
     /// Every row of every table has a source and a status, and none is lost in reading.
     #[test]
     fn every_row_has_a_source() {
-        for (name, text, read) in [
+        let tables = [
             ("voltages", include_str!("../../data/rated_voltages.csv"), super::super::rated_voltages().len()),
             ("insulation", include_str!("../../data/insulation_levels.csv"), super::super::insulation_levels().len()),
             ("trv", include_str!("../../data/trv_duties.csv"), super::super::trv_duties::all().len()),
@@ -24,7 +24,14 @@ mod tests {
             ),
             ("gas law", include_str!("../../data/gas_law.csv"), super::super::gas_law::all().len()),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
-        ] {
+        ];
+        for (name, text, read) in tables
+            .into_iter()
+            .chain(super::super::short_circuit::lengths())
+            .chain(super::super::line_side::lengths())
+            .chain(super::super::capacitive::lengths())
+            .chain(super::super::surroundings::lengths())
+        {
             let mut reader = csv::Reader::from_reader(text.as_bytes());
             let head = reader.headers().expect(name).clone();
             let column = |wanted: &str| head.iter().position(|h| h == wanted).expect(name);
