@@ -3,8 +3,8 @@
 use uom::si::f64 as si;
 
 use super::{
-    CapacitancePerLength, ChoppingNumber, Dimension, Frequency, ImpedancePerLength, JouleIntegral, LengthPerVoltage, Unit,
-    VoltageRate, VoltageRatePerCurrent, canonical, significant,
+    CapacitancePerLength, ChoppingNumber, Dimension, Frequency, ImpedancePerLength, JouleIntegral, LengthPerVoltage,
+    Unit, VoltageRate, VoltageRatePerCurrent, canonical, significant,
 };
 
 /// A number with its unit, as an author wrote it.

@@ -167,11 +167,11 @@ fn unseen(gas: &GasDuty, state: &LevelState, lowest: ThermodynamicTemperature, f
     let Some(alone) = state.density.as_ref().ok().and_then(|d| mixture.pressure(d.value, lowest).ok()) else { return };
     let low = 1.0 - liquid.pressure.si() / alone.si();
     let message = format!(
-        "at {} {} of the heaviest gas of {} is liquid, while the pressure is only {} below that of the gas: no monitor sees it",
+        "at {} {} of the heaviest gas of {} is liquid, while the pressure is only {} % below that of the gas: no monitor sees it",
         celsius(lowest),
         percent(liquid.condensed_share),
         gas.name,
-        format!("{} %", rounded(low.max(0.0) * 100.0, 1))
+        rounded(low.max(0.0) * 100.0, 1)
     );
     findings
         .add(&CONDENSATION_UNSEEN, state.place, message)

@@ -27,15 +27,18 @@ pub use earthing::{first_pole_factors, out_of_phase_factor};
 pub use gas_law::{CountsFrom, ForbiddenGases, GasLaw, gas_law, is_fluorinated};
 pub use insulation::{InsulationLevel, insulation_levels};
 pub use line_side::{
-    InitialTrvRow, LineSideRow, ShortLineDuty, ShortLineRow, initial_trv_row, line_side, short_line_faults_apply, short_line_row,
+    InitialTrvRow, LineSideRow, ShortLineDuty, ShortLineRow, initial_trv_row, line_side, short_line_faults_apply,
+    short_line_row,
 };
 pub use making::{MakingCase, making_factor};
 pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE};
 pub(crate) use short_circuit::{AtTime, asynchronous_decay, synchronous_decay};
-pub use short_circuit::{VoltageFactor, equivalent_frequency_share, generator_r_over_x, motor_r_over_x, voltage_factor};
+pub use short_circuit::{
+    VoltageFactor, equivalent_frequency_share, generator_r_over_x, motor_r_over_x, voltage_factor,
+};
 pub use surroundings::{
-    PollutionClass, TemperatureLimit, WithstandVoltage, altitude_exponent, pollution_class, pollution_classes, temperature_limit,
-    temperature_limits,
+    PollutionClass, TemperatureLimit, WithstandVoltage, altitude_exponent, pollution_class, pollution_classes,
+    temperature_limit, temperature_limits,
 };
 pub use time_constants::{TimeConstantCase, TimeConstants};
 pub use trv_duties::{Duty, DutyRow, SystemClass, VoltageRange, duty_row, s1_time};
