@@ -118,7 +118,9 @@ impl LanguageServer for Backend {
         let document = params.text_document;
         let changes = params.content_changes.into_iter().map(protocol::change).collect();
         if let Err(refused) = self.documents.change(document.uri.as_str(), document.version, changes) {
-            self.client.log_message(lsp::MessageType::WARNING, refused).await;
+            // Beside, since a handler that waits for the client can wait for ever when many messages queue.
+            let client = self.client.clone();
+            tokio::spawn(async move { client.log_message(lsp::MessageType::WARNING, refused).await });
         }
     }
 
