@@ -88,7 +88,7 @@ impl Client {
                 match line.trim_end() {
                     "" => break,
                     line => {
-                        length = line.strip_prefix("Content-Length: ").expect("a length").parse().expect("a number")
+                        length = line.strip_prefix("Content-Length: ").expect("a length").parse().expect("a number");
                     }
                 }
             }

@@ -161,9 +161,8 @@ impl Documents {
                     open.checked = Some(checked.clone());
                     open.told = false;
                 }
-                Ok(_) => {}
                 Err(_) if open.stamp == stamp => open.failed = Some(stamp),
-                Err(_) => {}
+                _ => {}
             }
         }
         drop(state);
