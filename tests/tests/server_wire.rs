@@ -444,6 +444,24 @@ async fn over_files() {
 }
 
 #[tokio::test(flavor = "multi_thread")]
+async fn files_that_change_outside_of_the_editor() {
+    let folder = tempfile::tempdir().expect("a folder");
+    let path = folder.path().canonicalize().expect("a path");
+    let uri = format!("file://{}/bay.cbspec", path.display());
+    let mut client = Client::start(None);
+    client.begin(json!({"workspace": {"didChangeWatchedFiles": {"dynamicRegistration": true}}})).await;
+    let asked = client.notice().await;
+    assert_eq!(asked["method"], "client/registerCapability");
+    client.send(&json!({"jsonrpc": "2.0", "id": asked["id"], "result": null})).await;
+    client.open(&uri, "cbspec 1\nuse \"family.cbspec\"\n").await;
+    assert_eq!(rules(&client.diagnostics(&uri, Some(1)).await), ["use-unreadable"]);
+    std::fs::write(path.join("family.cbspec"), "cbspec 1\nfamily Big\n").expect("written");
+    client.tell("workspace/didChangeWatchedFiles", json!({"changes": []})).await;
+    assert!(client.diagnostics(&uri, Some(1)).await.is_empty());
+    assert_eq!(client.leave().await, 0);
+}
+
+#[tokio::test(flavor = "multi_thread")]
 async fn nothing_is_read_outside_of_the_workspace() {
     let folder = tempfile::tempdir().expect("a folder");
     let path = folder.path().canonicalize().expect("a path");
@@ -480,7 +498,10 @@ async fn every_feature_answers() {
     assert!(hover["result"]["contents"]["value"].as_str().is_some_and(|text| text.starts_with("**rated voltage**")));
     let completion = client.ask("textDocument/completion", at(11, 4)).await;
     let items = completion["result"].as_array().expect("a list").clone();
-    assert!(items.iter().any(|item| item["label"] == "opening time" && item["documentation"]["kind"] == "markdown"));
+    let item = items.iter().find(|item| item["label"] == "opening time").expect("a label that is missing").clone();
+    assert!(item["documentation"].is_null());
+    let item = client.ask("completionItem/resolve", item).await;
+    assert_eq!(item["result"]["documentation"]["kind"], "markdown", "{item}");
     let definition = client.ask("textDocument/definition", at(6, 22)).await;
     assert_eq!(definition["result"]["range"]["start"], json!({"line": 2, "character": 7}));
     let mut params = at(2, 8);

@@ -54,7 +54,7 @@ fn written_out<'a>(assessment: &Assessment, file: FileId, within: Span) -> Optio
     let chosen = hints(assessment, file, Span::new(value.span.end, value.span.end));
     // Where several breakers take the line over and chose differently, no one value is right.
     let [hint] = chosen.as_slice() else { return None };
-    let text = hint.text.split(" in ").next().unwrap_or(&hint.text).to_owned();
+    let text = hint.value.clone();
     let title = format!("write {text}, as the duty asks");
     Some(Action { title: title.clone(), finding: None, preferred: false, edit: Edit { title, place: value, text } })
 }

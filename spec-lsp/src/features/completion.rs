@@ -20,14 +20,32 @@ pub struct Proposal {
     pub kind: ProposalKind,
     /// A few words beside it.
     pub detail: String,
-    /// What there is to say about it.
-    pub documentation: Text,
+    /// What more there is to say about, once somebody asks.
+    pub subject: Option<Subject>,
     /// What it puts in.
     pub insert: String,
     /// The same with places to fill in, where there are any: `${1:text}`.
     pub snippet: Option<String>,
     /// What it replaces.
     pub replaces: Span,
+}
+
+/// What a proposal is about. Its text is made when it is asked for: most proposals are never looked at.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Subject {
+    /// A particular of a kind of sheet, by its label.
+    Particular(SheetKind, &'static str),
+    /// A rule.
+    Rule(&'static str),
+}
+
+/// What there is to say about the particular `label` of a sheet, or about the rule `label` where there is no sheet.
+pub fn documentation(sheet: Option<SheetKind>, label: &str) -> Option<Text> {
+    if let Some(sheet) = sheet {
+        return particular_of(sheet, label).map(of_particular);
+    }
+    let rule = rules::standard().into_iter().find(|rule| rule.name == label)?;
+    Some(Text::new().sentence(rule.title).sentence(rule.explanation))
 }
 
 /// What a proposal is.
@@ -190,7 +208,7 @@ impl At<'_> {
                 all.sort_by_key(|rule| !found(rule.name));
                 all.into_iter()
                     .map(|rule| Proposal {
-                        documentation: Text::new().sentence(rule.title).sentence(rule.explanation),
+                        subject: Some(Subject::Rule(rule.name)),
                         ..plain(rule.name, ProposalKind::Rule, rule.kind.word(), replaces)
                     })
                     .collect()
@@ -229,7 +247,7 @@ impl At<'_> {
         proposals.into_iter().map(|(_, proposal)| proposal).collect()
     }
 
-    fn label(&self, sheet: &Sheet, particular: &Particular, replaces: Span) -> Proposal {
+    fn label(&self, sheet: &Sheet, particular: &'static Particular, replaces: Span) -> Proposal {
         let insert = if self.after.contains(':') {
             particular.label.to_owned()
         } else {
@@ -251,7 +269,7 @@ impl At<'_> {
             symbols => format!("{}: {}", symbols.join(", "), written(particular)),
         };
         Proposal {
-            documentation: of_particular(particular),
+            subject: Some(Subject::Particular(sheet.kind, particular.label)),
             insert,
             ..plain(particular.label, ProposalKind::Label, &detail, replaces)
         }
@@ -377,7 +395,7 @@ impl At<'_> {
     }
 }
 
-const CLASSES: [&str; 10] = ["C1", "C2", "E1", "E2", "M1", "M2", "S1", "S2", "C0", "E0"];
+const CLASSES: [&str; 8] = ["C1", "C2", "E1", "E2", "M1", "M2", "S1", "S2"];
 
 const SEQUENCES: [(&str, &str); 3] = [
     ("O - 0.3 s - CO - 3 min - CO", "O - ${1:0.3 s} - CO - ${2:3 min} - CO"),
@@ -438,7 +456,7 @@ fn plain(text: &str, kind: ProposalKind, detail: &str, replaces: Span) -> Propos
         label: text.to_owned(),
         kind,
         detail: detail.to_owned(),
-        documentation: Text::new(),
+        subject: None,
         insert: text.to_owned(),
         snippet: None,
         replaces,
@@ -545,6 +563,21 @@ mod tests {
         let (assessment, _) = at_cursor("|");
         assert_eq!(text_of(&assessment, Span::new(0, 0)), "");
         assert!(labels(&(file + "breaker |")).is_empty(), "a name is the author's");
+    }
+
+    #[test]
+    fn every_subject_has_a_text() {
+        for text in [BAY.to_owned() + "    |", BAY.to_owned() + "deviation from |"] {
+            for proposal in at(&text) {
+                let text = match proposal.subject {
+                    Some(Subject::Particular(sheet, label)) => documentation(Some(sheet), label),
+                    Some(Subject::Rule(name)) => documentation(None, name),
+                    None => continue,
+                };
+                assert!(text.is_some_and(|text| !text.plain().is_empty()), "{}", proposal.label);
+            }
+        }
+        assert!(documentation(None, "no such rule").is_none());
     }
 
     #[test]

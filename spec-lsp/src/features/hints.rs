@@ -12,6 +12,8 @@ pub struct Hint {
     pub at: u32,
     /// What it says.
     pub text: String,
+    /// The value that was chosen, as an author would write it.
+    pub value: String,
     /// How that came about.
     pub working: String,
 }
@@ -41,9 +43,9 @@ pub fn hints(assessment: &Assessment, file: FileId, within: Span) -> Vec<Hint> {
             let own = sheet.file() == file
                 && sheet.heading.span.start <= statement.value.span.start
                 && statement.value.span.start <= sheet.end.span.end;
-            let shown = quantity.shown();
-            let text = if own { shown } else { format!("{shown} in {}", sheet.name) };
-            let hint = Hint { at: statement.value.span.end, text, working: working.clone() };
+            let value = quantity.shown();
+            let text = if own { value.clone() } else { format!("{value} in {}", sheet.name) };
+            let hint = Hint { at: statement.value.span.end, text, value, working: working.clone() };
             if !hints.contains(&hint) {
                 hints.push(hint);
             }

@@ -105,6 +105,14 @@ impl LanguageServer for Backend {
         })
     }
 
+    async fn initialized(&self, _: lsp::InitializedParams) {
+        if self.abilities.get().is_some_and(|abilities| abilities.watches) {
+            let client = self.client.clone();
+            // A client that refuses tells of saved documents all the same.
+            tokio::spawn(async move { drop(client.register_capability(protocol::watch()).await) });
+        }
+    }
+
     async fn shutdown(&self) -> Result<()> {
         Ok(())
     }
@@ -145,6 +153,10 @@ impl LanguageServer for Backend {
         let at = params.text_document_position;
         let items = self.ask(&at.text_document.uri, move |edge| edge.completion(at.position)).await?;
         Ok(items.flatten().map(lsp::CompletionResponse::Array))
+    }
+
+    async fn completion_resolve(&self, item: lsp::CompletionItem) -> Result<lsp::CompletionItem> {
+        Ok(protocol::resolved(item, self.abilities.get().copied().unwrap_or_default()))
     }
 
     async fn code_action(&self, params: lsp::CodeActionParams) -> Result<Option<lsp::CodeActionResponse>> {

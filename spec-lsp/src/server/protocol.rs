@@ -2,6 +2,7 @@
 
 use std::collections::HashMap;
 
+use firstpole_core::particular::SheetKind;
 use firstpole_core::{Edit, FileId, Place, Span};
 use lsp_types as lsp;
 use serde_json::{Value, json};
@@ -10,7 +11,7 @@ use super::checker::{Checked, OWN};
 use super::documents::Change;
 use super::positions::{Encoding, Position, View};
 use crate::features::actions::Action;
-use crate::features::completion::{Proposal, ProposalKind};
+use crate::features::completion::{Proposal, ProposalKind, Subject};
 use crate::features::diagnostics::{self, Severity};
 use crate::features::hover::Hover;
 use crate::features::symbols::Symbol;
@@ -36,6 +37,8 @@ pub struct Abilities {
     pub nested_symbols: bool,
     /// Whether it takes code actions that are more than commands.
     pub literal_actions: bool,
+    /// Whether it watches files for the server.
+    pub watches: bool,
 }
 
 impl Abilities {
@@ -63,6 +66,12 @@ impl Abilities {
             literal_actions: text
                 .and_then(|text| text.code_action.as_ref())
                 .is_some_and(|actions| actions.code_action_literal_support.is_some()),
+            watches: client
+                .workspace
+                .as_ref()
+                .and_then(|workspace| workspace.did_change_watched_files.as_ref())
+                .and_then(|watched| watched.dynamic_registration)
+                .unwrap_or(false),
         }
     }
 }
@@ -83,6 +92,7 @@ pub fn capabilities(abilities: Abilities) -> lsp::ServerCapabilities {
         hover_provider: Some(lsp::HoverProviderCapability::Simple(true)),
         completion_provider: Some(lsp::CompletionOptions {
             trigger_characters: Some(vec![":".to_owned(), " ".to_owned()]),
+            resolve_provider: Some(true),
             ..lsp::CompletionOptions::default()
         }),
         definition_provider: Some(lsp::OneOf::Left(true)),
@@ -114,6 +124,15 @@ pub fn capabilities(abilities: Abilities) -> lsp::ServerCapabilities {
     }
 }
 
+/// What the client is asked to do once it is ready: to watch the specifications, which also change outside of it.
+pub fn watch() -> Vec<lsp::Registration> {
+    vec![lsp::Registration {
+        id: "watch-specifications".to_owned(),
+        method: "workspace/didChangeWatchedFiles".to_owned(),
+        register_options: Some(json!({ "watchers": [{ "globPattern": "**/*.cbspec" }] })),
+    }]
+}
+
 const fn token_type(kind: TokenKind) -> lsp::SemanticTokenType {
     match kind {
         TokenKind::Keyword => lsp::SemanticTokenType::KEYWORD,
@@ -124,6 +143,26 @@ const fn token_type(kind: TokenKind) -> lsp::SemanticTokenType {
         TokenKind::Unit => lsp::SemanticTokenType::TYPE,
         TokenKind::Text => lsp::SemanticTokenType::STRING,
         TokenKind::Comment => lsp::SemanticTokenType::COMMENT,
+    }
+}
+
+/// A proposal with its documentation, as far as there is one.
+pub fn resolved(mut item: lsp::CompletionItem, abilities: Abilities) -> lsp::CompletionItem {
+    let text = item.data.as_ref().and_then(|data| {
+        let sheet = data.get("sheet").and_then(Value::as_str).and_then(SheetKind::read);
+        completion::documentation(sheet, data.get("label").and_then(Value::as_str)?)
+    });
+    item.documentation =
+        text.map(|text| lsp::Documentation::MarkupContent(markup(&text, abilities.completion_markdown)));
+    item
+}
+
+/// The text in the form that the client shows.
+fn markup(text: &Text, markdown: bool) -> lsp::MarkupContent {
+    if markdown {
+        lsp::MarkupContent { kind: lsp::MarkupKind::Markdown, value: text.markdown() }
+    } else {
+        lsp::MarkupContent { kind: lsp::MarkupKind::PlainText, value: text.plain() }
     }
 }
 
@@ -229,19 +268,10 @@ impl Edge<'_> {
         Some(json!({ "title": edit.title, "uri": uri, "range": range, "newText": edit.text }))
     }
 
-    /// The text in the form that the client shows.
-    fn markup(text: &Text, markdown: bool) -> lsp::MarkupContent {
-        if markdown {
-            lsp::MarkupContent { kind: lsp::MarkupKind::Markdown, value: text.markdown() }
-        } else {
-            lsp::MarkupContent { kind: lsp::MarkupKind::PlainText, value: text.plain() }
-        }
-    }
-
     /// Answers a hover.
     pub fn hover(&self, position: lsp::Position) -> Option<lsp::Hover> {
         let Hover { span, text } = hover::hover(&self.checked.assessment, OWN, self.offset(position)?)?;
-        let markup = Self::markup(&text, self.abilities.hover_markdown);
+        let markup = markup(&text, self.abilities.hover_markdown);
         Some(lsp::Hover { contents: lsp::HoverContents::Markup(markup), range: self.own(span) })
     }
 
@@ -255,8 +285,9 @@ impl Edge<'_> {
         let range = self.own(proposal.replaces)?;
         let snippet = proposal.snippet.filter(|_| self.abilities.snippets);
         let format = if snippet.is_some() { lsp::InsertTextFormat::SNIPPET } else { lsp::InsertTextFormat::PLAIN_TEXT };
-        let documentation = (proposal.documentation != Text::new()).then(|| {
-            lsp::Documentation::MarkupContent(Self::markup(&proposal.documentation, self.abilities.completion_markdown))
+        let data = proposal.subject.map(|subject| match subject {
+            Subject::Particular(sheet, label) => json!({ "sheet": sheet.word(), "label": label }),
+            Subject::Rule(name) => json!({ "label": name }),
         });
         let new_text = snippet.unwrap_or(proposal.insert);
         Some(lsp::CompletionItem {
@@ -271,7 +302,7 @@ impl Edge<'_> {
                 ProposalKind::Rule => lsp::CompletionItemKind::CONSTANT,
             }),
             detail: (!proposal.detail.is_empty()).then_some(proposal.detail),
-            documentation,
+            data,
             // Clients sort by the label where nothing else is said.
             sort_text: Some(format!("{at:04}")),
             insert_text_format: Some(format),
@@ -280,7 +311,7 @@ impl Edge<'_> {
         })
     }
 
-    /// Answers a request for code actions; `asked` are the diagnostics that the client shows there.
+    /// Answers a request for code actions, of the kinds that it asks for.
     pub fn actions(&self, range: lsp::Range, only: Option<&[lsp::CodeActionKind]>) -> Option<lsp::CodeActionResponse> {
         let actions = actions::actions(&self.checked.assessment, OWN, self.span(range)?);
         let wanted = |kind: &lsp::CodeActionKind| {
