@@ -1,5 +1,7 @@
 //! Who may know whom inside the language server.
 
+#![allow(clippy::expect_used, reason = "a test fails by panicking")]
+
 use std::path::Path;
 
 /// The code of a file, tests and all, without the lines of its comments.

@@ -1,5 +1,7 @@
 //! The built program as a language server, over real pipes: that it speaks, ends by the protocol, and ends when its client does.
 
+#![allow(clippy::expect_used, reason = "a test fails by panicking")]
+
 use std::io::{BufRead, BufReader, Write};
 use std::process::{Child, Command, Stdio};
 

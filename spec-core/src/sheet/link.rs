@@ -201,13 +201,8 @@ fn cut_circles(set: &mut Set, findings: &mut Findings) {
             if next == Some(id) && seen.iter().max() == Some(&id) {
                 if let Some(sheet) = set.sheets.get_mut(at) {
                     sheet.targets.retain(|(w, _)| *w != word);
-                    let place = sheet
-                        .links
-                        .iter()
-                        .find(|(link, _)| link.word == word)
-                        .map_or(sheet.heading, |(_, place)| *place);
-                    let message =
-                        format!("{} comes back to itself through {word}; this link is left out", sheet.title());
+                    let place = sheet.links.iter().find(|(link, _)| link.word == word).map_or(sheet.heading, |(_, place)| *place);
+                    let message = format!("{} comes back to itself through {word}; this link is left out", sheet.title());
                     findings.add(&rules::CIRCLE, place, message).label("closes the circle");
                 }
             }
@@ -239,11 +234,7 @@ fn defaults(set: &mut Set, findings: &mut Findings) {
                     let finding = findings.add(&rules::LINK_NEEDED, sheet.heading, message);
                     finding.label(format!("{word} ... is missing"));
                     for other in [first, second] {
-                        finding.edit(
-                            format!("write {word} {}", other.name),
-                            sheet.heading.end(),
-                            format!(" {word} {}", other.name),
-                        );
+                        finding.edit(format!("write {word} {}", other.name), sheet.heading.end(), format!(" {word} {}", other.name));
                     }
                 }
                 (None, None, _) => {}

@@ -261,12 +261,7 @@ fn nearest_unit(text: &str, kind: &QuantityKind) -> Option<&'static Unit> {
 fn unit_missing(reader: &mut Reader<'_>, amount: &Amount, kind: &QuantityKind) {
     let place = reader.at(amount.number.span);
     let number = amount.number.span.of(reader.text).to_owned();
-    let message = format!(
-        "{} {number} has no unit; {} is written with {}",
-        reader.particular.label,
-        word(kind),
-        kind.units.join(" or ")
-    );
+    let message = format!("{} {number} has no unit; {} is written with {}", reader.particular.label, word(kind), kind.units.join(" or "));
     let finding = reader.find(&rules::UNIT_MISSING, place, message);
     finding.label("unit is missing").stated(number.as_str());
     for unit in kind.units {
@@ -303,12 +298,7 @@ fn check_qualifier(reader: &mut Reader<'_>, reading: &QuantityReading, kind: &Qu
     let unit = reading.measure.unit.name;
     let number = reading.measure.number;
     let converted = crate::quantity::significant(number * factor, 3);
-    finding.working(format!(
-        "{} {unit} {} = {converted} {unit} {} for a sine wave",
-        rounded(number, 3),
-        other.word(),
-        meant.word()
-    ));
+    finding.working(format!("{} {unit} {} = {converted} {unit} {} for a sine wave", rounded(number, 3), other.word(), meant.word()));
     finding.edit(
         format!("write {converted} {unit} {}", meant.word()),
         place,
@@ -346,10 +336,7 @@ pub(super) fn comma_at(reader: &mut Reader<'_>, number: Number) {
     let readings = readings_of(&text);
     let message = match readings.as_slice() {
         [one] => format!("{text} is written with a comma; {one} is meant, if it is a decimal comma"),
-        _ => format!(
-            "{text} can be read as {}: a number is written with a decimal point and no comma",
-            readings.join(" or as ")
-        ),
+        _ => format!("{text} can be read as {}: a number is written with a decimal point and no comma", readings.join(" or as ")),
     };
     let finding = reader.find(&rules::DECIMAL_COMMA, place, message);
     finding.label("comma in a number").stated(text.as_str());
@@ -370,8 +357,7 @@ fn readings_of(text: &str) -> Vec<String> {
     let (before_point, _) = text.split_once('.').unwrap_or((text, ""));
     let mut groups = before_point.split(',');
     let first = groups.next().unwrap_or("").trim_start_matches(['-', '+', '−']);
-    let thousands =
-        before_point.contains(',') && (1..=3).contains(&first.len()) && groups.all(|group| group.len() == 3);
+    let thousands = before_point.contains(',') && (1..=3).contains(&first.len()) && groups.all(|group| group.len() == 3);
     if thousands && !first.starts_with('0') {
         readings.push(text.replace(',', ""));
     }

@@ -82,17 +82,7 @@ impl<'a> Reader<'a> {
     /// Whether the text only says that a value will come.
     fn is_placeholder(&self) -> bool {
         const WORDS: [&str; 12] = [
-            "later",
-            "tbc",
-            "tba",
-            "tbd",
-            "?",
-            "??",
-            "...",
-            "to be confirmed",
-            "to be advised",
-            "to be agreed",
-            "to be decided",
+            "later", "tbc", "tba", "tbd", "?", "??", "...", "to be confirmed", "to be advised", "to be agreed", "to be decided",
             "to be determined",
         ];
         // folded() reads a hyphen as a blank, so that a lone dash becomes nothing.
@@ -190,9 +180,7 @@ impl<'a> Reader<'a> {
     }
 
     fn classes(&mut self) -> Reading {
-        let Some(items) = self.accept(value::list(self.text), "classes such as C2, M2") else {
-            return Reading::Unknown;
-        };
+        let Some(items) = self.accept(value::list(self.text), "classes such as C2, M2") else { return Reading::Unknown };
         let mut classes = Vec::new();
         for item in items {
             let place = self.at(item.span);
@@ -261,9 +249,7 @@ impl<'a> Reader<'a> {
         if matches!(self.particular.kind, Kind::Gases) && folded(self.text) == "fluorinated gases" {
             return Reading::Words(vec!["fluorinated gases"]);
         }
-        let Some(gases) =
-            self.accept(value::gases(self.text), "a gas by its formula, such as SF6 or CO2 70 % + O2 30 %")
-        else {
+        let Some(gases) = self.accept(value::gases(self.text), "a gas by its formula, such as SF6 or CO2 70 % + O2 30 %") else {
             return Reading::Unknown;
         };
         let mut mixtures = Vec::new();

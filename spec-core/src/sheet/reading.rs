@@ -155,10 +155,7 @@ impl QuantityReading {
     pub fn bounds(&self, limit: Limit, by_label: Option<Limit>) -> bool {
         self.is_range()
             || by_label == Some(limit)
-            || matches!(
-                (self.bound, limit),
-                (Some(Bound::Least), Limit::Least) | (Some(Bound::Greatest), Limit::Greatest)
-            )
+            || matches!((self.bound, limit), (Some(Bound::Least), Limit::Least) | (Some(Bound::Greatest), Limit::Greatest))
     }
 
     /// What it measures.
