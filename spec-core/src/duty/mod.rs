@@ -80,6 +80,8 @@ pub struct NamedFigure {
     pub unit: &'static str,
     /// The working.
     pub working: Option<String>,
+    /// Where the statements stand that it rests on, as far as they are known one by one.
+    pub places: Vec<crate::source::Place>,
 }
 
 impl Duty {
@@ -126,7 +128,13 @@ impl Duty {
         ];
         all.extend(self.trv.figures());
         all.extend(self.gas.figures());
-        all.extend(LATER.iter().map(|(key, unit)| NamedFigure { key, value: None, unit, working: None }));
+        all.extend(LATER.iter().map(|(key, unit)| NamedFigure {
+            key,
+            value: None,
+            unit,
+            working: None,
+            places: Vec::new(),
+        }));
         all
     }
 }
@@ -155,6 +163,7 @@ fn named<Q: Physical>(key: &'static str, unit: &'static str, figure: Option<&Fig
         value: figure.map(|figure| figure.value.si()),
         unit,
         working: figure.map(|figure| figure.working.to_string()),
+        places: figure.map(|figure| figure.places().collect()).unwrap_or_default(),
     }
 }
 
