@@ -10,6 +10,7 @@ use std::collections::BTreeMap;
 
 use firstpole_core::physics::gas::{GasFault, GasMixture, Phase, PureGas, pure};
 use firstpole_core::quantity::{MassDensity, Physical, Pressure, ThermodynamicTemperature};
+use firstpole_core::{Assessor, Sources};
 use firstpole_tests::root;
 use proptest::prelude::*;
 
@@ -273,6 +274,23 @@ proptest! {
         let filling = sf6.highest_filling(celsius(t)).expect("a filling");
         let dew = sf6.dew_point(sf6.density(filling, celsius(20.0)).expect("a density")).expect("a dew point");
         prop_assert!((dew.temperature.si() - 273.15 - t).abs() < 1e-6);
+    }
+
+    /// A level written as gauge and the same as absolute are one pressure, in every unit.
+    #[test]
+    fn gauge_and_absolute_go_round(tenths in 20u32..120, unit in 0usize..5) {
+        let (unit, factor) = [("MPa", 1e6), ("bar", 1e5), ("kPa", 1e3), ("psi", 6_894.757_293_168), ("kg/cm2", 98_066.5)][unit];
+        let gauge = f64::from(tenths) * 1e4;
+        let read = |text: String| {
+            let text = format!("cbspec 1\nbreaker B\n    rated filling pressure: {text}\n");
+            let assessment = Assessor::standard().assess(&Sources::of("x.cbspec", text.as_str()));
+            let quantity = assessment.set.sheets[0].statements[0].quantity().expect("a pressure").clone();
+            quantity.absolute().expect("a pressure").pressure.si()
+        };
+        let from_gauge = read(format!("{:.9} {unit} gauge", gauge / factor));
+        let from_absolute = read(format!("{:.9} {unit} abs", (gauge + 101_300.0) / factor));
+        // Nine decimals of the largest unit, and the eighth digit of its factor.
+        prop_assert!((from_gauge - from_absolute).abs() < 0.1, "{from_gauge} {from_absolute}");
     }
 
     /// The order in which the gases of a mixture are written does not matter, to the last bit.

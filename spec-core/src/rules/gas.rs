@@ -5,7 +5,7 @@ use crate::case::Case;
 use crate::duty::{Certainty, GasDuty, Level, LevelState, Medium, absolute, celsius, percent};
 use crate::finding::{Finding, FindingKind, Findings};
 use crate::particular::{Kind, Limit, Particular, Tail, breaker, site};
-use crate::physics::gas::{GasFault, Phase, sf6};
+use crate::physics::gas::{GasFault, GasMixture, Phase, sf6};
 use crate::quantity::{Physical, Pressure, ThermodynamicTemperature, rounded, significant};
 use crate::sheet::{QuantityReading, Stated, Statement};
 use crate::standards::{GAUGE_REFERENCE, REFERENCE_TEMPERATURE};
@@ -226,9 +226,30 @@ fn tell(case: &Case<'_>, gas: &GasDuty, finding: &mut Finding) {
         }
     }
     if finding.kind < FindingKind::Excess {
-        advice.push("another mixture or medium is the third way".to_owned());
+        let thinner = thinner_mixture(gas).map_or_else(String::new, |mixture| {
+            format!(
+                " ({mixture} to the same filling does not condense there; the ratings are then those with the mixture)"
+            )
+        });
+        advice.push(format!("another mixture or medium is the third way{thinner}"));
     }
     finding.advice(advice.join("; "));
+}
+
+/// The richest mixture of SF6 with nitrogen that takes the place of pure SF6 at the same filling without condensing, in steps of 5 %.
+fn thinner_mixture(gas: &GasDuty) -> Option<String> {
+    let (lowest, filling) = (gas.lowest.as_ref()?.value.si(), gas.level(Level::Filling)?);
+    if gas.name != "SF6" {
+        return None;
+    }
+    let reference = ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE);
+    (1..20).rev().map(|twentieths| 5 * twentieths).find_map(|percent| {
+        let share = f64::from(percent) / 100.0;
+        let mixture = GasMixture::of(&[("SF6", share), ("N2", 1.0 - share)])?;
+        let volume = mixture.molar_volume(filling.pressure, reference).ok()?;
+        let dry = mixture.dew_point(volume).is_none_or(|dew| dew.si() + MODEL_ACCURACY <= lowest);
+        dry.then(|| format!("SF6 {percent} % + N2 {} %", 100 - percent))
+    })
 }
 
 /// A filling of which nothing can be told: the bound that was left is named.
@@ -512,6 +533,8 @@ mod tests {
         assert!(finding.message.contains("-26.2 degC") && finding.message.contains("-42 degC"), "{}", finding.message);
         let advice = finding.advice.expect("advice");
         assert!(advice.contains("0.416 MPa abs") && advice.contains("12 K"), "{advice}");
+        // SF6/N2 60/40 filled to 0.7 MPa abs condenses from -43.2 degC (gas basis), a degree colder than the site, so 60 % will do.
+        assert!(advice.contains("SF6 60 % + N2 40 %"), "{advice}");
     }
 
     #[test]

@@ -53,6 +53,9 @@ pub struct PureGas {
     pub(super) vapour: Vec<(f64, f64)>,
     /// Greatest deviation of that equation, percent.
     pub(super) vapour_deviation: f64,
+    /// Pressures of saturation, Pa, at whole kelvins from the lowest temperature of the equation of state on. Saturation rises with
+    /// the temperature, so that the one at the kelvin below is a bound that costs nothing to look up.
+    pub(super) saturation_floor: Vec<f64>,
     /// The line over the frost; absent where nothing below the triple point is asked for.
     pub(super) frost: Option<Frost>,
     /// Second virial coefficient by powers of 300 K/T, m3/mol.
@@ -124,7 +127,7 @@ fn read(formula: &'static str, rows: &[Row]) -> Gas {
     let frost = value("sublimation_slope_K")
         .map(Frost::Slope)
         .or_else(|| Some(series("sublimation_a")).filter(|s| !s.is_empty()).map(Frost::Series));
-    let pure = value("psat_Tc_K").map(|critical_temperature| PureGas {
+    let mut pure = value("psat_Tc_K").map(|critical_temperature| PureGas {
         formula,
         molar_mass,
         triple_temperature: needed("T_triple_K"),
@@ -133,6 +136,7 @@ fn read(formula: &'static str, rows: &[Row]) -> Gas {
         critical_pressure: needed("psat_pc_Pa"),
         vapour: series("psat_a"),
         vapour_deviation: needed("psat_deviation_percent"),
+        saturation_floor: Vec::new(),
         frost,
         b: powers("B"),
         c: powers("C"),
@@ -140,6 +144,11 @@ fn read(formula: &'static str, rows: &[Row]) -> Gas {
         temperatures: (needed("T_lowest_K"), needed("T_highest_K")),
         highest_filling: needed("highest_filling_Pa"),
     });
+    if let Some(pure) = &mut pure {
+        let (low, _) = pure.temperatures;
+        let kelvins = (pure.critical_temperature - low).max(0.0) as u32;
+        pure.saturation_floor = (0..kelvins).map(|n| pure.saturation(low + f64::from(n))).collect();
+    }
     Gas {
         formula,
         molar_mass,

@@ -108,7 +108,9 @@ impl PureGas {
         let t = at.si();
         self.within(t)?;
         let gas = self.pressure_of_gas(density.si(), t);
-        Ok(Pressure::from_si(if t < self.critical_temperature { gas.min(self.saturation(t)) } else { gas }))
+        let floor = self.saturation_floor.get((t - self.temperatures.0) as usize);
+        let dry = t >= self.critical_temperature || floor.is_some_and(|floor| gas < *floor);
+        Ok(Pressure::from_si(if dry { gas } else { gas.min(self.saturation(t)) }))
     }
 
     /// Where a filling of this density begins to condense.
@@ -193,7 +195,7 @@ impl PureGas {
     }
 
     /// Pressure of saturation over the liquid, ln(p/pc) = (Tc/T) sum a (1 - T/Tc)^e, and over the frost below the triple point.
-    fn saturation(&self, t: f64) -> f64 {
+    pub(super) fn saturation(&self, t: f64) -> f64 {
         let series = |terms: &[(f64, f64)], x: f64| {
             let (x, root) = (x.max(0.0), x.max(0.0).sqrt());
             terms.iter().map(|(a, e)| a * power(x, root, *e)).sum::<f64>()
@@ -363,6 +365,17 @@ mod tests {
         assert_eq!(sf6().highest_filling(celsius(-70.0)), Err(GasFault::TemperatureOutside { bound: 205.0 }));
         let density = MassDensity::from_si(40.0);
         assert!(matches!(sf6().pressure(density, celsius(80.0)), Err(GasFault::TemperatureOutside { .. })));
+    }
+
+    /// The bound that is looked up never calls a saturated gas dry.
+    #[test]
+    fn the_floor_of_saturation_lies_below_it() {
+        for t in (0..1100).map(|n| 206.0 + 0.1 * f64::from(n)) {
+            let density = MassDensity::from_si(60.0);
+            let pressure = sf6().pressure(density, ThermodynamicTemperature::from_si(t)).expect("a pressure").si();
+            let expected = sf6().pressure_of_gas(60.0, t).min(sf6().saturation(t));
+            assert!((pressure - expected).abs() < 1e-6, "{t}");
+        }
     }
 
     /// Below 0.3141 MPa abs the gas comes down as frost (gas basis, section 2.1).
