@@ -2,7 +2,7 @@
 //!
 //! Each test counts the rows it asserted and fails on too few, so that none passes by reading nothing.
 
-use std::collections::BTreeMap;
+mod rows;
 
 use firstpole_core::physics::{dc_component, first_pole, trv};
 use firstpole_core::quantity::{ElectricCurrent, ElectricPotential, Frequency, Physical, Time};
@@ -10,105 +10,8 @@ use firstpole_core::standards::{
     Duty, MakingCase, PreferredCurrents, RatingSeries, Regime, SystemClass, TimeConstantCase, TimeConstants,
     insulation_levels, is_rated_voltage, making_factor,
 };
-use firstpole_tests::root;
 
-/// A row of a file, by the names of its columns.
-struct Row(BTreeMap<String, String>, String);
-
-impl Row {
-    fn text(&self, column: &str) -> &str {
-        self.0.get(column).unwrap_or_else(|| panic!("{}: no column {column}", self.1))
-    }
-
-    /// The number in a column; none where the cell is empty.
-    fn maybe(&self, column: &str) -> Option<f64> {
-        let text = self.text(column);
-        (!text.is_empty()).then(|| text.parse().unwrap_or_else(|_| panic!("{}: {column} is {text}", self.1)))
-    }
-
-    fn number(&self, column: &str) -> f64 {
-        self.maybe(column).unwrap_or_else(|| panic!("{}: {column} is empty", self.1))
-    }
-
-    /// Half a unit of the last digit printed in a column.
-    fn rounding(&self, column: &str) -> f64 {
-        half_of_last_digit(self.text(column))
-    }
-
-    fn in_doubt(&self) -> bool {
-        self.text("status").contains('D')
-    }
-}
-
-fn half_of_last_digit(text: &str) -> f64 {
-    let decimals = text.split_once('.').map_or(0, |(_, digits)| digits.len());
-    0.5 * 0.1f64.powf(decimals as f64)
-}
-
-fn rows(file: &str) -> Vec<Row> {
-    let path = root().join("tests/reference").join(file);
-    let mut reader = csv::Reader::from_path(path).unwrap_or_else(|fault| panic!("{file}: {fault}"));
-    let all = reader.deserialize::<BTreeMap<String, String>>();
-    all.enumerate()
-        .map(|(at, row)| {
-            let place = format!("{file}, line {}", at + 2);
-            Row(row.unwrap_or_else(|fault| panic!("{place}: {fault}")), place)
-        })
-        .collect()
-}
-
-/// What a test has asserted of one file.
-struct Tally {
-    file: &'static str,
-    asserted: usize,
-    skipped: usize,
-    faults: Vec<String>,
-    largest: BTreeMap<String, f64>,
-}
-
-impl Tally {
-    fn of(file: &'static str) -> Self {
-        Self { file, asserted: 0, skipped: 0, faults: Vec::new(), largest: BTreeMap::new() }
-    }
-
-    /// A condition that a row must meet.
-    fn holds(&mut self, row: &Row, what: &str, condition: bool) {
-        if !condition {
-            self.faults.push(format!("{}: {what}", row.1));
-        }
-    }
-
-    /// Whether `got` is `expected` to within `tolerance`; the largest error is kept by name, as a share of `scale`.
-    fn near(&mut self, row: &Row, what: &str, got: f64, expected: f64, tolerance: f64, scale: f64) {
-        let error = (got - expected).abs();
-        let largest = self.largest.entry(what.to_owned()).or_default();
-        *largest = largest.max(error / scale);
-        // A little more than the tolerance, for a printed value that lies on the edge of its rounding.
-        self.holds(row, &format!("{what} is {got}, published {expected}"), error <= tolerance * (1.0 + 1e-6));
-    }
-
-    /// The same for a printed value: within its rounding and a thousandth of a percent.
-    fn printed(&mut self, row: &Row, column: &str, got: f64) {
-        let expected = row.number(column);
-        self.near(row, column, got, expected, row.rounding(column) + 1e-5 * expected.abs(), expected.abs());
-    }
-
-    #[expect(clippy::print_stdout, reason = "the count is for whoever runs the test")]
-    fn end(self, asserted: usize, skipped: usize) {
-        let largest: Vec<String> = self.largest.iter().map(|(what, error)| format!("{what} {error:.2e}")).collect();
-        let summary = format!(
-            "{}: {} rows asserted, {} skipped; largest errors: {}",
-            self.file,
-            self.asserted,
-            self.skipped,
-            largest.join(", ")
-        );
-        println!("{summary}");
-        assert!(self.faults.is_empty(), "{summary}\n{}", self.faults.join("\n"));
-        assert!(self.asserted >= asserted, "{summary}; at least {asserted} were expected");
-        assert!(self.skipped <= skipped, "{summary}; at most {skipped} may be skipped");
-    }
-}
+use rows::{Row, Tally, half_of_last_digit, rows};
 
 fn kv(number: f64) -> ElectricPotential {
     ElectricPotential::from_si(number * 1e3)
@@ -131,7 +34,7 @@ fn duty(row: &Row) -> Option<Duty> {
         "OP1-OP2" => Some(Duty::OutOfPhase),
         // The source side of a short line has no envelope of its own in the library.
         "SLF source side" => None,
-        other => panic!("{}: duty {other}", row.1),
+        other => panic!("{}: duty {other}", row.place()),
     }
 }
 
@@ -139,7 +42,7 @@ fn duty(row: &Row) -> Option<Duty> {
 fn envelope(row: &Row, duty: Duty, kpp: f64, class: Option<SystemClass>) -> trv::Envelope {
     let out_of_phase = if duty == Duty::OutOfPhase { row.number("kpp") } else { 2.0 };
     trv::envelope(kv(row.number("Ur_kV")), kpp, out_of_phase, duty, class)
-        .unwrap_or_else(|| panic!("{}: no envelope", row.1))
+        .unwrap_or_else(|| panic!("{}: no envelope", row.place()))
 }
 
 #[test]
@@ -177,7 +80,7 @@ fn trv_from_100_kv() {
         // Printed tables have t1 of T100 rounded to 1 us, and its multiples of the rounded value.
         for (name, text) in row.text("test_values").split(';').filter_map(|pair| pair.split_once('=')) {
             let (_, _, value) = values.iter().find(|(symbol, ..)| *symbol == name).expect("a symbol");
-            let value = value.unwrap_or_else(|| panic!("{}: no {name}", row.1));
+            let value = value.unwrap_or_else(|| panic!("{}: no {name}", row.place()));
             let multiple = match (name, found.t1) {
                 ("t2", Some(t1)) => value / (t1.si() * 1e6),
                 ("t1", _) if duty == Duty::OutOfPhase => 2.0,

@@ -18,6 +18,7 @@ pub mod earthing;
 pub mod fault_duties;
 pub mod gas;
 pub mod gas_law;
+pub mod insulation_site;
 pub mod making;
 pub mod reading;
 pub mod sequence;
@@ -117,6 +118,7 @@ pub fn standard() -> Vec<&'static Rule> {
         statements::ALL,
         completeness::ALL,
         voltage::ALL,
+        insulation_site::ALL,
         continuous_current::ALL,
         short_circuit::ALL,
         dc_component::ALL,

@@ -24,6 +24,9 @@ mod tests {
             ),
             ("gas law", include_str!("../../data/gas_law.csv"), super::super::gas_law::all().len()),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
+            ("S1 times", include_str!("../../data/trv_s1_times.csv"), super::super::trv_duties::s1_times()),
+            ("durations", include_str!("../../data/durations.csv"), super::super::durations().count()),
+            ("nominal voltages", include_str!("../../data/nominal_voltages.csv"), super::super::voltages::nominal()),
         ];
         for (name, text, read) in tables
             .into_iter()
@@ -31,6 +34,7 @@ mod tests {
             .chain(super::super::line_side::lengths())
             .chain(super::super::capacitive::lengths())
             .chain(super::super::surroundings::lengths())
+            .chain(super::super::earthing::lengths())
         {
             let mut reader = csv::Reader::from_reader(text.as_bytes());
             let head = reader.headers().expect(name).clone();

@@ -8,6 +8,12 @@ use firstpole_tests::root;
 pub struct Row(BTreeMap<String, String>, String);
 
 impl Row {
+    /// Which file and line it is.
+    #[allow(dead_code, reason = "each test program takes what it needs of this module")]
+    pub fn place(&self) -> &str {
+        &self.1
+    }
+
     /// The text in a column.
     pub fn text(&self, column: &str) -> &str {
         self.0.get(column).unwrap_or_else(|| panic!("{}: no column {column}", self.1))

@@ -4,6 +4,8 @@ use std::sync::LazyLock;
 
 use serde::Deserialize;
 
+use crate::standards::REFERENCE_TEMPERATURE;
+
 #[derive(Clone, Debug, Deserialize)]
 struct Row {
     medium: String,
@@ -68,6 +70,8 @@ pub struct PureGas {
     pub(super) temperatures: (f64, f64),
     /// Greatest filling pressure at 20 degC for which it holds, Pa absolute.
     pub(super) highest_filling: f64,
+    /// Density of that filling, kg/m3: the bound of the equation of state at every temperature.
+    pub(super) highest_density: f64,
 }
 
 /// The vapour pressure over the frost.
@@ -143,8 +147,10 @@ fn read(formula: &'static str, rows: &[Row]) -> Gas {
         liquid_density: needed("liquid_density_kg_m3"),
         temperatures: (needed("T_lowest_K"), needed("T_highest_K")),
         highest_filling: needed("highest_filling_Pa"),
+        highest_density: f64::NAN,
     });
     if let Some(pure) = &mut pure {
+        pure.highest_density = pure.density_of_gas(pure.highest_filling, REFERENCE_TEMPERATURE).unwrap_or(f64::NAN);
         let (low, _) = pure.temperatures;
         let kelvins = (pure.critical_temperature - low).max(0.0) as u32;
         pure.saturation_floor = (0..kelvins).map(|n| pure.saturation(low + f64::from(n))).collect();
@@ -171,6 +177,29 @@ fn exponent(meaning: &str) -> f64 {
 mod tests {
     use super::*;
 
+    /// No row is lost in reading, each has a source, and each is of a gas of the table.
+    #[test]
+    fn every_row_has_a_source() {
+        let coefficients = include_str!("../../../data/gas_coefficients.csv");
+        let interactions = include_str!("../../../data/gas_interactions.csv");
+        for text in [coefficients, interactions] {
+            let mut reader = csv::Reader::from_reader(text.as_bytes());
+            let at = reader.headers().expect("a head").iter().position(|name| name == "source").expect("a source");
+            for row in reader.records() {
+                let row = row.expect("a row");
+                assert!(row[at].len() >= 5, "{row:?}");
+            }
+        }
+        for row in csv::Reader::from_reader(coefficients.as_bytes()).into_deserialize::<Row>() {
+            let row = row.expect("a row");
+            assert!(FORMULAS.contains(&row.medium.as_str()) && row.value.is_finite(), "{row:?}");
+        }
+        for row in csv::Reader::from_reader(interactions.as_bytes()).into_deserialize::<Interaction>() {
+            let row = row.expect("a row");
+            assert!(gas(&row.first).is_some() && gas(&row.second).is_some() && row.kij.is_finite(), "{row:?}");
+        }
+    }
+
     #[test]
     fn no_constant_is_missing() {
         for gas in GASES.iter() {
@@ -188,6 +217,7 @@ mod tests {
                 pure.temperatures.0,
                 pure.temperatures.1,
                 pure.highest_filling,
+                pure.highest_density,
                 pure.vapour_deviation,
             ];
             assert!(numbers.iter().all(|n| n.is_finite() && *n > 0.0), "{pure:?}");

@@ -11,6 +11,9 @@ pub(super) const MOLAR_GAS_CONSTANT: f64 = 8.314_462_618;
 /// Up to this deviation, percent, a vapour-pressure equation is told of: the dew point then moves by less than 0.05 K.
 const USABLE_DEVIATION: f64 = 0.1;
 
+/// The density of the highest filling may come back with an error of rounding.
+const DENSITY_ROUNDING: f64 = 1.0 + 1e-8;
+
 /// Why a state cannot be told.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum GasFault {
@@ -107,6 +110,7 @@ impl PureGas {
     pub fn pressure(&self, density: MassDensity, at: ThermodynamicTemperature) -> Result<Pressure, GasFault> {
         let t = at.si();
         self.within(t)?;
+        self.within_density(density)?;
         let gas = self.pressure_of_gas(density.si(), t);
         let floor = self.saturation_floor.get((t - self.temperatures.0) as usize);
         let dry = t >= self.critical_temperature || floor.is_some_and(|floor| gas < *floor);
@@ -121,6 +125,7 @@ impl PureGas {
         if self.vapour_deviation > USABLE_DEVIATION {
             return Err(GasFault::NoVapourPressure);
         }
+        self.within_density(density)?;
         let (low, high) = (self.temperatures.0, self.critical_temperature.min(self.temperatures.1));
         if excess(low) < 0.0 || excess(high) > 0.0 {
             return Err(GasFault::TemperatureOutside { bound: if excess(low) < 0.0 { low } else { high } });
@@ -162,6 +167,7 @@ impl PureGas {
     /// A filling at a temperature: how much of it is condensed, and what vapour is left. The share of the liquid is
     /// (1 - rho_g/rho)/(1 - rho_g/rho_l).
     pub fn two_phase(&self, density: MassDensity, at: ThermodynamicTemperature) -> Result<TwoPhase, GasFault> {
+        self.within_density(density)?;
         if at.si() >= self.critical_temperature
             || self.pressure_of_gas(density.si(), at.si()) <= self.saturation(at.si())
         {
@@ -191,6 +197,18 @@ impl PureGas {
             Err(GasFault::TemperatureOutside { bound: high })
         } else {
             Ok(())
+        }
+    }
+
+    /// Beyond the highest filling the series turns over, and what it gives there looks like a result.
+    fn within_density(&self, density: MassDensity) -> Result<(), GasFault> {
+        let rho = density.si();
+        if rho <= 0.0 {
+            Err(GasFault::NoPressure)
+        } else if rho <= self.highest_density * DENSITY_ROUNDING {
+            Ok(())
+        } else {
+            Err(GasFault::FillingTooHigh { bound: self.highest_filling })
         }
     }
 
@@ -230,7 +248,7 @@ impl PureGas {
     }
 
     /// Density of the gas, kg/m3.
-    fn density_of_gas(&self, p: f64, t: f64) -> Result<f64, GasFault> {
+    pub(super) fn density_of_gas(&self, p: f64, t: f64) -> Result<f64, GasFault> {
         let fault = GasFault::FillingTooHigh { bound: self.highest_filling };
         molar_density(p, t, self.virial(t)).map(|rho| rho * self.molar_mass).ok_or(fault)
     }
@@ -365,6 +383,24 @@ mod tests {
         assert_eq!(sf6().highest_filling(celsius(-70.0)), Err(GasFault::TemperatureOutside { bound: 205.0 }));
         let density = MassDensity::from_si(40.0);
         assert!(matches!(sf6().pressure(density, celsius(80.0)), Err(GasFault::TemperatureOutside { .. })));
+    }
+
+    /// Above the highest filling nothing is told, however the density came about: at 250 kg/m3 the series has turned over, and a
+    /// dew point of it would be far off and look sound.
+    #[test]
+    fn no_state_is_told_beyond_the_highest_density() {
+        let too_high = GasFault::FillingTooHigh { bound: 1.6e6 };
+        for rho in [124.7, 130.0, 160.0, 200.0, 250.0, 300.0, 1000.0, f64::NAN] {
+            let density = MassDensity::from_si(rho);
+            assert_eq!(sf6().dew_point(density).expect_err("a fault"), too_high, "{rho}");
+            assert_eq!(sf6().pressure(density, celsius(-10.0)).expect_err("a fault"), too_high, "{rho}");
+            assert_eq!(sf6().two_phase(density, celsius(-10.0)).expect_err("a fault"), too_high, "{rho}");
+        }
+        for rho in [0.0, -1.0] {
+            assert_eq!(sf6().dew_point(MassDensity::from_si(rho)), Err(GasFault::NoPressure));
+        }
+        let highest = sf6().density(mpa(1.6), celsius(20.0)).expect("a density");
+        assert!(sf6().dew_point(highest).is_ok() && sf6().two_phase(highest, celsius(-10.0)).is_ok());
     }
 
     /// The bound that is looked up never calls a saturated gas dry.

@@ -36,6 +36,25 @@ pub fn warming_potential(gas: &str, basis: &str) -> Option<WarmingBasis> {
 mod tests {
     use super::*;
 
+    /// No row is lost in reading, each has a source and a status, and no gas stands twice under one basis.
+    #[test]
+    fn every_row_has_a_source() {
+        let mut reader = csv::Reader::from_reader(include_str!("../../../data/gwp.csv").as_bytes());
+        let head = reader.headers().expect("a head").clone();
+        let at = |wanted: &str| head.iter().position(|name| name == wanted).expect("a column");
+        let records: Vec<_> = reader.records().map(|row| row.expect("a row")).collect();
+        assert_eq!(records.len(), ROWS.len());
+        for row in &records {
+            assert!(row[at("source")].len() > 5 && !row[at("status")].is_empty(), "{row:?}");
+        }
+        for (n, row) in ROWS.iter().enumerate() {
+            assert!(
+                !ROWS.iter().skip(n + 1).any(|other| (&other.gas, &other.basis) == (&row.gas, &row.basis)),
+                "{row:?}"
+            );
+        }
+    }
+
     /// 24 300 (EU 2024/573), 23 500 (40 CFR 98), 22 800 (EU 517/2014), as the sources of the table have them.
     #[test]
     fn sulphur_hexafluoride_by_three_tables() {
