@@ -4,6 +4,7 @@ use std::sync::Arc;
 
 use firstpole_grammar::{Document, Span};
 use serde::Serialize;
+use serde::ser::SerializeStruct;
 
 /// A file of the set that is assessed.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord, Serialize)]
@@ -16,6 +17,16 @@ pub struct Place {
     pub file: FileId,
     /// The range.
     pub span: Span,
+}
+
+impl Serialize for Place {
+    fn serialize<S: serde::Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
+        let mut place = serializer.serialize_struct("Place", 3)?;
+        place.serialize_field("file", &self.file)?;
+        place.serialize_field("start", &self.span.start)?;
+        place.serialize_field("end", &self.span.end)?;
+        place.end()
+    }
 }
 
 impl Place {

@@ -122,29 +122,45 @@ pub struct FolderLoader {
     roots: Vec<PathBuf>,
 }
 
-impl Loader for FolderLoader {
-    fn load(&self, from: &str, path: &str) -> Result<(String, Arc<str>), LoadFault> {
-        let refuse = |sentence: &str| LoadFault { sentence: sentence.to_owned() };
-        if path.contains('\\') || path.contains(':') {
-            return Err(refuse("write the path with / and without a drive"));
-        }
-        let folder = Path::new(from).parent().unwrap_or(Path::new(""));
-        let mut target = folder.to_owned();
-        for part in Path::new(path).components() {
-            match part {
-                Component::Normal(name) => target.push(name),
-                Component::CurDir => {}
-                Component::ParentDir
-                    if target.components().next_back().is_some_and(|c| matches!(c, Component::Normal(_))) =>
-                {
-                    target.pop();
-                }
-                Component::ParentDir => return Err(refuse("it leads out of the folder that was given")),
-                Component::RootDir | Component::Prefix(_) => {
-                    return Err(refuse("a path is relative to the file that uses it"));
-                }
+impl FolderLoader {
+    /// Reads below these folders.
+    pub fn below(roots: Vec<PathBuf>) -> Self {
+        Self { roots }
+    }
+}
+
+fn refuse(sentence: &str) -> LoadFault {
+    LoadFault { sentence: sentence.to_owned() }
+}
+
+/// The file that `path` means where the file `from` uses it.
+pub fn target(from: &str, path: &str) -> Result<PathBuf, LoadFault> {
+    if path.contains('\\') || path.contains(':') {
+        return Err(refuse("write the path with / and without a drive"));
+    }
+    let folder = Path::new(from).parent().unwrap_or(Path::new(""));
+    let mut target = folder.to_owned();
+    for part in Path::new(path).components() {
+        match part {
+            Component::Normal(name) => target.push(name),
+            Component::CurDir => {}
+            Component::ParentDir
+                if target.components().next_back().is_some_and(|c| matches!(c, Component::Normal(_))) =>
+            {
+                target.pop();
+            }
+            Component::ParentDir => return Err(refuse("it leads out of the folder that was given")),
+            Component::RootDir | Component::Prefix(_) => {
+                return Err(refuse("a path is relative to the file that uses it"));
             }
         }
+    }
+    Ok(target)
+}
+
+impl Loader for FolderLoader {
+    fn load(&self, from: &str, path: &str) -> Result<(String, Arc<str>), LoadFault> {
+        let target = target(from, path)?;
         // Symbolic links are followed before the folder is compared, so that none leads out.
         let real = target.canonicalize().map_err(|fault| refuse(&sentence(&fault)))?;
         let inside = self.roots.iter().filter_map(|root| root.canonicalize().ok()).any(|root| real.starts_with(root));

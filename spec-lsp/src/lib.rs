@@ -1,13 +1,16 @@
-//! The program `firstpole`: commands and file access. What a specification is about is known to `firstpole-core` alone.
+//! The program `firstpole`: commands, file access and the language server. What a specification is about is known to `firstpole-core` alone.
 
 mod commands;
+pub mod features;
 mod files;
+pub mod server;
 mod show;
 
 use std::ffi::OsString;
 use std::io::Write;
 
 use clap::{Parser, Subcommand};
+use firstpole_core::Date;
 
 /// What a command ends with: nothing blocks.
 pub const PASSED: u8 = 0;
@@ -33,6 +36,14 @@ enum Command {
     Assess(commands::assess::Arguments),
     /// Say what a rule checks, on what basis, with its formula
     Clause(commands::clause::Arguments),
+    /// Serve an editor: findings while one types, over the language server protocol
+    Serve(commands::serve::Arguments),
+}
+
+/// Today, by the clock of the machine, in UTC.
+fn today() -> Option<Date> {
+    let date = jiff::Timestamp::now().to_zoned_datetime(jiff::tz::TimeZone::UTC).date();
+    Date::new(u16::try_from(date.year()).ok()?, u8::try_from(date.month()).ok()?, u8::try_from(date.day()).ok())
 }
 
 /// Runs the program with `arguments` (the first is its own name), and gives the code that it ends with.
@@ -50,6 +61,7 @@ pub fn run(arguments: impl IntoIterator<Item = OsString>, out: &mut dyn Write, e
     let ended = match program.command {
         Command::Assess(arguments) => commands::assess::run(&arguments, out, err),
         Command::Clause(arguments) => commands::clause::run(&arguments, out, err),
+        Command::Serve(arguments) => commands::serve::run(&arguments, err),
     };
     ended.unwrap_or_else(|fault| {
         // A reader that closes the pipe early has what it wanted.

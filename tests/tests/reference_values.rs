@@ -2,116 +2,16 @@
 //!
 //! Each test counts the rows it asserted and fails on too few, so that none passes by reading nothing.
 
-use std::collections::BTreeMap;
+mod rows;
 
-use firstpole_core::physics::gas::{Condensation, GasFault, Phase, sf6};
 use firstpole_core::physics::{dc_component, first_pole, trv};
-use firstpole_core::quantity::{
-    ElectricCurrent, ElectricPotential, Frequency, MassDensity, Physical, Pressure, ThermodynamicTemperature, Time,
-};
+use firstpole_core::quantity::{ElectricCurrent, ElectricPotential, Frequency, Physical, Time};
 use firstpole_core::standards::{
     Duty, MakingCase, PreferredCurrents, RatingSeries, Regime, SystemClass, TimeConstantCase, TimeConstants,
     insulation_levels, is_rated_voltage, making_factor,
 };
-use firstpole_tests::root;
 
-/// A row of a file, by the names of its columns.
-struct Row(BTreeMap<String, String>, String);
-
-impl Row {
-    fn text(&self, column: &str) -> &str {
-        self.0.get(column).unwrap_or_else(|| panic!("{}: no column {column}", self.1))
-    }
-
-    /// The number in a column; none where the cell is empty.
-    fn maybe(&self, column: &str) -> Option<f64> {
-        let text = self.text(column);
-        (!text.is_empty()).then(|| text.parse().unwrap_or_else(|_| panic!("{}: {column} is {text}", self.1)))
-    }
-
-    fn number(&self, column: &str) -> f64 {
-        self.maybe(column).unwrap_or_else(|| panic!("{}: {column} is empty", self.1))
-    }
-
-    /// Half a unit of the last digit printed in a column.
-    fn rounding(&self, column: &str) -> f64 {
-        half_of_last_digit(self.text(column))
-    }
-
-    fn in_doubt(&self) -> bool {
-        self.text("status").contains('D')
-    }
-}
-
-fn half_of_last_digit(text: &str) -> f64 {
-    let decimals = text.split_once('.').map_or(0, |(_, digits)| digits.len());
-    0.5 * 0.1f64.powf(decimals as f64)
-}
-
-fn rows(file: &str) -> Vec<Row> {
-    let path = root().join("tests/reference").join(file);
-    let mut reader = csv::Reader::from_path(path).unwrap_or_else(|fault| panic!("{file}: {fault}"));
-    let all = reader.deserialize::<BTreeMap<String, String>>();
-    all.enumerate()
-        .map(|(at, row)| {
-            let place = format!("{file}, line {}", at + 2);
-            Row(row.unwrap_or_else(|fault| panic!("{place}: {fault}")), place)
-        })
-        .collect()
-}
-
-/// What a test has asserted of one file.
-struct Tally {
-    file: &'static str,
-    asserted: usize,
-    skipped: usize,
-    faults: Vec<String>,
-    largest: BTreeMap<String, f64>,
-}
-
-impl Tally {
-    fn of(file: &'static str) -> Self {
-        Self { file, asserted: 0, skipped: 0, faults: Vec::new(), largest: BTreeMap::new() }
-    }
-
-    /// A condition that a row must meet.
-    fn holds(&mut self, row: &Row, what: &str, condition: bool) {
-        if !condition {
-            self.faults.push(format!("{}: {what}", row.1));
-        }
-    }
-
-    /// Whether `got` is `expected` to within `tolerance`; the largest error is kept by name, as a share of `scale`.
-    fn near(&mut self, row: &Row, what: &str, got: f64, expected: f64, tolerance: f64, scale: f64) {
-        let error = (got - expected).abs();
-        let largest = self.largest.entry(what.to_owned()).or_default();
-        *largest = largest.max(error / scale);
-        // A little more than the tolerance, for a printed value that lies on the edge of its rounding.
-        self.holds(row, &format!("{what} is {got}, published {expected}"), error <= tolerance * (1.0 + 1e-6));
-    }
-
-    /// The same for a printed value: within its rounding and a thousandth of a percent.
-    fn printed(&mut self, row: &Row, column: &str, got: f64) {
-        let expected = row.number(column);
-        self.near(row, column, got, expected, row.rounding(column) + 1e-5 * expected.abs(), expected.abs());
-    }
-
-    #[expect(clippy::print_stdout, reason = "the count is for whoever runs the test")]
-    fn end(self, asserted: usize, skipped: usize) {
-        let largest: Vec<String> = self.largest.iter().map(|(what, error)| format!("{what} {error:.2e}")).collect();
-        let summary = format!(
-            "{}: {} rows asserted, {} skipped; largest errors: {}",
-            self.file,
-            self.asserted,
-            self.skipped,
-            largest.join(", ")
-        );
-        println!("{summary}");
-        assert!(self.faults.is_empty(), "{summary}\n{}", self.faults.join("\n"));
-        assert!(self.asserted >= asserted, "{summary}; at least {asserted} were expected");
-        assert!(self.skipped <= skipped, "{summary}; at most {skipped} may be skipped");
-    }
-}
+use rows::{Row, Tally, half_of_last_digit, rows};
 
 fn kv(number: f64) -> ElectricPotential {
     ElectricPotential::from_si(number * 1e3)
@@ -125,14 +25,6 @@ fn hz(number: f64) -> Frequency {
     Frequency::from_si(number)
 }
 
-fn mpa(number: f64) -> Pressure {
-    Pressure::from_si(number * 1e6)
-}
-
-fn celsius(number: f64) -> ThermodynamicTemperature {
-    ThermodynamicTemperature::from_si(number + 273.15)
-}
-
 fn duty(row: &Row) -> Option<Duty> {
     match row.text("duty") {
         "T100" => Some(Duty::T100),
@@ -142,7 +34,7 @@ fn duty(row: &Row) -> Option<Duty> {
         "OP1-OP2" => Some(Duty::OutOfPhase),
         // The source side of a short line has no envelope of its own in the library.
         "SLF source side" => None,
-        other => panic!("{}: duty {other}", row.1),
+        other => panic!("{}: duty {other}", row.place()),
     }
 }
 
@@ -150,7 +42,7 @@ fn duty(row: &Row) -> Option<Duty> {
 fn envelope(row: &Row, duty: Duty, kpp: f64, class: Option<SystemClass>) -> trv::Envelope {
     let out_of_phase = if duty == Duty::OutOfPhase { row.number("kpp") } else { 2.0 };
     trv::envelope(kv(row.number("Ur_kV")), kpp, out_of_phase, duty, class)
-        .unwrap_or_else(|| panic!("{}: no envelope", row.1))
+        .unwrap_or_else(|| panic!("{}: no envelope", row.place()))
 }
 
 #[test]
@@ -188,7 +80,7 @@ fn trv_from_100_kv() {
         // Printed tables have t1 of T100 rounded to 1 us, and its multiples of the rounded value.
         for (name, text) in row.text("test_values").split(';').filter_map(|pair| pair.split_once('=')) {
             let (_, _, value) = values.iter().find(|(symbol, ..)| *symbol == name).expect("a symbol");
-            let value = value.unwrap_or_else(|| panic!("{}: no {name}", row.1));
+            let value = value.unwrap_or_else(|| panic!("{}: no {name}", row.place()));
             let multiple = match (name, found.t1) {
                 ("t2", Some(t1)) => value / (t1.si() * 1e6),
                 ("t1", _) if duty == Duty::OutOfPhase => 2.0,
@@ -450,152 +342,4 @@ fn dc_time_constants() {
         tally.asserted += 1;
     }
     tally.end(6, 0);
-}
-
-/// The density of the filling in a row.
-fn filling(row: &Row) -> Result<MassDensity, String> {
-    let density = sf6().density(mpa(row.number("fill_p_MPa_abs")), celsius(row.number("fill_T_C")));
-    density.map_err(|fault| fault.to_string())
-}
-
-/// The quantity of a row of the gas fixtures, in its unit.
-fn gas_value(row: &Row) -> Result<f64, String> {
-    let at = || celsius(row.number("T_C"));
-    let value = match row.text("quantity") {
-        "density" => Ok(filling(row)?.si()),
-        "liquefaction_temperature" => sf6().dew_point(filling(row)?).map(|dew| dew.temperature.si() - 273.15),
-        "pressure_at_liquefaction" => {
-            let density = filling(row)?;
-            sf6().dew_point(density).and_then(|dew| sf6().pressure(density, dew.temperature)).map(|p| p.si() / 1e6)
-        }
-        "pressure_isochore" => sf6().pressure(filling(row)?, at()).map(|p| p.si() / 1e6),
-        "liquid_mass_fraction" => sf6().two_phase(filling(row)?, at()).map(|state| state.condensed.si()),
-        "gas_density" => sf6().two_phase(filling(row)?, at()).map(|state| state.vapour.si()),
-        "max_filling_pressure" => sf6().highest_filling(at()).map(|p| p.si() / 1e6),
-        // Saturation is the pressure of any density at or above that of the saturated vapour.
-        "saturation_pressure" => {
-            sf6().saturated_density(at()).and_then(|density| sf6().pressure(density, at())).map(|p| p.si() / 1e6)
-        }
-        "saturated_vapour_density" => sf6().saturated_density(at()).map(Physical::si),
-        other => panic!("{}: quantity {other}", row.1),
-    };
-    value.map_err(|fault| fault.to_string())
-}
-
-/// A saturated state that the library must refuse: no filling may be had from it. Its vapour may be told where the equation of
-/// state is still close, since `saturated_density` bounds the temperature and not the density.
-fn beyond_range(tally: &mut Tally, row: &Row) {
-    let (quantity, expected) = (row.text("quantity"), row.number("value"));
-    tally.holds(row, "taken as the highest filling", sf6().highest_filling(celsius(row.number("T_C"))).is_err());
-    match gas_value(row) {
-        Ok(value) if quantity == "saturated_vapour_density" => {
-            tally.near(row, "vapour beyond the range", value, expected, 1e-3 * expected, expected);
-        }
-        Ok(value) => tally.holds(row, &format!("{quantity} is not refused: {value}"), false),
-        Err(_) => {}
-    }
-}
-
-/// The dew point of a density that is published to condense at a temperature. Below 205 K the equation of state does not hold,
-/// and the library must refuse.
-fn dew_point(tally: &mut Tally, row: &Row, density: MassDensity, celsius: f64) -> Option<Condensation> {
-    let found = sf6().dew_point(density);
-    if celsius < LOWEST {
-        let refused = matches!(found, Err(GasFault::TemperatureOutside { .. }));
-        tally.holds(row, &format!("the dew point is not refused: {found:?}"), refused);
-        return None;
-    }
-    tally.holds(row, &format!("{found:?}"), found.is_ok());
-    found.ok()
-}
-
-/// Lowest temperature of the equation of state, 205 K in degrees Celsius.
-const LOWEST: f64 = -68.15;
-
-#[test]
-fn gas_states() {
-    let mut tally = Tally::of("gas/fixtures.csv");
-    for row in rows(tally.file) {
-        assert_eq!((row.text("medium"), row.text("kind")), ("SF6", "eos"), "{}", row.1);
-        match row.text("in_model_range") {
-            "yes" => {}
-            "no" => {
-                beyond_range(&mut tally, &row);
-                tally.asserted += 1;
-                continue;
-            }
-            // The library has one density of the liquid, and no function for it.
-            "n/a" => {
-                tally.skipped += 1;
-                continue;
-            }
-            other => panic!("range {other}"),
-        }
-        let (quantity, expected) = (row.text("quantity"), row.number("value"));
-        match gas_value(&row) {
-            Ok(value) => {
-                let (tolerance, scale) = match row.text("unit") {
-                    "degC" => (0.02, 1.0),
-                    // The library has one density of the liquid for all temperatures.
-                    "1" => (0.001, 1.0),
-                    _ => (5e-4 * expected, expected),
-                };
-                tally.near(&row, quantity, value, expected, tolerance, scale);
-            }
-            Err(fault) => tally.holds(&row, &format!("{quantity}: {fault}"), false),
-        }
-        tally.asserted += 1;
-    }
-    tally.end(397, 11);
-}
-
-#[test]
-fn gas_liquefaction() {
-    let mut tally = Tally::of("gas/ref_pure_liquefaction.csv");
-    for row in rows(tally.file) {
-        let filling = row.number("fill_p_MPa_abs_at_20C");
-        let density = sf6().density(mpa(filling), celsius(20.0)).expect("a density");
-        let expected = row.number("density_kg_m3");
-        tally.near(&row, "density", density.si(), expected, 5e-4 * expected, expected);
-        if let Some(kelvin) = row.maybe("T_liq_K") {
-            let dew = sf6().dew_point(density).expect("a dew point");
-            tally.holds(&row, "not a liquid", dew.phase == Phase::Liquid);
-            tally.near(&row, "temperature", dew.temperature.si(), kelvin, 0.02, 1.0);
-            let pressure = sf6().pressure(density, dew.temperature).expect("a pressure").si() / 1e6;
-            let expected = row.number("p_at_liq_MPa_abs");
-            tally.near(&row, "pressure", pressure, expected, 5e-4 * expected, expected);
-        } else {
-            // Where it comes down as frost is in the other file; the filling of 0.1 MPa does so below the range.
-            let expected = if filling < 0.15 { LOWEST - 1.0 } else { LOWEST };
-            let dew = dew_point(&mut tally, &row, density, expected);
-            tally.holds(&row, "not frost", dew.is_none_or(|dew| dew.phase == Phase::Frost));
-        }
-        // Where there is frost the file has the vapour of the triple point, above which a filling liquefies.
-        let at = ThermodynamicTemperature::from_si(row.maybe("T_liq_K").unwrap_or(223.555));
-        let vapour = sf6().saturated_density(at).expect("a density").si();
-        let expected = row.number("sat_vapour_density_kg_m3");
-        tally.near(&row, "saturated vapour", vapour, expected, 5e-4 * expected, expected);
-        tally.asserted += 1;
-    }
-    tally.end(23, 0);
-}
-
-#[test]
-fn gas_frost() {
-    let mut tally = Tally::of("gas/ref_solid_deposit.csv");
-    for row in rows(tally.file) {
-        let density = sf6().density(mpa(row.number("fill_p_MPa_abs_at_20C")), celsius(20.0)).expect("a density");
-        let expected = row.number("density_kg_m3");
-        tally.near(&row, "density", density.si(), expected, 5e-4 * expected, expected);
-        if let Some(dew) = dew_point(&mut tally, &row, density, row.number("T_deposit_C")) {
-            tally.holds(&row, "not frost", dew.phase == Phase::Frost);
-            let (got, expected) = (dew.temperature.si() - 273.15, row.number("T_deposit_C"));
-            tally.near(&row, "temperature", got, expected, 0.02, 1.0);
-            let pressure = sf6().pressure(density, dew.temperature).expect("a pressure").si() / 1e6;
-            let expected = row.number("p_MPa_abs");
-            tally.near(&row, "pressure", pressure, expected, 5e-4 * expected, expected);
-        }
-        tally.asserted += 1;
-    }
-    tally.end(5, 0);
 }

@@ -59,7 +59,7 @@ impl Deref for Part<'_> {
 
 impl<'a> Part<'a> {
     fn of(set: &'a Set, sheet: Option<&'a Sheet>) -> Self {
-        Self { sheet, facts: sheet.map(|sheet| set.facts(sheet.id)).unwrap_or_default() }
+        Self { sheet, facts: sheet.map(|sheet| set.facts(sheet.id).clone()).unwrap_or_default() }
     }
 }
 
@@ -69,8 +69,8 @@ impl<'a> Case<'a> {
     pub fn new(set: &'a Set, sheet: &'a Sheet, policy: &'a Policy) -> Self {
         let linked = |word| Part::of(set, sheet.target(word).and_then(|id| set.sheet(id)));
         let circuits = set
-            .of_kind(SheetKind::Circuit)
-            .filter(|circuit| circuit.target("for") == Some(sheet.id))
+            .pointing_at(sheet.id, "for")
+            .filter(|other| other.kind == SheetKind::Circuit)
             .map(|circuit| Part::of(set, Some(circuit)))
             .collect();
         let tender = set.in_reach(sheet.file(), SheetKind::Tender).next();

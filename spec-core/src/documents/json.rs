@@ -94,8 +94,8 @@ impl Document {
                     basis: finding.basis.clone(),
                     stated: finding.stated.as_ref().map(|datum| datum.text.clone()),
                     needed: finding.needed.as_ref().map(|datum| datum.text.clone()),
-                    stated_value: finding.stated.as_ref().and_then(|datum| datum.si),
-                    needed_value: finding.needed.as_ref().and_then(|datum| datum.si),
+                    stated_value: finding.stated.as_ref().and_then(|datum| datum.si).map(told),
+                    needed_value: finding.needed.as_ref().and_then(|datum| datum.si).map(told),
                     working: finding.working.clone(),
                     advice: finding.advice.clone(),
                     related: finding
@@ -127,7 +127,7 @@ impl Document {
                     .iter()
                     .map(|figure| {
                         let known = figure.value.map(|value| JsonFigure {
-                            value,
+                            value: told(value),
                             unit: figure.unit,
                             working: figure.working.clone().unwrap_or_default(),
                         });
@@ -141,6 +141,11 @@ impl Document {
         summary.insert("accepted", assessment.accepted());
         Self { schema: 1, findings, cases, summary }
     }
+}
+
+/// Nine significant digits: what the last bits of a logarithm are differs between machines, and the json must not.
+fn told(value: f64) -> f64 {
+    format!("{value:.8e}").parse().unwrap_or(value)
 }
 
 fn span(assessment: &Assessment, place: Place) -> (String, Position, Position) {

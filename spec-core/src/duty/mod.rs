@@ -6,7 +6,7 @@ mod short_circuit;
 mod trv;
 
 pub use figure::{Figure, Input, Working, percent};
-pub use gas::{GasDuty, Level, LevelState, celsius};
+pub use gas::{Certainty, DewPoint, GasDuty, Level, LevelState, Medium, absolute, celsius, told};
 pub(crate) use short_circuit::making_factor_of;
 pub use trv::TrvDuty;
 
@@ -65,6 +65,8 @@ pub struct Duty {
     pub load_current: Option<Figure<ElectricCurrent>>,
     /// The gas in the cold.
     pub gas: GasDuty,
+    /// The second filling of other compartments, in the cold.
+    pub other_gas: GasDuty,
 }
 
 /// A figure by the name that the json carries.
@@ -78,6 +80,8 @@ pub struct NamedFigure {
     pub unit: &'static str,
     /// The working.
     pub working: Option<String>,
+    /// Where the statements stand that it rests on, as far as they are known one by one.
+    pub places: Vec<crate::source::Place>,
 }
 
 impl Duty {
@@ -94,6 +98,7 @@ impl Duty {
         short_circuit::fill(case, &mut duty);
         trv::fill(case, &mut duty);
         duty.gas = GasDuty::of(case);
+        duty.other_gas = GasDuty::of_others(case);
         duty
     }
 
@@ -123,7 +128,13 @@ impl Duty {
         ];
         all.extend(self.trv.figures());
         all.extend(self.gas.figures());
-        all.extend(LATER.iter().map(|(key, unit)| NamedFigure { key, value: None, unit, working: None }));
+        all.extend(LATER.iter().map(|(key, unit)| NamedFigure {
+            key,
+            value: None,
+            unit,
+            working: None,
+            places: Vec::new(),
+        }));
         all
     }
 }
@@ -142,8 +153,6 @@ const LATER: &[(&str, &str)] = &[
     ("lightning_level_on_site", "V"),
     ("switching_level_on_site", "V"),
     ("creepage_needed", "m"),
-    ("gas_mass", "kg"),
-    ("gas_co2_equivalent", "kg"),
     ("clearing_time", "s"),
     ("operations", "1"),
 ];
@@ -154,12 +163,8 @@ fn named<Q: Physical>(key: &'static str, unit: &'static str, figure: Option<&Fig
         value: figure.map(|figure| figure.value.si()),
         unit,
         working: figure.map(|figure| figure.working.to_string()),
+        places: figure.map(|figure| figure.places().collect()).unwrap_or_default(),
     }
-}
-
-/// A figure of an optional value that is not a typed quantity of a figure of its own.
-fn named_temperature(key: &'static str, figure: Option<&Figure<ThermodynamicTemperature>>) -> NamedFigure {
-    named(key, "K", figure)
 }
 
 /// The largest of the load and emergency currents of the circuits.

@@ -40,6 +40,7 @@ impl TrvDuty {
                     value,
                     unit,
                     working: found.map(|(_, working)| working.clone()),
+                    places: Vec::new(),
                 };
                 [figure(peak, "V", found.map(|(e, _)| e.uc.si())), figure(rate, "V/s", found.map(|(e, _)| e.rate.si()))]
             })

@@ -48,12 +48,10 @@ impl Findings {
     }
 
     /// Drops those from the `from`th on that `keep` does not want.
-    pub fn retain_from(&mut self, from: usize, mut keep: impl FnMut(&Finding) -> bool) {
-        let mut at = 0;
-        self.all.retain(|finding| {
-            at += 1;
-            at <= from || keep(finding)
-        });
+    pub fn retain_from(&mut self, from: usize, keep: impl FnMut(&Finding) -> bool) {
+        let mut tail = self.all.split_off(from.min(self.all.len()));
+        tail.retain(keep);
+        self.all.append(&mut tail);
     }
 
     /// How many there are.

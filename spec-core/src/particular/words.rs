@@ -122,6 +122,12 @@ word_lists! {
         "C5",
         "CX",
     ];
+    DENSITY_MONITOR = "places of a density monitor": [
+        "in the gas",
+        "on the tank" or ["at the tank"],
+        "apart, heated" or ["apart and heated", "remote, heated"],
+        "apart, unheated" or ["apart and unheated", "remote, unheated", "apart", "remote"],
+    ];
     DRIVE = "drives": [
         "spring",
         "hydraulic",

@@ -19,6 +19,18 @@ pub fn time_constant_of_share(share: Ratio, separation: Time) -> Option<Time> {
     (share.value > 0.0 && share.value < 1.0).then(|| Time::from_si(-separation.si() / share.value.ln()))
 }
 
+/// Time from the fault to contact separation that gives a share with a time constant: t = -tau ln(p); none for a share outside 0 to 1.
+pub fn separation_of_share(share: Ratio, tau: Time) -> Option<Time> {
+    (share.value > 0.0 && share.value < 1.0).then(|| tau * -share.value.ln())
+}
+
+/// Minimum opening time that a stated share implies: the time above less one half cycle of relay time; none where that leaves
+/// nothing, so that no opening time gives such a share.
+pub fn opening_of_share(share: Ratio, tau: Time, frequency: Frequency) -> Option<Time> {
+    let opening = separation_of_share(share, tau)? - Time::from_si(0.5 / frequency.si());
+    (opening.si() > 0.0).then_some(opening)
+}
+
 /// DC component as a current: sqrt2 I p.
 pub fn dc_current(symmetrical: ElectricCurrent, share: Ratio) -> ElectricCurrent {
     symmetrical * (SQRT_2 * share.value)
@@ -64,6 +76,20 @@ mod tests {
             assert!((time_constant_of_share(p, ms(32.0)).expect("a tau").si() - tau * 1e-3).abs() < 1e-9);
         }
         assert_eq!(time_constant_of_share(Ratio::from_si(1.0), ms(32.0)), None);
+    }
+
+    /// Own calculation: 30 % with 45 ms is 54.2 ms after the fault, an opening time of 44.2 ms at 50 Hz.
+    #[test]
+    fn opening_time_of_a_share() {
+        let (hz, tau) = (Frequency::from_si(50.0), ms(45.0));
+        let opening = opening_of_share(Ratio::from_si(0.3), tau, hz).expect("an opening time");
+        assert!((opening.si() * 1e3 - 44.18).abs() < 0.01, "{}", opening.si());
+        let back = share(contact_separation(opening, hz), tau);
+        assert!((back.value - 0.3).abs() < 1e-12);
+        // 10 ms after the fault 80 % are left: no breaker opens that soon.
+        assert_eq!(opening_of_share(Ratio::from_si(0.81), tau, hz), None);
+        assert_eq!(opening_of_share(Ratio::from_si(0.0), tau, hz), None);
+        assert_eq!(separation_of_share(Ratio::from_si(1.0), tau), None);
     }
 
     #[test]

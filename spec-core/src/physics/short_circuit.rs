@@ -44,13 +44,14 @@ pub fn r_over_x_of_peak(peak: ElectricCurrent, initial: ElectricCurrent) -> Opti
 
 /// Heat of the DC component as a share of that of the AC component over `duration`:
 /// m = (exp(4 f T ln(kappa - 1)) - 1) / (2 f T ln(kappa - 1)). IEC 60909-0.
+///
+/// 0 for a kappa of 1 or less, and 2, the limit, for one of 2 or more: a DC component that does not decay has twice the heat.
 pub fn dc_heat(kappa: f64, frequency: Frequency, duration: Time) -> f64 {
-    let ln = (kappa - 1.0).ln();
-    let cycles = (frequency * duration).value;
-    if cycles <= 0.0 || ln == 0.0 {
+    if kappa <= 1.0 {
         return 0.0;
     }
-    ((4.0 * cycles * ln).exp() - 1.0) / (2.0 * cycles * ln)
+    let x = 4.0 * (frequency * duration).value * (kappa - 1.0).ln();
+    if x < 0.0 { 2.0 * x.exp_m1() / x } else { 2.0 }
 }
 
 /// Thermal equivalent current: Ith = Ik'' sqrt(m + n), with n = 1 far from generators. IEC 60909-0.
@@ -117,5 +118,28 @@ mod tests {
     fn heat_of_the_dc_component() {
         assert!(dc_heat(1.02, Frequency::from_si(50.0), Time::from_si(1.0)) < 0.01);
         assert!(close(dc_heat(1.8, Frequency::from_si(50.0), Time::from_si(1e-6)), 2.0, 1e-3));
+        assert_eq!(dc_heat(1.0, Frequency::from_si(50.0), Time::from_si(1.0)), 0.0);
+    }
+
+    /// Without resistance kappa is 2 and the DC component stays at sqrt2 Ik'', whose square is twice that of Ik'' (own calculation).
+    /// Method B for meshed networks is capped there, so that it is met.
+    #[test]
+    fn heat_of_a_dc_component_that_stays() {
+        let heat = |kappa: f64| dc_heat(kappa, Frequency::from_si(50.0), Time::from_si(1.0));
+        assert_eq!(heat(2.0), 2.0);
+        assert!(close(heat(2.0 - 1e-9), 2.0, 1e-6));
+        let rising: Vec<f64> = [1.02, 1.5, 1.8, 1.95, 1.99, 1.999, 2.0].map(heat).to_vec();
+        assert!(rising.is_sorted(), "{rising:?}");
+    }
+
+    /// Examples of `tests/reference/standards/iec60909_far_examples.csv`.
+    #[test]
+    fn thermal_currents_far_from_generators() {
+        for (current, r_over_x, hz, duration, expected) in
+            [(40.0, 0.07, 50.0, 1.0, 40.962), (31.5, 0.1, 50.0, 3.0, 31.679), (25.0, 0.05, 60.0, 0.5, 26.381)]
+        {
+            let m = dc_heat(peak_factor(r_over_x), Frequency::from_si(hz), Time::from_si(duration));
+            assert!((thermal_current(ka(current), m).si() / 1e3 - expected).abs() < 0.001, "{current}");
+        }
     }
 }

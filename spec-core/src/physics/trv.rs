@@ -24,6 +24,21 @@ pub struct Envelope {
     pub t2: Option<Time>,
     /// The time to the peak, of a two-parameter envelope.
     pub t3: Option<Time>,
+    /// The least and the greatest time delay; the same where the standard has one value.
+    pub td: (Time, Time),
+}
+
+impl Envelope {
+    /// The reference voltage u' of the delay line: half of u1, or a third of the peak where there are two parameters.
+    pub fn delay_voltage(&self) -> ElectricPotential {
+        self.u1.map_or(self.uc / 3.0, |u1| u1 / 2.0)
+    }
+
+    /// The least and the greatest time t' at which the delay line reaches u': td and u' over the rate of rise.
+    pub fn delay_time(&self) -> (Time, Time) {
+        let rise: Time = self.delay_voltage() / self.rate;
+        (self.td.0 + rise, self.td.1 + rise)
+    }
 }
 
 /// Crest of the phase-to-earth voltage: Ur sqrt(2/3).
@@ -63,18 +78,7 @@ fn from_100(
 ) -> Option<Envelope> {
     let Some(t2_over_t1) = row.t2_over_t1 else {
         let rate = VoltageRate::from_si(row.rate_kv_per_us? * 1e9);
-        let t3 = uc / rate;
-        return Some(Envelope {
-            duty,
-            kpp: factor,
-            kaf: row.kaf,
-            uc,
-            rate,
-            u1: None,
-            t1: None,
-            t2: None,
-            t3: Some(t3),
-        });
+        return two_parameters(row, duty, factor, uc, uc / rate);
     };
     let u1 = crest(rated) * (FIRST_REFERENCE * factor);
     let (rate, t1) = match (row.rate_kv_per_us, row.t1_over_t100) {
@@ -95,7 +99,37 @@ fn from_100(
         Some(multiple) => t1 * (t2_over_t1 / multiple),
         None => t1 * t2_over_t1,
     };
-    Some(Envelope { duty, kpp: factor, kaf: row.kaf, uc, rate, u1: Some(u1), t1: Some(t1), t2: Some(t2), t3: None })
+    let least = Time::from_si(row.td_us? * 1e-6);
+    let most = row.td_most_over_t1.map_or(least, |multiple| t1 * multiple);
+    Some(Envelope {
+        duty,
+        kpp: factor,
+        kaf: row.kaf,
+        uc,
+        rate,
+        u1: Some(u1),
+        t1: Some(t1),
+        t2: Some(t2),
+        t3: None,
+        td: (least, most),
+    })
+}
+
+/// The peak at t3, the delay a share of t3.
+fn two_parameters(row: &DutyRow, duty: Duty, factor: f64, uc: ElectricPotential, t3: Time) -> Option<Envelope> {
+    let td = t3 * row.td_over_t3?;
+    Some(Envelope {
+        duty,
+        kpp: factor,
+        kaf: row.kaf,
+        uc,
+        rate: uc / t3,
+        u1: None,
+        t1: None,
+        t2: None,
+        t3: Some(t3),
+        td: (td, td),
+    })
 }
 
 /// u1 as a share of the crest of the recovery voltage, since IEC 62271-100; IEC 56:1987 had 1.0.
@@ -114,8 +148,7 @@ fn two_parameters_below_100(
         SystemClass::S1 => s1_time(rated)?,
         SystemClass::S2 => Time::from_si((4.65 * (rated.si() / 1e3).powf(0.7)).round() * 1e-6),
     };
-    let t3 = t100 * row.t3_over_t100?;
-    Some(Envelope { duty, kpp: factor, kaf: row.kaf, uc, rate: uc / t3, u1: None, t1: None, t2: None, t3: Some(t3) })
+    two_parameters(row, duty, factor, uc, t100 * row.t3_over_t100?)
 }
 
 #[cfg(test)]
@@ -151,6 +184,29 @@ mod tests {
         assert!((op.rate.si() / 1e9 - 1.538).abs() < 0.001);
         let op = envelope(rated, 1.5, 2.5, Duty::OutOfPhase, None).expect("an envelope");
         assert!((op.rate.si() / 1e9 - 1.667).abs() < 0.001);
+    }
+
+    /// td and t' in us, u' in kV, as in `tests/reference/standards/trv_*.csv` (rules from memory).
+    #[test]
+    fn delays() {
+        let rows = [
+            (145.0, 1.3, Duty::T100, None, (2.0, 2.0), 57.72, (30.86, 30.86)),
+            (145.0, 1.3, Duty::T60, None, (2.0, 11.54), 57.72, (21.24, 30.78)),
+            (145.0, 1.3, Duty::T30, None, (7.11, 7.11), 79.01, (22.91, 22.91)),
+            (145.0, 1.3, Duty::T10, None, (5.82, 5.82), 90.57, (18.76, 18.76)),
+            (145.0, 1.3, Duty::OutOfPhase, None, (2.0, 11.54), 88.79, (59.72, 69.26)),
+            (1100.0, 1.2, Duty::T60, None, (2.0, 80.83), 404.17, (136.72, 215.56)),
+            (3.6, 1.5, Duty::T100, Some(SystemClass::S1), (6.1, 6.1), 2.06, (19.8, 19.8)),
+            (15.0, 1.5, Duty::T100, Some(SystemClass::S2), (1.5, 1.5), 9.43, (11.9, 11.9)),
+        ];
+        for (kv, kpp, duty, class, td, voltage, time) in rows {
+            let found = envelope(ElectricPotential::from_si(kv * 1e3), kpp, 2.0, duty, class).expect("an envelope");
+            let us = |(least, most): (Time, Time)| (least.si() * 1e6, most.si() * 1e6);
+            let near = |a: (f64, f64), b: (f64, f64)| (a.0 - b.0).abs() < 0.06 && (a.1 - b.1).abs() < 0.06;
+            assert!(near(us(found.td), td), "{kv} {duty:?}: td {:?}", us(found.td));
+            assert!((found.delay_voltage().si() / 1e3 - voltage).abs() < 0.006, "{kv} {duty:?}");
+            assert!(near(us(found.delay_time()), time), "{kv} {duty:?}: t' {:?}", us(found.delay_time()));
+        }
     }
 
     #[test]

@@ -2,7 +2,10 @@
 
 use uom::si::f64 as si;
 
-use super::{Dimension, Frequency, JouleIntegral, Unit, VoltageRate, canonical, significant};
+use super::{
+    CapacitancePerLength, ChoppingNumber, Dimension, Frequency, ImpedancePerLength, JouleIntegral, LengthPerVoltage,
+    Unit, VoltageRate, VoltageRatePerCurrent, canonical, significant,
+};
 
 /// A number with its unit, as an author wrote it.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -130,6 +133,32 @@ physical! {
     si::Force: Force;
     si::Acceleration: Acceleration;
     VoltageRate: VoltageRate;
+    ImpedancePerLength: ImpedancePerLength;
+    CapacitancePerLength: CapacitancePerLength;
+    LengthPerVoltage: LengthPerVoltage;
+}
+
+impl Physical for ChoppingNumber {
+    const DIMENSIONS: &'static [Dimension] = &[Dimension::ChoppingNumber];
+    fn from_si(value: f64) -> Self {
+        Self(value)
+    }
+    fn si(self) -> f64 {
+        self.0
+    }
+}
+
+impl Physical for VoltageRatePerCurrent {
+    const DIMENSIONS: &'static [Dimension] = &[];
+    fn from_si(value: f64) -> Self {
+        Self { dimension: std::marker::PhantomData, units: std::marker::PhantomData, value }
+    }
+    fn si(self) -> f64 {
+        self.value
+    }
+    fn show(self) -> String {
+        format!("{} kV/us per kA", significant(self.value / 1e6, 3))
+    }
 }
 
 impl Physical for JouleIntegral {

@@ -306,6 +306,7 @@ pub fn look_up(text: &str, expected: &[Dimension]) -> Option<SpeltUnit> {
         ("(abs)", Qualifier::Absolute),
         ("g", Qualifier::Gauge),
         ("a", Qualifier::Absolute),
+        ("pk", Qualifier::Peak),
         ("p", Qualifier::Peak),
         ("dc", Qualifier::Dc),
         ("ac", Qualifier::Ac),

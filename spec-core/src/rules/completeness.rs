@@ -38,21 +38,23 @@ pub static ALL: &[&Rule] = &[
 /// A breaker with what it states, taken over lines included.
 struct Apparatus<'a> {
     sheet: &'a Sheet,
-    facts: Facts,
+    facts: &'a Facts,
 }
 
 /// The breakers whose link `word` points at a sheet.
-fn breakers_of<'a>(set: &'a Set, word: &str, id: SheetId) -> Vec<Apparatus<'a>> {
-    set.of_kind(SheetKind::Breaker)
-        .filter(|breaker| breaker.target(word) == Some(id))
+fn breakers_of<'a>(set: &'a Set, word: &'static str, id: SheetId) -> Vec<Apparatus<'a>> {
+    set.pointing_at(id, word)
+        .filter(|sheet| sheet.kind == SheetKind::Breaker)
         .map(|sheet| Apparatus { sheet, facts: set.facts(sheet.id) })
         .collect()
 }
 
 /// What the circuits of these breakers state.
-fn circuits_of(set: &Set, breakers: &[Apparatus<'_>]) -> Vec<Facts> {
-    set.of_kind(SheetKind::Circuit)
-        .filter(|circuit| breakers.iter().any(|breaker| circuit.target("for") == Some(breaker.sheet.id)))
+fn circuits_of<'a>(set: &'a Set, breakers: &[Apparatus<'a>]) -> Vec<&'a Facts> {
+    breakers
+        .iter()
+        .flat_map(|breaker| set.pointing_at(breaker.sheet.id, "for"))
+        .filter(|sheet| sheet.kind == SheetKind::Circuit)
         .map(|circuit| set.facts(circuit.id))
         .collect()
 }

@@ -2,11 +2,11 @@
 
 use super::{Check, Rule};
 use crate::case::Case;
-use crate::duty::{Level, LevelState, celsius, percent};
+use crate::duty::{Certainty, GasDuty, Level, LevelState, Medium, absolute, celsius, percent};
 use crate::finding::{Finding, FindingKind, Findings};
 use crate::particular::{Kind, Limit, Particular, Tail, breaker, site};
-use crate::physics::gas::{GasFault, Phase, sf6};
-use crate::quantity::{Physical, Pressure, ThermodynamicTemperature, significant};
+use crate::physics::gas::{GasFault, GasMixture, Phase, sf6};
+use crate::quantity::{Physical, Pressure, ThermodynamicTemperature, rounded, significant};
 use crate::sheet::{QuantityReading, Stated, Statement};
 use crate::standards::{GAUGE_REFERENCE, REFERENCE_TEMPERATURE};
 
@@ -14,6 +14,7 @@ use crate::standards::{GAUGE_REFERENCE, REFERENCE_TEMPERATURE};
 pub static ALL: &[&Rule] = &[
     &GAS_LIQUEFACTION,
     &GAS_DENSITY_AT_COLD,
+    &CONDENSATION_UNSEEN,
     &GAS_LEVEL_ORDER,
     &PRESSURE_REFERENCE,
     &GAS_PRESSURE_HOT,
@@ -33,8 +34,9 @@ pub static GAS_LIQUEFACTION: Rule = Rule {
     explanation: "Below its dew point a pure gas condenses, and the density of what is left follows the saturation line, so that \
                   lockout comes exactly at the dew point of the minimum functional level. Colder than that is a shortfall; colder \
                   than the alarm level's dew point is gas-density-at-cold; colder than the filling's alone is a remark, since the \
-                  breaker works down to its minimum level. Heaters count by the rise that they declare. Silent without a lowest \
-                  ambient temperature and for gases other than pure SF6.",
+                  breaker works down to its minimum level. Of a mixture only the filling counts: a shortfall where it condenses \
+                  by every reckoning, a caution within the accuracy of the model or the band of an estimate. Heaters count by the \
+                  rise that they declare. Silent without a lowest ambient temperature, and where the bidder chooses the gas.",
     check: Check::Case(liquefaction),
 };
 
@@ -52,88 +54,153 @@ pub static GAS_DENSITY_AT_COLD: Rule = Rule {
 };
 
 fn liquefaction(case: &Case<'_>, findings: &mut Findings) {
-    let gas = &case.duty.gas;
-    let Some(lowest) = gas.lowest.as_ref() else { return };
-    let Some(filling) = gas.level(Level::Filling) else { return };
-    if let Err(fault) = &filling.density {
-        return refused(findings, filling, *fault);
-    }
-    let condenses = |level: Level| {
-        let state = gas.level(level)?;
-        let (dew, _) = state.dew_point.as_ref()?;
-        (lowest.value.si() < dew.value.si()).then_some(state)
-    };
-    let stated = |level: Level| gas.level(level).is_some();
-    let locked_out = condenses(Level::Minimum);
-    let alarmed = condenses(Level::Alarm);
-    let liquid = condenses(Level::Filling);
-    let finding = match (locked_out, alarmed, liquid) {
-        (Some(state), _, _) => begin(findings, &GAS_LIQUEFACTION, case, state, "below it in the cold: lockout"),
-        (None, Some(state), _) => begin(findings, &GAS_DENSITY_AT_COLD, case, state, "the alarm stands in the cold"),
-        (None, None, Some(state)) => {
-            let finding = begin(findings, &GAS_LIQUEFACTION, case, state, "condenses in the cold");
-            if stated(Level::Alarm) || stated(Level::Minimum) {
-                finding.kind(FindingKind::Remark);
-            }
-            finding
+    for gas in [&case.duty.gas, &case.duty.other_gas] {
+        let (Some(medium), Some(filling)) = (&gas.medium, gas.level(Level::Filling)) else { continue };
+        if let Err(fault) = &filling.density {
+            refused(findings, filling, *fault);
+            continue;
         }
-        (None, None, None) => return,
-    };
-    tell(case, finding);
+        let Some(lowest) = gas.lowest.as_ref() else { continue };
+        match medium {
+            Medium::Pure(_) => pure(case, gas, lowest.value, findings),
+            Medium::Mixture(_) => mixture(case, gas, lowest.value, findings),
+        }
+    }
 }
 
-/// The claim, graded by the level that is left.
-fn begin<'f>(
-    findings: &'f mut Findings,
-    rule: &'static Rule,
-    case: &Case<'_>,
-    state: &LevelState,
-    label: &str,
-) -> &'f mut Finding {
-    let gas = &case.duty.gas;
-    let dew = |level: Level| gas.level(level).and_then(|s| s.dew_point.as_ref());
-    let lowest = gas.lowest.as_ref().map_or_else(String::new, |l| celsius(l.value));
-    let filling = gas.level(Level::Filling).map_or("", |f| f.written.as_str());
-    let (from, phase) =
-        dew(Level::Filling).map_or((String::new(), Phase::Liquid), |(d, c)| (celsius(d.value), c.phase));
+/// A pure gas keeps its minimum functional density down to the dew point of that level.
+fn pure(case: &Case<'_>, gas: &GasDuty, lowest: ThermodynamicTemperature, findings: &mut Findings) {
+    let condenses = |level: Level| {
+        let state = gas.level(level)?;
+        let dew = state.dew_point.as_ref()?;
+        (lowest.si() < dew.figure.value.si()).then_some((state, dew))
+    };
+    let found = if let Some(found) = condenses(Level::Minimum) {
+        Some((&GAS_LIQUEFACTION, found, FindingKind::Shortfall, "below it in the cold: lockout"))
+    } else if let Some(found) = condenses(Level::Alarm) {
+        Some((&GAS_DENSITY_AT_COLD, found, FindingKind::Caution, "the alarm stands in the cold"))
+    } else {
+        let only_filling = gas.levels.len() == 1;
+        let kind = if only_filling { FindingKind::Shortfall } else { FindingKind::Remark };
+        condenses(Level::Filling).map(|found| (&GAS_LIQUEFACTION, found, kind, "condenses in the cold"))
+    };
+    let Some((rule, (state, dew), kind, label)) = found else { return };
+    let filling = gas.level(Level::Filling).map_or("", |filling| filling.written.as_str());
+    let (from, phase) = gas
+        .level(Level::Filling)
+        .and_then(|filling| filling.dew_point.as_ref())
+        .map_or((String::new(), Phase::Liquid), |dew| (dew.figure.working.result.clone(), dew.phase));
     let becomes = if phase == Phase::Frost { "come down as frost" } else { "liquefy" };
-    let own = state.dew_point.as_ref().map_or_else(String::new, |(dew, _)| celsius(dew.value));
+    let cold = celsius(lowest);
     let message = match state.level {
         Level::Filling => {
-            format!("SF6 filled to {filling} begins to {becomes} at {from}, and the site goes down to {lowest}")
+            format!("{} filled to {filling} begins to {becomes} at {from}, and the site goes down to {cold}", gas.name)
         }
         level => format!(
-            "SF6 filled to {filling} begins to {becomes} at {from}; at {lowest} the vapour that is left stands below the {} {}, \
-             which is reached at {own}",
+            "{} filled to {filling} begins to {becomes} at {from}; at {cold} the vapour that is left stands below the {} {}, which is \
+             reached at {}",
+            gas.name,
             level.word(),
-            state.written
+            state.written,
+            dew.figure.working.result
         ),
     };
     let finding = findings.add(rule, state.place, message);
-    finding.label(label).stated(state.written.as_str());
-    finding
+    finding.kind(kind).label(label).stated(state.written.as_str());
+    tell(case, gas, finding);
 }
 
+/// Mixtures condense a little of their heaviest gas at a time, so only the filling counts, as surely as its dew point is known.
+fn mixture(case: &Case<'_>, gas: &GasDuty, lowest: ThermodynamicTemperature, findings: &mut Findings) {
+    let Some((state, dew)) = gas.level(Level::Filling).and_then(|s| s.dew_point.as_ref().map(|dew| (s, dew))) else {
+        return;
+    };
+    let (cold, warm) = match dew.certainty {
+        Certainty::Estimate { cold, warm } => (cold.si(), warm.si()),
+        _ => (dew.figure.value.si() - MODEL_ACCURACY, dew.figure.value.si() + MODEL_ACCURACY),
+    };
+    if lowest.si() >= warm {
+        return;
+    }
+    let short = lowest.si() < cold;
+    let shown = &dew.figure.working.result;
+    let verdict = if short { "and the site goes down to" } else { "too close to tell from the site's" };
+    let message =
+        format!("{} filled to {} begins to liquefy at {shown}, {verdict} {}", gas.name, state.written, celsius(lowest));
+    let finding = findings.add(&GAS_LIQUEFACTION, state.place, message);
+    finding.kind(if short { FindingKind::Shortfall } else { FindingKind::Caution });
+    finding
+        .label(if short { "condenses in the cold" } else { "may condense in the cold" })
+        .stated(state.written.as_str());
+    if matches!(dew.certainty, Certainty::Estimate { .. }) {
+        finding.working(format!(
+            "{shown}: from the rule of partial pressures to the model without interaction of the gases"
+        ));
+    }
+    if dew.phase == Phase::Frost {
+        finding.working(
+            "below the triple point of the gas that condenses it comes down as frost, a little warmer than this",
+        );
+    }
+    tell(case, gas, finding);
+    if matches!(dew.certainty, Certainty::Estimate { .. }) {
+        finding.working("the lowest temperature that the bidder declares and proves decides");
+    }
+    unseen(gas, state, lowest, findings);
+}
+
+/// A mixture that condenses is not seen by its monitor.
+pub static CONDENSATION_UNSEEN: Rule = Rule {
+    name: "condensation-unseen",
+    title: "Where a mixture condenses in the cold, something other than its pressure tells of it.",
+    kind: FindingKind::Caution,
+    basis: "Peng-Robinson equation at constant volume; common practice",
+    formula: "share of the heaviest gas that is liquid, and the pressure beside that of the gas alone",
+    explanation: "What condenses of a mixture is mostly its insulating gas, while the pressure and the density follow the buffer gas: \
+                  with a third of it liquid the pressure may be only a few percent low, and no alarm comes. Said beside \
+                  gas-liquefaction wherever a mixture condenses at the lowest temperature.",
+    check: Check::Elsewhere,
+};
+
+fn unseen(gas: &GasDuty, state: &LevelState, lowest: ThermodynamicTemperature, findings: &mut Findings) {
+    let (Some(liquid), Some(Medium::Mixture(mixture))) = (&gas.mixture_state, &gas.medium) else { return };
+    let Some(alone) = state.density.as_ref().ok().and_then(|d| mixture.pressure(d.value, lowest).ok()) else { return };
+    let low = 1.0 - liquid.pressure.si() / alone.si();
+    let message = format!(
+        "at {} {} of the heaviest gas of {} is liquid, while the pressure is only {} % below that of the gas: no monitor sees it",
+        celsius(lowest),
+        percent(liquid.condensed_share),
+        gas.name,
+        rounded(low.max(0.0) * 100.0, 1)
+    );
+    findings
+        .add(&CONDENSATION_UNSEEN, state.place, message)
+        .label("condenses unseen")
+        .working(format!("{} with liquid, {} as gas", absolute(liquid.pressure), absolute(alone)))
+        .advice("ask for the proof of the ratings at the lowest temperature, and for supervision by temperature");
+}
+
+/// How close the model of mixtures comes, K (gas basis: within 0.6 K of the reference mixtures, rounded up).
+const MODEL_ACCURACY: f64 = 1.0;
+
 /// The numbers behind it, and what would do.
-fn tell(case: &Case<'_>, finding: &mut Finding) {
-    let gas = &case.duty.gas;
+fn tell(case: &Case<'_>, gas: &GasDuty, finding: &mut Finding) {
     for state in &gas.levels {
-        if let Some((dew, _)) = &state.dew_point {
-            finding.working(format!(
-                "dew point of the {}, {}: {}",
-                state.level.word(),
-                state.written,
-                celsius(dew.value)
-            ));
+        if let Some(dew) = &state.dew_point {
+            let (level, result) = (state.level.word(), &dew.figure.working.result);
+            finding.working(format!("dew point of the {level}, {}: {result}", state.written));
         }
     }
-    if let (Some(condensed), Some(remaining), Some(lowest)) = (&gas.condensed, &gas.remaining, &gas.lowest) {
-        finding.working(format!(
-            "at {} {} of the gas is condensed, and the vapour left stands for {}",
-            celsius(lowest.value),
-            percent(condensed.value.value),
-            remaining.working.result
-        ));
+    if let (Some(condensed), Some(lowest)) = (&gas.condensed, &gas.lowest) {
+        let left = gas
+            .remaining
+            .as_ref()
+            .map_or_else(String::new, |left| format!(", and the vapour left stands for {}", left.working.result));
+        let share = percent(condensed.value.value);
+        finding.working(format!("at {} {share} of the gas is condensed{left}", celsius(lowest.value)));
+        if lowest.working.formula != "as stated" {
+            finding.working(lowest.working.to_string());
+        }
     }
     if let Some(ambient) = crate::duty::lowest_ambient(case) {
         finding.beside(ambient.statement, "the lowest ambient temperature");
@@ -141,19 +208,48 @@ fn tell(case: &Case<'_>, finding: &mut Finding) {
     let mut advice = Vec::new();
     if let Some(highest) = &gas.highest_filling {
         finding.needed(format!("at most {}", highest.working.result));
-        advice.push(format!("the highest filling of SF6 that does not condense there is {}", highest.working.result));
+        advice.push(format!(
+            "the highest filling of {} that does not condense there is {}",
+            gas.name, highest.working.result
+        ));
     }
-    let decisive = gas.level(Level::Minimum).or_else(|| gas.level(Level::Filling)).and_then(|s| s.dew_point.as_ref());
-    if let (Some((dew, _)), Some(lowest)) = (decisive, &gas.lowest) {
-        let rise = dew.value.si() - lowest.value.si();
+    let decisive = gas
+        .level(Level::Minimum)
+        .filter(|_| matches!(gas.medium, Some(Medium::Pure(_))))
+        .or_else(|| gas.level(Level::Filling))
+        .and_then(|state| state.dew_point.as_ref());
+    if let (Some(dew), Some(lowest)) = (decisive, &gas.lowest) {
+        let rise = dew.figure.value.si() - lowest.value.si();
         if rise > 0.0 {
-            advice.push(format!("heaters would have to keep the gas {} K above the air", significant(rise.ceil(), 3)));
+            let rise = significant(rise.ceil(), 3);
+            advice.push(format!("heaters would have to keep the gas {rise} K warmer than that"));
         }
     }
     if finding.kind < FindingKind::Excess {
-        advice.push("a mixture or another medium is the third way".to_owned());
+        let thinner = thinner_mixture(gas).map_or_else(String::new, |mixture| {
+            format!(
+                " ({mixture} to the same filling does not condense there; the ratings are then those with the mixture)"
+            )
+        });
+        advice.push(format!("another mixture or medium is the third way{thinner}"));
     }
     finding.advice(advice.join("; "));
+}
+
+/// The richest mixture of SF6 with nitrogen that takes the place of pure SF6 at the same filling without condensing, in steps of 5 %.
+fn thinner_mixture(gas: &GasDuty) -> Option<String> {
+    let (lowest, filling) = (gas.lowest.as_ref()?.value.si(), gas.level(Level::Filling)?);
+    if gas.name != "SF6" {
+        return None;
+    }
+    let reference = ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE);
+    (1..20).rev().map(|twentieths| 5 * twentieths).find_map(|percent| {
+        let share = f64::from(percent) / 100.0;
+        let mixture = GasMixture::of(&[("SF6", share), ("N2", 1.0 - share)])?;
+        let volume = mixture.molar_volume(filling.pressure, reference).ok()?;
+        let dry = mixture.dew_point(volume).is_none_or(|dew| dew.si() + MODEL_ACCURACY <= lowest);
+        dry.then(|| format!("SF6 {percent} % + N2 {} %", 100 - percent))
+    })
 }
 
 /// A filling of which nothing can be told: the bound that was left is named.
@@ -277,7 +373,9 @@ fn with_reference(reading: &QuantityReading, word: &str) -> String {
 
 /// The dew point of SF6 filled to a pressure at 20 degC, where that is the gas.
 fn dew_of(case: &Case<'_>, pressure: Pressure) -> Option<String> {
-    case.duty.gas.levels.first()?;
+    let Some(Medium::Pure(_)) = &case.duty.gas.medium.as_ref().filter(|_| case.duty.gas.name == "SF6") else {
+        return None;
+    };
     let density = sf6().density(pressure, ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE)).ok()?;
     sf6().dew_point(density).ok().map(|dew| celsius(dew.temperature))
 }
@@ -314,10 +412,9 @@ fn hot(case: &Case<'_>, findings: &mut Findings) {
     let message = format!("the site goes up to {}, and the gas pressure there is not stated", highest.measure);
     let finding = findings.add(&GAS_PRESSURE_HOT, filling.value, message);
     finding.label("pressure in the heat is missing").beside(highest.statement, "the highest ambient temperature");
-    let density = case.duty.gas.level(Level::Filling).and_then(|state| state.density.as_ref().ok());
-    let pressure = density.and_then(|density| sf6().pressure(density.value, highest.value).ok());
+    let pressure = case.duty.gas.curve(Level::Filling, &[highest.value]).first().map(|(_, pressure)| *pressure);
     if let Some(pressure) = pressure {
-        let text = format!("{} MPa abs", significant(pressure.si() / 1e6, 3));
+        let text = absolute(pressure);
         finding.needed(text.as_str()).working(format!("pressure of the filling at {}: {text}", highest.measure));
         let label = breaker::GAS_PRESSURE_AT_HIGHEST_AMBIENT.label;
         finding.edit(format!("state {text}"), case.sheet.end, format!("\n    {label}: {text}"));
@@ -436,6 +533,8 @@ mod tests {
         assert!(finding.message.contains("-26.2 degC") && finding.message.contains("-42 degC"), "{}", finding.message);
         let advice = finding.advice.expect("advice");
         assert!(advice.contains("0.416 MPa abs") && advice.contains("12 K"), "{advice}");
+        // SF6/N2 60/40 filled to 0.7 MPa abs condenses from -43.2 degC (gas basis), a degree colder than the site, so 60 % will do.
+        assert!(advice.contains("SF6 60 % + N2 40 %"), "{advice}");
     }
 
     #[test]
@@ -447,9 +546,76 @@ mod tests {
 
     #[test]
     fn other_media_are_not_judged_by_sf6() {
-        for gas in ["N2", "SF6 60 % + N2 40 %", "none", "free", "SF6 or N2"] {
+        for gas in ["N2", "dry air", "none", "free", "SF6 or N2", "SF6 + N2"] {
             cold("-40 degC").set("breaker", "insulating gas", gas).silent("gas-liquefaction");
         }
+    }
+
+    fn filled(gas: &str, filling: &str, lowest: &str) -> Bay {
+        cold(lowest).set("breaker", "insulating gas", gas).set("breaker", FILLING, filling)
+    }
+
+    /// SF6/N2 60/40 filled to 0.7 MPa abs condenses from -43.2 degC (gas basis, section 2.2); the model is good to 1 K.
+    #[test]
+    fn of_a_mixture_only_the_filling_counts() {
+        let bay = |lowest: &str| filled("SF6 60 % + N2 40 %", "0.70 MPa abs", lowest);
+        let finding = bay("-45 degC").one("gas-liquefaction");
+        assert_eq!(finding.kind, FindingKind::Shortfall);
+        assert!(finding.message.contains("-43 degC"), "{}", finding.message);
+        assert_eq!(bay("-43.5 degC").one("gas-liquefaction").kind, FindingKind::Caution);
+        bay("-42 degC").silent("gas-liquefaction");
+        bay("-42 degC").silent("condensation-unseen");
+        // CO2 with 30 % O2 is far from its dew point.
+        filled("CO2 70 % + O2 30 %", "0.8 MPa abs", "-40 degC").silent("gas-liquefaction");
+    }
+
+    /// 6 % C4F7N in CO2 at 0.7 MPa abs: -28.5 degC by the trade's rule, -25.3 without interaction (gas basis, section 2.3).
+    #[test]
+    fn an_estimate_is_told_as_a_band() {
+        let bay = |lowest: &str| filled("C4F7N 6 % + CO2 94 %", "0.70 MPa abs", lowest);
+        bay("-25 degC").silent("gas-liquefaction");
+        let caution = bay("-27 degC").one("gas-liquefaction");
+        assert_eq!(caution.kind, FindingKind::Caution);
+        assert!(caution.message.contains("-28 to -25 degC (estimate)"), "{}", caution.message);
+        assert_eq!(bay("-29 degC").one("gas-liquefaction").kind, FindingKind::Shortfall);
+    }
+
+    /// At -35 degC a third of the C4F7N is liquid while the pressure is 2.5 % low (gas basis, fact 4).
+    #[test]
+    fn a_monitor_does_not_see_a_mixture_condensing() {
+        let finding = filled("C4F7N 6 % + CO2 94 %", "0.70 MPa abs", "-35 degC").one("condensation-unseen");
+        // The pressure is held against the virial gas here, so that it is 2.2 % low.
+        assert!(finding.message.contains("34.9 %") && finding.message.contains("2.2 %"), "{}", finding.message);
+        cold("-45 degC").silent("condensation-unseen");
+    }
+
+    #[test]
+    fn carbon_dioxide_and_a_second_compartment() {
+        // CO2 filled to 1.0 MPa abs condenses from about -48 degC.
+        filled("CO2", "1.0 MPa abs", "-47 degC").silent("gas-liquefaction");
+        assert_eq!(
+            filled("CO2", "1.0 MPa abs", "-50 degC")
+                .without("breaker", ALARM)
+                .without("breaker", MINIMUM)
+                .one("gas-liquefaction")
+                .kind,
+            FindingKind::Shortfall
+        );
+        let tank = cold("-35 degC")
+            .set("breaker", "insulating gas", "none")
+            .without("breaker", FILLING)
+            .without("breaker", ALARM)
+            .without("breaker", MINIMUM)
+            .set("breaker", "other compartments gas", "SF6")
+            .set("breaker", "other compartments filling pressure", "0.65 MPa abs");
+        assert_eq!(tank.one("gas-liquefaction").kind, FindingKind::Shortfall);
+        tank.set("site", "lowest ambient", "-28 degC").silent("gas-liquefaction");
+    }
+
+    #[test]
+    fn frost_is_called_frost() {
+        let finding = filled("SF6", "0.30 MPa abs", "-60 degC").without("breaker", ALARM).without("breaker", MINIMUM);
+        assert!(finding.one("gas-liquefaction").message.contains("frost"));
     }
 
     #[test]

@@ -12,6 +12,7 @@ use crate::source::Place;
 
 pub mod auxiliary;
 pub mod bay_current;
+pub mod climate;
 pub mod completeness;
 pub mod continuous_current;
 pub mod dc_component;
@@ -20,7 +21,9 @@ pub mod earthing;
 pub mod excess;
 pub mod fault_duties;
 pub mod gas;
+pub mod gas_law;
 pub mod insulation_details;
+pub mod insulation_site;
 pub mod making;
 pub mod mechanical;
 pub mod reading;
@@ -167,6 +170,7 @@ pub fn standard() -> Vec<&'static Rule> {
         statements::ALL,
         completeness::ALL,
         voltage::ALL,
+        insulation_site::ALL,
         insulation_details::ALL,
         continuous_current::ALL,
         bay_current::ALL,
@@ -183,6 +187,8 @@ pub fn standard() -> Vec<&'static Rule> {
         times::ALL,
         timing::ALL,
         gas::ALL,
+        climate::ALL,
+        gas_law::ALL,
         auxiliary::ALL,
         mechanical::ALL,
         standards_cited::ALL,

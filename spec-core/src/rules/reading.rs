@@ -66,7 +66,7 @@ reading_rules! {
     LINK_NEEDED = "link-needed", Omission, "Where several systems, sites or breakers are in reach, the heading says which is meant.",
         "With one in reach the link may be left out. With several, what hangs on the link is not checked until it is there.";
     CIRCLE = "circle", Contradiction, "No sheet takes over from itself, and no file uses itself, by any way round.",
-        "The link that closes the circle is left out and the rest is still checked.";
+        "The link that closes the circle is left out and the rest is still checked. A chain of more than 100 sheets is cut too.";
     USE_UNREADABLE = "use-unreadable", Contradiction, "A file that is used can be had.",
         "Paths are relative, with /, and lead nowhere outside of the folder that the checker was given.";
     GAS_SHARES = "gas-shares", Contradiction, "The shares of a gas mixture add up to 100 %.",

@@ -12,7 +12,7 @@ use crate::standards::{PreferredCurrents, RatingSeries, rated_at_or_above, steps
 pub static ALL: &[&Rule] = &[&BUS_DUTY, &COUPLER_CURRENT, &SPARE_ENVELOPE, &COPIED_BAY, &SYSTEM_MISMATCH, &SPLIT_BUS];
 
 /// The other breakers on the system of this one.
-fn neighbours<'a>(case: &'a Case<'_>) -> Vec<(&'a Sheet, Facts)> {
+fn neighbours<'a>(case: &'a Case<'_>) -> Vec<(&'a Sheet, &'a Facts)> {
     let Some(system) = case.sheet.target("on") else { return Vec::new() };
     case.set
         .of_kind(SheetKind::Breaker)
@@ -131,7 +131,7 @@ pub static SPARE_ENVELOPE: Rule = Rule {
 
 fn spare(case: &Case<'_>, findings: &mut Findings) {
     let named = case.breaker.list(&breaker::SPARE_FOR);
-    let others: Vec<(&Sheet, Facts)> = match &named {
+    let others: Vec<(&Sheet, &Facts)> = match &named {
         Some((items, _)) => case
             .set
             .in_reach(case.sheet.file(), SheetKind::Breaker)
@@ -291,7 +291,7 @@ fn wrong_system<'a>(case: &'a Case<'_>) -> Option<WrongSystem<'a>> {
     }
     let other = case.set.in_reach(case.sheet.file(), SheetKind::System).find(|sheet| {
         let facts = case.set.facts(sheet.id);
-        highest_voltage(&facts).is_some_and(|highest| {
+        highest_voltage(facts).is_some_and(|highest| {
             rated_at_or_above(highest.value, &families).is_some_and(|r| (r.si() / rated.value.si() - 1.0).abs() < EQUAL)
         })
     });

@@ -39,7 +39,7 @@ fn lists(set: &Set) -> Vec<Cited<'_>> {
 }
 
 /// The breakers for which a list holds: of a tender those without a list of their own, else those that state or take it over.
-fn breakers_of(set: &Set, list: &Cited<'_>) -> Vec<Facts> {
+fn breakers_of<'a>(set: &'a Set, list: &Cited<'_>) -> Vec<&'a Facts> {
     set.of_kind(SheetKind::Breaker)
         .filter_map(|sheet| {
             let facts = set.facts(sheet.id);
@@ -200,10 +200,11 @@ pub static UNDATED_STANDARD: Rule = Rule {
 fn editions(set: &Set, _: &Policy, findings: &mut Findings) {
     for list in lists(set) {
         let tender = set.in_reach(list.sheet.file(), SheetKind::Tender).next();
-        let facts = tender.map(|sheet| set.facts(sheet.id)).unwrap_or_default();
+        let facts = tender.map(|sheet| set.facts(sheet.id));
         let without: Vec<&Item> = list.items.iter().filter(|item| undated(item)).collect();
         let Some(first) = without.first() else { continue };
-        if let Some(("latest edition", reference)) = facts.word(&tender::REFERENCE_DATE_OF_STANDARDS) {
+        let day = facts.and_then(|facts| facts.word(&tender::REFERENCE_DATE_OF_STANDARDS));
+        if let Some(("latest edition", reference)) = day {
             let message = format!("the latest edition of {} is another one when the breaker is tested", first.text);
             findings
                 .add(&UNDATED_STANDARD, reference.value, message)
@@ -214,7 +215,7 @@ fn editions(set: &Set, _: &Policy, findings: &mut Findings) {
                 .replace_by("tender date");
             continue;
         }
-        if facts.mentions(&tender::REFERENCE_DATE_OF_STANDARDS) {
+        if facts.is_some_and(|facts| facts.mentions(&tender::REFERENCE_DATE_OF_STANDARDS)) {
             continue;
         }
         let others = if without.len() > 1 { format!(" and {} more", without.len() - 1) } else { String::new() };

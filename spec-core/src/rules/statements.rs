@@ -305,13 +305,13 @@ fn bounds(set: &Set, _: &Policy, findings: &mut Findings) {
         }
         let facts = set.facts(sheet.id);
         for statement in &sheet.statements {
-            opposite_bounds(&facts, statement, findings);
+            opposite_bounds(facts, statement, findings);
         }
         if sheet.kind == SheetKind::Site {
-            ambients(&facts, &site::LOWEST_AMBIENT, &site::HIGHEST_AMBIENT, findings);
+            ambients(facts, &site::LOWEST_AMBIENT, &site::HIGHEST_AMBIENT, findings);
         }
         if sheet.kind == SheetKind::Breaker {
-            ambients(&facts, &breaker::LOWEST_SERVICE_TEMPERATURE, &breaker::HIGHEST_SERVICE_TEMPERATURE, findings);
+            ambients(facts, &breaker::LOWEST_SERVICE_TEMPERATURE, &breaker::HIGHEST_SERVICE_TEMPERATURE, findings);
         }
     }
 }

@@ -127,31 +127,21 @@ impl Bay {
 
     /// The same without a label in the first sheet of a kind.
     pub fn without(self, sheet: &str, label: &str) -> Self {
-        let mut inside = false;
-        let mut found = false;
-        let mut seen = false;
-        let kept: Vec<&str> = self
-            .text
-            .lines()
-            .filter(|line| {
-                if !line.starts_with(' ') {
-                    let this = line.split_whitespace().next() == Some(sheet);
-                    inside = this && !seen;
-                    seen |= this;
-                }
-                let hit = inside && line.trim_start().strip_prefix(label).is_some_and(|rest| rest.starts_with(':'));
-                found |= hit;
-                !hit
-            })
-            .collect();
-        assert!(found, "no {label} in {sheet}");
-        Self { text: kept.join("\n") + "\n" }
+        let lines = self.text.lines().count();
+        let bay = self
+            .dropping(sheet, |line| line.trim_start().strip_prefix(label).is_some_and(|rest| rest.starts_with(':')));
+        assert!(bay.text.lines().count() < lines, "no {label} in {sheet}");
+        bay
     }
 
     /// The same without a whole sheet: the first of its kind.
     pub fn without_sheet(self, sheet: &str) -> Self {
-        let mut inside = false;
-        let mut seen = false;
+        self.dropping(sheet, |_| true)
+    }
+
+    /// The same without those lines of the first sheet of a kind, its heading among them, that `drop` picks.
+    fn dropping(self, sheet: &str, drop: impl Fn(&str) -> bool) -> Self {
+        let (mut inside, mut seen) = (false, false);
         let kept: Vec<&str> = self
             .text
             .lines()
@@ -161,7 +151,7 @@ impl Bay {
                     inside = this && !seen;
                     seen |= this;
                 }
-                !inside
+                !(inside && drop(line))
             })
             .collect();
         Self { text: kept.join("\n") + "\n" }

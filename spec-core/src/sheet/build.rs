@@ -1,6 +1,8 @@
 //! From lines to sheets.
 
-use firstpole_grammar::{Heading, Line, LineKind, Look, Name, Particular as WrittenParticular, Span, ValueForm, ValueText};
+use firstpole_grammar::{
+    Heading, Line, LineKind, Look, Name, Particular as WrittenParticular, Span, ValueForm, ValueText,
+};
 
 use super::read_value::Reader;
 use super::{OwnLine, Reading, Set, Sheet, SheetId, Statement, link, name_of};
@@ -22,7 +24,8 @@ pub fn build(sources: &mut Sources, loader: &dyn Loader, rule_names: &[&'static 
     // Files that `use` brings in are appended, and so are read in turn.
     while let Some(file) = sources.file(FileId(next)).cloned() {
         let id = FileId(next);
-        let mut reader = FileReader { id, file: &file, findings, sheets: &mut set.sheets, current: None, silent: false };
+        let mut reader =
+            FileReader { id, file: &file, findings, sheets: &mut set.sheets, current: None, silent: false };
         let paths = reader.read();
         for (path, place) in paths {
             match load(sources, loader, &file.name, &path) {
@@ -74,7 +77,7 @@ impl FileReader<'_> {
                 first = first.or(Some(line));
             }
             match &line.kind {
-                LineKind::Blank => continue,
+                LineKind::Blank => {}
                 LineKind::Edition { number, span } => {
                     let place = self.place(line, *span);
                     let is_first = first.is_some_and(|f| std::ptr::eq(f, line));
@@ -168,7 +171,11 @@ impl FileReader<'_> {
             Some(kind) => kind,
             None => match nearest_kind(&heading.kind) {
                 Some(near) => {
-                    let message = format!("no sheet is called {}; {} is near, and the lines below are read so", heading.kind, near.word());
+                    let message = format!(
+                        "no sheet is called {}; {} is near, and the lines below are read so",
+                        heading.kind,
+                        near.word()
+                    );
                     self.findings
                         .add(&rules::UNKNOWN_SHEET, kind_place, message)
                         .label("not a kind of sheet")
@@ -178,8 +185,7 @@ impl FileReader<'_> {
                 None => return self.missing_colon(line, heading),
             },
         };
-        let links: Vec<_> =
-            heading.links.iter().map(|link| (link.clone(), self.place(line, link.name.span))).collect();
+        let links: Vec<_> = heading.links.iter().map(|link| (link.clone(), self.place(line, link.name.span))).collect();
         self.open(line, kind, kind_place, heading.name.as_ref(), links.clone());
         self.check_links(line, kind, heading);
     }
@@ -197,7 +203,8 @@ impl FileReader<'_> {
             })
         });
         let sheet = self.sheet().map(|sheet| sheet.kind);
-        let finding = self.findings.add(&rules::UNREADABLE_LINE, place, firstpole_grammar::Fault::MissingColon.sentence());
+        let finding =
+            self.findings.add(&rules::UNREADABLE_LINE, place, firstpole_grammar::Fault::MissingColon.sentence());
         finding.label("neither a heading nor a particular");
         if let (Some(count), Some(kind)) = (label, sheet) {
             let words: Vec<&str> = text.split_whitespace().collect();
@@ -207,14 +214,29 @@ impl FileReader<'_> {
             // The label is known to be meant, so no rule shall call it missing.
             if let Lookup::Found(found) = particular::find(kind, &label) {
                 let (particular, about, limit) = Statement::of(&found);
-                let statement =
-                    Statement { particular, about, limit, label: place, wording: label.clone(), value: place, reading: Reading::Unknown, chosen: None };
+                let statement = Statement {
+                    particular,
+                    about,
+                    limit,
+                    label: place,
+                    wording: label.clone(),
+                    value: place,
+                    reading: Reading::Unknown,
+                    chosen: None,
+                };
                 self.keep(line, statement);
             }
         }
     }
 
-    fn open(&mut self, line: &Line, kind: SheetKind, kind_place: Place, name: Option<&Name>, links: Vec<(firstpole_grammar::Link, Place)>) {
+    fn open(
+        &mut self,
+        line: &Line,
+        kind: SheetKind,
+        kind_place: Place,
+        name: Option<&Name>,
+        links: Vec<(firstpole_grammar::Link, Place)>,
+    ) {
         let heading = self.place(line, Span::new(0, line.len));
         let start = kind_place.span.start;
         let end = links
@@ -287,8 +309,16 @@ impl FileReader<'_> {
             Lookup::Found(found) => {
                 let (particular, about, limit) = Statement::of(&found);
                 let reading = self.value(particular, about, value_place, &written.value);
-                let statement =
-                    Statement { particular, about, limit, label: label_place, wording: written.label.clone(), value: value_place, reading, chosen: None };
+                let statement = Statement {
+                    particular,
+                    about,
+                    limit,
+                    label: label_place,
+                    wording: written.label.clone(),
+                    value: value_place,
+                    reading,
+                    chosen: None,
+                };
                 self.keep(line, statement);
             }
             Lookup::Refused { symbol, readings } => {
@@ -349,14 +379,19 @@ impl FileReader<'_> {
     fn keep(&mut self, line: &Line, statement: Statement) {
         let end = self.place(line, Span::new(line.len, line.len));
         let duration = statement.quantity().and_then(|quantity| {
-            let measure = quantity.lasting.filter(|_| statement.states(&breaker::RATED_SHORT_TIME_WITHSTAND_CURRENT))?;
+            let measure =
+                quantity.lasting.filter(|_| statement.states(&breaker::RATED_SHORT_TIME_WITHSTAND_CURRENT))?;
             let mut own = quantity.clone();
             own.measure = measure;
             own.second = None;
             own.lasting = None;
             own.again = Vec::new();
             own.qualifiers = Vec::new();
-            Some(Statement { particular: &breaker::RATED_DURATION_OF_SHORT_CIRCUIT, reading: Reading::Quantity(own), ..statement.clone() })
+            Some(Statement {
+                particular: &breaker::RATED_DURATION_OF_SHORT_CIRCUIT,
+                reading: Reading::Quantity(own),
+                ..statement.clone()
+            })
         });
         if let Some(sheet) = self.sheet() {
             sheet.statements.push(statement);

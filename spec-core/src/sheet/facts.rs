@@ -216,7 +216,9 @@ fn better<'a, Q: Physical>(
     larger: bool,
 ) -> Option<Stated<'a, Q>> {
     match (old, new) {
-        (Some(old), Some(new)) if (new.value.si() > old.value.si()) == larger && new.value.si() != old.value.si() => Some(new),
+        (Some(old), Some(new)) if (new.value.si() > old.value.si()) == larger && new.value.si() != old.value.si() => {
+            Some(new)
+        }
         (None, new) => new,
         (old, _) => old,
     }

@@ -54,6 +54,7 @@ pub(super) fn scope(files: usize, uses: &[(FileId, FileId, Place)], findings: &m
 
 /// Resolves the links of every sheet.
 pub(super) fn resolve(set: &mut Set, rule_names: &[&'static str], findings: &mut Findings) {
+    set.index_sheets();
     names_once(set, findings);
     let by_name = index(set);
     let mut resolved = Vec::with_capacity(set.sheets.len());
@@ -63,8 +64,11 @@ pub(super) fn resolve(set: &mut Set, rule_names: &[&'static str], findings: &mut
     for (sheet, targets) in set.sheets.iter_mut().zip(resolved) {
         sheet.targets = targets;
     }
-    cut_circles(set, findings);
+    for word in ["like", "through"] {
+        cut_chains(set, word, findings);
+    }
     defaults(set, findings);
+    set.index_links();
 }
 
 type Index = BTreeMap<(FileId, String), Vec<SheetId>>;
@@ -145,9 +149,14 @@ fn unknown(findings: &mut Findings, place: Place, what: &str, name: &str, near: 
     }
 }
 
+/// How many names an unknown one is compared with.
+const NAMES_COMPARED: usize = 1000;
+
 fn nearest<'a>(names: impl Iterator<Item = &'a str>, wanted: &str) -> Option<&'a str> {
     let wanted = wanted.to_lowercase();
+    // Enough for any text that a person reads; a text of a million names gets no proposal from its far end.
     names
+        .take(NAMES_COMPARED)
         .map(|name| (strsim::normalized_damerau_levenshtein(&name.to_lowercase(), &wanted), name))
         .filter(|(near, _)| *near >= 0.6)
         .max_by(|a, b| a.0.total_cmp(&b.0))
@@ -183,31 +192,61 @@ fn names_once(set: &Set, findings: &mut Findings) {
     }
 }
 
-/// A chain of `like` (or `through`) that comes back to its start is cut at the link that closes it.
-fn cut_circles(set: &mut Set, findings: &mut Findings) {
-    for word in ["like", "through"] {
-        for at in 0..set.sheets.len() {
-            let id = SheetId(at as u32);
-            let mut seen = vec![id];
-            let mut next = set.sheet(id).and_then(|sheet| sheet.target(word));
-            while let Some(target) = next {
-                if seen.contains(&target) {
-                    break;
-                }
-                seen.push(target);
-                next = set.sheet(target).and_then(|sheet| sheet.target(word));
+/// The longest chain of sheets that take over from each other.
+const LONGEST_CHAIN: usize = 100;
+
+/// A chain of `like` (or `through`) that comes back to itself is cut at the last of its links in the text, and one that is longer
+/// than anybody can follow is cut where it becomes so. Every sheet is visited once.
+fn cut_chains(set: &mut Set, word: &'static str, findings: &mut Findings) {
+    // How many sheets stand above each; nothing yet where that is not known.
+    let mut above: Vec<Option<usize>> = vec![None; set.sheets.len()];
+    let mut on_path = vec![false; set.sheets.len()];
+    for start in 0..set.sheets.len() {
+        let mut path = Vec::new();
+        let mut next = Some(SheetId(start as u32));
+        while let Some(id) = next {
+            let at = id.0 as usize;
+            if above.get(at).copied().flatten().is_some() {
+                break;
             }
-            // Only the circle that this sheet itself is part of, and only at its last member in the text.
-            if next == Some(id) && seen.iter().max() == Some(&id) {
-                if let Some(sheet) = set.sheets.get_mut(at) {
-                    sheet.targets.retain(|(w, _)| *w != word);
-                    let place = sheet.links.iter().find(|(link, _)| link.word == word).map_or(sheet.heading, |(_, place)| *place);
-                    let message = format!("{} comes back to itself through {word}; this link is left out", sheet.title());
-                    findings.add(&rules::CIRCLE, place, message).label("closes the circle");
+            if on_path.get(at).copied().unwrap_or(true) {
+                let mut circle = path.split_off(path.iter().position(|on| *on == id).unwrap_or(0));
+                if let Some(last) = circle.iter().max().copied() {
+                    cut(set, last, word, findings, "comes back to itself");
+                    // Turned so that the one that was cut is now the end of the chain.
+                    let after = circle.iter().position(|on| *on == last).map_or(0, |end| (end + 1) % circle.len());
+                    circle.rotate_left(after);
                 }
+                path.extend(circle);
+                break;
+            }
+            if let Some(mark) = on_path.get_mut(at) {
+                *mark = true;
+            }
+            path.push(id);
+            next = set.sheet(id).and_then(|sheet| sheet.target(word));
+        }
+        // From the far end back, so that what stands above is known first.
+        for id in path.into_iter().rev() {
+            let target = set.sheet(id).and_then(|sheet| sheet.target(word));
+            let depth = target.map_or(0, |t| above.get(t.0 as usize).copied().flatten().unwrap_or(0) + 1);
+            let too_long = depth > LONGEST_CHAIN;
+            if too_long {
+                cut(set, id, word, findings, "stands at the end of more than 100 sheets");
+            }
+            if let Some(slot) = above.get_mut(id.0 as usize) {
+                *slot = Some(if too_long { 0 } else { depth });
             }
         }
     }
+}
+/// Takes a link out of a sheet, and says why.
+fn cut(set: &mut Set, id: SheetId, word: &str, findings: &mut Findings, why: &str) {
+    let Some(sheet) = set.sheets.get_mut(id.0 as usize) else { return };
+    sheet.targets.retain(|(w, _)| *w != word);
+    let place = sheet.links.iter().find(|(link, _)| link.word == word).map_or(sheet.heading, |(_, place)| *place);
+    let message = format!("{} {why} through {word}; this link is left out", sheet.title());
+    findings.add(&rules::CIRCLE, place, message).label("left out");
 }
 
 /// Links that were left out: taken over through `like`, or the only sheet in reach.
@@ -234,7 +273,11 @@ fn defaults(set: &mut Set, findings: &mut Findings) {
                     let finding = findings.add(&rules::LINK_NEEDED, sheet.heading, message);
                     finding.label(format!("{word} ... is missing"));
                     for other in [first, second] {
-                        finding.edit(format!("write {word} {}", other.name), sheet.heading.end(), format!(" {word} {}", other.name));
+                        finding.edit(
+                            format!("write {word} {}", other.name),
+                            sheet.heading.end(),
+                            format!(" {word} {}", other.name),
+                        );
                     }
                 }
                 (None, None, _) => {}

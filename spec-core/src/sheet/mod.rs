@@ -12,6 +12,9 @@ pub use facts::{Facts, Stated};
 pub use link::{LinkTarget, Scope};
 pub use reading::{Class, Date, Item, Mixture, Pause, QuantityReading, Reading, Sequence, SequenceStep, Share};
 
+use std::collections::BTreeMap;
+use std::sync::OnceLock;
+
 use firstpole_grammar::{Link, Name};
 
 use crate::particular::{Found, Limit, Particular, SheetKind};
@@ -139,6 +142,17 @@ pub struct Set {
     pub sheets: Vec<Sheet>,
     /// Which files each file can refer to, itself first.
     pub scope: Scope,
+    index: Index,
+}
+
+/// Where sheets are found without looking through all of them.
+#[derive(Debug, Default)]
+struct Index {
+    by_kind: BTreeMap<SheetKind, Vec<SheetId>>,
+    by_file: BTreeMap<(FileId, SheetKind), Vec<SheetId>>,
+    pointing: BTreeMap<(SheetId, &'static str), Vec<SheetId>>,
+    /// What each sheet states, made when it is first asked for.
+    facts: Vec<OnceLock<Facts>>,
 }
 
 impl Set {
@@ -148,21 +162,46 @@ impl Set {
     }
 
     /// What a sheet states, with what it takes over through `like`, as rules ask for it.
-    pub fn facts(&self, id: SheetId) -> Facts {
-        Facts::new(self.resolved(id))
+    pub fn facts(&self, id: SheetId) -> &Facts {
+        static NONE: Facts = Facts::new(Vec::new());
+        let slot = self.index.facts.get(id.0 as usize);
+        slot.map_or(&NONE, |slot| slot.get_or_init(|| Facts::new(self.resolved(id))))
     }
 
     /// The sheets of one kind that `file` can refer to, in the order of the text, its own first.
     pub fn in_reach(&self, file: FileId, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
-        self.scope
-            .of(file)
-            .iter()
-            .flat_map(move |id| self.sheets.iter().filter(move |sheet| sheet.file() == *id && sheet.kind == kind))
+        let ids = self.scope.of(file).iter().filter_map(move |file| self.index.by_file.get(&(*file, kind)));
+        ids.flatten().filter_map(|id| self.sheet(*id))
     }
 
     /// The sheets of one kind.
     pub fn of_kind(&self, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
-        self.sheets.iter().filter(move |sheet| sheet.kind == kind)
+        self.index.by_kind.get(&kind).into_iter().flatten().filter_map(|id| self.sheet(*id))
+    }
+
+    /// The sheets whose link `word` points at `target`, in the order of the text.
+    pub fn pointing_at(&self, target: SheetId, word: &'static str) -> impl Iterator<Item = &Sheet> {
+        self.index.pointing.get(&(target, word)).into_iter().flatten().filter_map(|id| self.sheet(*id))
+    }
+
+    /// Takes the sheets into the index, as far as their kinds and files go.
+    fn index_sheets(&mut self) {
+        for sheet in &self.sheets {
+            self.index.by_kind.entry(sheet.kind).or_default().push(sheet.id);
+            self.index.by_file.entry((sheet.file(), sheet.kind)).or_default().push(sheet.id);
+        }
+    }
+
+    /// Takes the links into the index, once they are resolved.
+    fn index_links(&mut self) {
+        self.index.facts.resize_with(self.sheets.len(), OnceLock::new);
+        for sheet in &self.sheets {
+            for (word, target) in &sheet.targets {
+                if let LinkTarget::Sheet(target) = target {
+                    self.index.pointing.entry((*target, word)).or_default().push(sheet.id);
+                }
+            }
+        }
     }
 
     /// What a sheet states, with what it takes over through `like`: its own statements first, then those of the sheets that it

@@ -237,7 +237,7 @@ fn find_unit(reader: &mut Reader<'_>, words: &[Span], kind: &QuantityKind) -> Op
         None => {
             let text = first.of(reader.text);
             let near = nearest_unit(text, kind);
-            let message = format!("{text} is no unit that is known here; {} are", kind.units.join(", "));
+            let message = format!("{text} is no unit that is known here; in use are {}", kind.units.join(", "));
             let finding = reader.find(&rules::UNKNOWN_UNIT, place, message);
             finding.label("unknown unit").stated(text);
             if let Some(unit) = near {
@@ -261,7 +261,12 @@ fn nearest_unit(text: &str, kind: &QuantityKind) -> Option<&'static Unit> {
 fn unit_missing(reader: &mut Reader<'_>, amount: &Amount, kind: &QuantityKind) {
     let place = reader.at(amount.number.span);
     let number = amount.number.span.of(reader.text).to_owned();
-    let message = format!("{} {number} has no unit; {} is written with {}", reader.particular.label, word(kind), kind.units.join(" or "));
+    let message = format!(
+        "{} {number} has no unit; {} is written with {}",
+        reader.particular.label,
+        word(kind),
+        kind.units.join(" or ")
+    );
     let finding = reader.find(&rules::UNIT_MISSING, place, message);
     finding.label("unit is missing").stated(number.as_str());
     for unit in kind.units {
@@ -298,7 +303,12 @@ fn check_qualifier(reader: &mut Reader<'_>, reading: &QuantityReading, kind: &Qu
     let unit = reading.measure.unit.name;
     let number = reading.measure.number;
     let converted = crate::quantity::significant(number * factor, 3);
-    finding.working(format!("{} {unit} {} = {converted} {unit} {} for a sine wave", rounded(number, 3), other.word(), meant.word()));
+    finding.working(format!(
+        "{} {unit} {} = {converted} {unit} {} for a sine wave",
+        rounded(number, 3),
+        other.word(),
+        meant.word()
+    ));
     finding.edit(
         format!("write {converted} {unit} {}", meant.word()),
         place,
@@ -336,7 +346,10 @@ pub(super) fn comma_at(reader: &mut Reader<'_>, number: Number) {
     let readings = readings_of(&text);
     let message = match readings.as_slice() {
         [one] => format!("{text} is written with a comma; {one} is meant, if it is a decimal comma"),
-        _ => format!("{text} can be read as {}: a number is written with a decimal point and no comma", readings.join(" or as ")),
+        _ => format!(
+            "{text} can be read as {}: a number is written with a decimal point and no comma",
+            readings.join(" or as ")
+        ),
     };
     let finding = reader.find(&rules::DECIMAL_COMMA, place, message);
     finding.label("comma in a number").stated(text.as_str());
@@ -349,15 +362,16 @@ pub(super) fn comma_at(reader: &mut Reader<'_>, number: Number) {
 fn readings_of(text: &str) -> Vec<String> {
     let mut readings = Vec::new();
     let commas = text.matches(',').count();
-    if let Some((whole, fraction)) = text.rsplit_once(',').filter(|_| commas == 1) {
-        if !fraction.contains('.') {
-            readings.push(format!("{}.{fraction}", whole.replace('.', "")));
-        }
+    if let Some((whole, fraction)) = text.rsplit_once(',').filter(|_| commas == 1)
+        && !fraction.contains('.')
+    {
+        readings.push(format!("{}.{fraction}", whole.replace('.', "")));
     }
     let (before_point, _) = text.split_once('.').unwrap_or((text, ""));
     let mut groups = before_point.split(',');
     let first = groups.next().unwrap_or("").trim_start_matches(['-', '+', '−']);
-    let thousands = before_point.contains(',') && (1..=3).contains(&first.len()) && groups.all(|group| group.len() == 3);
+    let thousands =
+        before_point.contains(',') && (1..=3).contains(&first.len()) && groups.all(|group| group.len() == 3);
     if thousands && !first.starts_with('0') {
         readings.push(text.replace(',', ""));
     }

@@ -25,7 +25,7 @@ pub(super) struct Reader<'a> {
     pub text: &'a str,
 }
 
-impl<'a> Reader<'a> {
+impl Reader<'_> {
     /// Reads the value in the form of its particular.
     pub fn read(&mut self, value: &ValueText) -> Reading {
         match &value.form {
@@ -82,7 +82,17 @@ impl<'a> Reader<'a> {
     /// Whether the text only says that a value will come.
     fn is_placeholder(&self) -> bool {
         const WORDS: [&str; 12] = [
-            "later", "tbc", "tba", "tbd", "?", "??", "...", "to be confirmed", "to be advised", "to be agreed", "to be decided",
+            "later",
+            "tbc",
+            "tba",
+            "tbd",
+            "?",
+            "??",
+            "...",
+            "to be confirmed",
+            "to be advised",
+            "to be agreed",
+            "to be decided",
             "to be determined",
         ];
         // folded() reads a hyphen as a blank, so that a lone dash becomes nothing.
@@ -180,7 +190,9 @@ impl<'a> Reader<'a> {
     }
 
     fn classes(&mut self) -> Reading {
-        let Some(items) = self.accept(value::list(self.text), "classes such as C2, M2") else { return Reading::Unknown };
+        let Some(items) = self.accept(value::list(self.text), "classes such as C2, M2") else {
+            return Reading::Unknown;
+        };
         let mut classes = Vec::new();
         for item in items {
             let place = self.at(item.span);
@@ -249,7 +261,9 @@ impl<'a> Reader<'a> {
         if matches!(self.particular.kind, Kind::Gases) && folded(self.text) == "fluorinated gases" {
             return Reading::Words(vec!["fluorinated gases"]);
         }
-        let Some(gases) = self.accept(value::gases(self.text), "a gas by its formula, such as SF6 or CO2 70 % + O2 30 %") else {
+        let Some(gases) =
+            self.accept(value::gases(self.text), "a gas by its formula, such as SF6 or CO2 70 % + O2 30 %")
+        else {
             return Reading::Unknown;
         };
         let mut mixtures = Vec::new();

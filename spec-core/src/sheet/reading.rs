@@ -9,6 +9,7 @@ use crate::standards::GAUGE_REFERENCE;
 
 /// What was read of a value.
 #[derive(Clone, Debug, PartialEq)]
+#[allow(clippy::large_enum_variant, reason = "most readings are quantities, so a box would only add a step")]
 pub enum Reading {
     /// It could not be read; a finding says so, and rules that need it stay silent.
     Unknown,
@@ -155,7 +156,10 @@ impl QuantityReading {
     pub fn bounds(&self, limit: Limit, by_label: Option<Limit>) -> bool {
         self.is_range()
             || by_label == Some(limit)
-            || matches!((self.bound, limit), (Some(Bound::Least), Limit::Least) | (Some(Bound::Greatest), Limit::Greatest))
+            || matches!(
+                (self.bound, limit),
+                (Some(Bound::Least), Limit::Least) | (Some(Bound::Greatest), Limit::Greatest)
+            )
     }
 
     /// What it measures.
@@ -328,6 +332,21 @@ pub struct Share {
     pub gas: &'static str,
     /// Its mole fraction, 0 to 1; absent where the bidder is to state it.
     pub fraction: Option<f64>,
+}
+
+impl std::fmt::Display for Mixture {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        for (at, portion) in self.portions.iter().enumerate() {
+            if at > 0 {
+                f.write_str(" + ")?;
+            }
+            f.write_str(portion.gas)?;
+            if let Some(fraction) = portion.fraction {
+                write!(f, " {} %", crate::quantity::rounded(fraction * 100.0, 2))?;
+            }
+        }
+        Ok(())
+    }
 }
 
 impl Mixture {

@@ -139,6 +139,16 @@ mod tests {
     }
 
     #[test]
+    fn rows_are_in_order() {
+        for rating in [RatingSeries::Breaking, RatingSeries::Continuous] {
+            for regime in [Regime::Iec, Regime::Ieee] {
+                let rows: Vec<_> = ROWS.iter().filter(|row| (row.rating, row.regime) == (rating, regime)).collect();
+                assert!(rows.len() > 3 && rows.is_sorted_by(|a, b| a.ampere < b.ampere), "{rating:?} {regime:?}");
+            }
+        }
+    }
+
+    #[test]
     fn standard_durations() {
         assert!(is_duration(Time::from_si(3.0)));
         assert!(!is_duration(Time::from_si(5.0)));

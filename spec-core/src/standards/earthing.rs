@@ -25,3 +25,24 @@ pub fn out_of_phase_factor(effectively_earthed: bool) -> Option<f64> {
     let row = if effectively_earthed { OUT_OF_PHASE.first() } else { OUT_OF_PHASE.last() };
     row.map(|row| row.factor)
 }
+
+#[cfg(test)]
+pub(super) fn lengths() -> [(&'static str, &'static str, usize); 2] {
+    [
+        ("first-pole factors", include_str!("../../data/first_pole_factors.csv"), FIRST_POLE.len()),
+        ("out of phase", include_str!("../../data/out_of_phase.csv"), OUT_OF_PHASE.len()),
+    ]
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// The order of the rows is relied upon. IEC 56:1987 4.106 for out of phase (public digest).
+    #[test]
+    fn least_first() {
+        assert_eq!(first_pole_factors().collect::<Vec<_>>(), [1.2, 1.3, 1.5]);
+        assert_eq!(out_of_phase_factor(true), Some(2.0));
+        assert_eq!(out_of_phase_factor(false), Some(2.5));
+    }
+}

@@ -86,6 +86,23 @@ mod tests {
         assert!(rows.iter().any(|row| row.regime == Regime::Ieee && row.is_pair(kv(160.0), kv(350.0))));
     }
 
+    /// The rows of one rated voltage rise, and none stands twice.
+    #[test]
+    fn rows_of_one_voltage_are_in_order() {
+        let levels = insulation_levels();
+        for (at, row) in levels.iter().enumerate() {
+            assert!(row.up_kv > row.ud_kv && row.us_kv.is_none_or(|us| us < row.up_kv), "{row:?}");
+            let alike = |other: &&InsulationLevel| {
+                other.regime == row.regime && other.location == row.location && other.is_for(row.rated_voltage())
+            };
+            let values = |row: &InsulationLevel| [row.ud_kv, row.up_kv, row.us_kv.unwrap_or_default()];
+            for later in levels.iter().skip(at + 1).filter(alike) {
+                assert!(values(row).iter().zip(values(later)).all(|(a, b)| *a <= b), "{row:?}, {later:?}");
+                assert!(values(row) != values(later), "{row:?}");
+            }
+        }
+    }
+
     #[test]
     fn switching_levels_from_300_kv() {
         for row in insulation_levels().iter().filter(|row| row.regime == Regime::Iec) {

@@ -4,31 +4,52 @@
 //! reproduces), D in doubt. No current edition of a breaker standard was at hand; the tables must be held against the standards
 //! in force before use.
 
+mod capacitive;
 mod cited;
 mod cooling;
 mod currents;
 mod earthing;
 mod endurance;
+mod gas_law;
 mod insulation;
+mod line_side;
 mod making;
 mod mechanical;
 mod pressure;
+mod short_circuit;
 mod supply;
+mod surroundings;
 mod table;
 mod time_constants;
 mod trv_duties;
 mod voltages;
 
+pub use capacitive::{
+    BankAllowance, CapacitiveCircuit, CapacitiveRating, bank_allowance, capacitive_rating, capacitive_voltage_factor,
+};
 pub use cited::{Citation, OldWording, StandardScope, old_wordings, rating_structure, replacement_of};
 pub use cooling::altitude_cooling;
 pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration, usual_continuous_current};
 pub use earthing::{first_pole_factors, out_of_phase_factor};
 pub use endurance::{class_for_operations, operations_of_class};
+pub use gas_law::{CountsFrom, ForbiddenGases, GasLaw, gas_law, is_fluorinated};
 pub use insulation::{InsulationLevel, insulation_levels};
+pub use line_side::{
+    InitialTrvRow, LineSideRow, ShortLineDuty, ShortLineRow, initial_trv_row, line_side, short_line_faults_apply,
+    short_line_row,
+};
 pub use making::{MakingCase, making_factor};
 pub use mechanical::{TerminalLoads, seismic_level, seismic_level_for, terminal_loads, zinc_coating};
 pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE};
+pub(crate) use short_circuit::{AtTime, asynchronous_decay, synchronous_decay};
+pub use short_circuit::{
+    VoltageFactor, equivalent_frequency_share, generator_r_over_x, motor_r_over_x, voltage_factor,
+};
 pub use supply::{Device, Supply, coil_range, is_supply_voltage, supply_voltages};
+pub use surroundings::{
+    PollutionClass, TemperatureLimit, WithstandVoltage, altitude_exponent, pollution_class, pollution_classes,
+    temperature_limit, temperature_limits,
+};
 pub use time_constants::{TimeConstantCase, TimeConstants};
 pub use trv_duties::{Duty, DutyRow, SystemClass, VoltageRange, duty_row, s1_time};
 pub use voltages::{

@@ -12,7 +12,7 @@ mod tests {
     /// Every row of every table has a source and a status, and none is lost in reading.
     #[test]
     fn every_row_has_a_source() {
-        for (name, text, read) in [
+        let tables = [
             ("voltages", include_str!("../../data/rated_voltages.csv"), super::super::rated_voltages().len()),
             ("insulation", include_str!("../../data/insulation_levels.csv"), super::super::insulation_levels().len()),
             ("trv", include_str!("../../data/trv_duties.csv"), super::super::trv_duties::all().len()),
@@ -22,6 +22,7 @@ mod tests {
                 include_str!("../../data/time_constants.csv"),
                 super::super::time_constants::all().len(),
             ),
+            ("gas law", include_str!("../../data/gas_law.csv"), super::super::gas_law::all().len()),
             ("supply voltages", include_str!("../../data/supply_voltages.csv"), super::super::supply::counts().0),
             ("seismic", include_str!("../../data/seismic_levels.csv"), super::super::mechanical::counts().0),
             ("loads", include_str!("../../data/terminal_loads.csv"), super::super::mechanical::counts().1),
@@ -39,7 +40,18 @@ mod tests {
             ("cooling", include_str!("../../data/altitude_cooling.csv"), super::super::cooling::all().len()),
             ("coil ranges", include_str!("../../data/coil_ranges.csv"), super::super::supply::counts().1),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
-        ] {
+            ("S1 times", include_str!("../../data/trv_s1_times.csv"), super::super::trv_duties::s1_times()),
+            ("durations", include_str!("../../data/durations.csv"), super::super::durations().count()),
+            ("nominal voltages", include_str!("../../data/nominal_voltages.csv"), super::super::voltages::nominal()),
+        ];
+        for (name, text, read) in tables
+            .into_iter()
+            .chain(super::super::short_circuit::lengths())
+            .chain(super::super::line_side::lengths())
+            .chain(super::super::capacitive::lengths())
+            .chain(super::super::surroundings::lengths())
+            .chain(super::super::earthing::lengths())
+        {
             let mut reader = csv::Reader::from_reader(text.as_bytes());
             let head = reader.headers().expect(name).clone();
             let column = |wanted: &str| head.iter().position(|h| h == wanted).expect(name);

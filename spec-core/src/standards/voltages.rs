@@ -32,6 +32,11 @@ static RATED: LazyLock<Vec<RatedVoltage>> =
 static NOMINAL: LazyLock<Vec<NominalVoltage>> =
     LazyLock::new(|| table::rows(include_str!("../../data/nominal_voltages.csv")));
 
+#[cfg(test)]
+pub(super) fn nominal() -> usize {
+    NOMINAL.len()
+}
+
 impl RatedVoltage {
     /// The voltage.
     pub fn voltage(&self) -> ElectricPotential {
@@ -106,6 +111,15 @@ mod tests {
         assert_eq!(steps_between_voltages(kv(145.0), kv(245.0), &[Regime::Iec]), 2);
         assert_eq!(steps_between_voltages(kv(145.0), kv(123.0), &[Regime::Iec]), -1);
         assert_eq!(steps_between_voltages(kv(145.0), kv(145.0), &[Regime::Iec]), 0);
+    }
+
+    /// A nominal voltage has one rated voltage, above it and on the list.
+    #[test]
+    fn nominal_voltages_lead_to_rated_ones() {
+        for (at, row) in NOMINAL.iter().enumerate() {
+            assert!(row.nominal_kv < row.rated_kv && is_rated_voltage(kv(row.rated_kv), &BOTH), "{row:?}");
+            assert!(!NOMINAL.iter().skip(at + 1).any(|other| same(other.nominal_kv, row.nominal_kv)), "{row:?}");
+        }
     }
 
     #[test]

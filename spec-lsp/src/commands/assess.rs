@@ -9,7 +9,7 @@ use firstpole_core::{Assessment, Assessor, Date, FindingKind};
 
 use crate::files::{self, Gathered};
 use crate::show::{Colour, Look, findings};
-use crate::{BLOCKED, NOT_RUN, PASSED};
+use crate::{BLOCKED, NOT_RUN, PASSED, today};
 
 /// What the command is asked.
 #[derive(Debug, clap::Args)]
@@ -116,12 +116,6 @@ pub fn run(arguments: &Arguments, out: &mut dyn Write, err: &mut dyn Write) -> i
     } else {
         PASSED
     })
-}
-
-/// Today, by the clock of the machine, in UTC.
-fn today() -> Option<Date> {
-    let date = jiff::Timestamp::now().to_zoned_datetime(jiff::tz::TimeZone::UTC).date();
-    Date::new(u16::try_from(date.year()).ok()?, u8::try_from(date.month()).ok()?, u8::try_from(date.day()).ok())
 }
 
 fn summary(assessment: &Assessment, gate: &[FindingKind], out: &mut dyn Write) -> io::Result<()> {

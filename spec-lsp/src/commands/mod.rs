@@ -2,3 +2,4 @@
 
 pub mod assess;
 pub mod clause;
+pub mod serve;

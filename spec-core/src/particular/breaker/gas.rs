@@ -118,6 +118,13 @@ particulars! { Breaker, "gas";
         basis: "practice",
         meaning: "By how much the gas stays above the air.",
     }
+    DENSITY_MONITOR = "density monitor" {
+        wordings: ["density monitor placement", "gas monitor"],
+        kind: Kind::Words { list: &words::DENSITY_MONITOR, alternatives: false },
+        sense: Exact,
+        basis: "common practice, no source",
+        meaning: "Where the monitor takes the temperature by which it turns pressure into density.",
+    }
     HEATER_HOLD_TIME = "heater hold time" {
         wordings: ["hold time"],
         kind: Kind::Quantity(QuantityKind::of(&[Dimension::Time], &["h"])),

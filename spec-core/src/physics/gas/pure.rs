@@ -1,11 +1,18 @@
 //! A pure gas at constant density.
 
 use super::PureGas;
+use super::constants::Frost;
 use crate::quantity::{MassDensity, Physical, Pressure, Ratio, ThermodynamicTemperature};
 use crate::standards::REFERENCE_TEMPERATURE;
 
 /// Molar gas constant, J/(mol K), exact since the SI of 2019 to the digits written.
-const MOLAR_GAS_CONSTANT: f64 = 8.314_462_618;
+pub(super) const MOLAR_GAS_CONSTANT: f64 = 8.314_462_618;
+
+/// Up to this deviation, percent, a vapour-pressure equation is told of: the dew point then moves by less than 0.05 K.
+const USABLE_DEVIATION: f64 = 0.1;
+
+/// The density of the highest filling may come back with an error of rounding.
+const DENSITY_ROUNDING: f64 = 1.0 + 1e-8;
 
 /// Why a state cannot be told.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -22,6 +29,8 @@ pub enum GasFault {
         /// The bound that was left, K.
         bound: f64,
     },
+    /// Its vapour-pressure equation is not good enough to be told of.
+    NoVapourPressure,
     /// The gas is saturated at the temperature of filling: it cannot be filled as gas to this pressure.
     Saturated {
         /// The pressure of saturation, Pa.
@@ -35,6 +44,7 @@ impl std::fmt::Display for GasFault {
             Self::FillingTooHigh { bound } => {
                 write!(f, "above {} MPa abs at 20 degC the equation of state does not hold", bound / 1e6)
             }
+            Self::NoVapourPressure => f.write_str("the vapour pressure of this gas is not known well enough"),
             Self::NoPressure => f.write_str("the absolute pressure is not above zero"),
             Self::TemperatureOutside { bound } => {
                 write!(f, "beyond {:.0} degC the equation of state does not hold", bound - 273.15)
@@ -100,35 +110,54 @@ impl PureGas {
     pub fn pressure(&self, density: MassDensity, at: ThermodynamicTemperature) -> Result<Pressure, GasFault> {
         let t = at.si();
         self.within(t)?;
+        self.within_density(density)?;
         let gas = self.pressure_of_gas(density.si(), t);
-        Ok(Pressure::from_si(if t < self.critical_temperature { gas.min(self.saturation(t)) } else { gas }))
+        let floor = self.saturation_floor.get((t - self.temperatures.0) as usize);
+        let dry = t >= self.critical_temperature || floor.is_some_and(|floor| gas < *floor);
+        Ok(Pressure::from_si(if dry { gas } else { gas.min(self.saturation(t)) }))
     }
 
     /// Where a filling of this density begins to condense.
     pub fn dew_point(&self, density: MassDensity) -> Result<Condensation, GasFault> {
-        let excess = |t: f64| self.pressure_of_gas(density.si(), t) - self.saturation(t);
-        let (mut low, mut high) = (self.temperatures.0, self.critical_temperature);
-        if excess(low) < 0.0 {
-            return Err(GasFault::TemperatureOutside { bound: low });
+        // In logarithms both sides are nearly straight, and the pressure of the gas falls by less than that of saturation, so that
+        // there is one root.
+        let excess = |t: f64| (self.pressure_of_gas(density.si(), t) / self.saturation(t)).ln();
+        if self.vapour_deviation > USABLE_DEVIATION {
+            return Err(GasFault::NoVapourPressure);
         }
-        // The pressure of the gas falls by less than that of saturation, so there is one root; halving finds it to 1e-12 K.
-        for _ in 0..60 {
-            let middle = 0.5 * (low + high);
-            if excess(middle) > 0.0 { low = middle } else { high = middle }
+        self.within_density(density)?;
+        let (low, high) = (self.temperatures.0, self.critical_temperature.min(self.temperatures.1));
+        if excess(low) < 0.0 || excess(high) > 0.0 {
+            return Err(GasFault::TemperatureOutside { bound: if excess(low) < 0.0 { low } else { high } });
         }
-        let temperature = 0.5 * (low + high);
+        let temperature = root(excess, low, high);
         let phase = if temperature < self.triple_temperature { Phase::Frost } else { Phase::Liquid };
         Ok(Condensation { temperature: ThermodynamicTemperature::from_si(temperature), phase })
     }
 
+    /// Pressure of saturation at a temperature up to 20 degC, at which fillings are stated: over the liquid, and over the frost
+    /// below the triple point.
+    pub fn saturation_pressure(&self, at: ThermodynamicTemperature) -> Result<Pressure, GasFault> {
+        let t = at.si();
+        if self.vapour_deviation > USABLE_DEVIATION {
+            return Err(GasFault::NoVapourPressure);
+        }
+        // The liquid's line begins at the triple point; a line over the frost holds as far as the equation of state does.
+        let lowest = if self.frost.is_some() { self.temperatures.0 } else { self.triple_temperature };
+        let highest = REFERENCE_TEMPERATURE.min(self.critical_temperature);
+        match t {
+            t if t < lowest => Err(GasFault::TemperatureOutside { bound: lowest }),
+            t if t > highest => Err(GasFault::TemperatureOutside { bound: highest }),
+            _ => Ok(()),
+        }?;
+        Ok(Pressure::from_si(self.saturation(t)))
+    }
+
     /// Density of the saturated vapour at a temperature.
     pub fn saturated_density(&self, at: ThermodynamicTemperature) -> Result<MassDensity, GasFault> {
-        let t = at.si();
-        self.within(t)?;
-        if t >= self.critical_temperature {
-            return Err(GasFault::TemperatureOutside { bound: self.critical_temperature });
-        }
-        let density = MassDensity::from_si(self.density_of_gas(self.saturation(t), t)?);
+        self.within(at.si())?;
+        let saturated = self.saturation_pressure(at)?;
+        let density = MassDensity::from_si(self.density_of_gas(saturated.si(), at.si())?);
         if self.reference_pressure(density).si() > self.highest_filling {
             return Err(GasFault::FillingTooHigh { bound: self.highest_filling });
         }
@@ -138,6 +167,7 @@ impl PureGas {
     /// A filling at a temperature: how much of it is condensed, and what vapour is left. The share of the liquid is
     /// (1 - rho_g/rho)/(1 - rho_g/rho_l).
     pub fn two_phase(&self, density: MassDensity, at: ThermodynamicTemperature) -> Result<TwoPhase, GasFault> {
+        self.within_density(density)?;
         if at.si() >= self.critical_temperature
             || self.pressure_of_gas(density.si(), at.si()) <= self.saturation(at.si())
         {
@@ -170,18 +200,43 @@ impl PureGas {
         }
     }
 
-    /// Pressure of saturation over the liquid, ln(p/pc) = (Tc/T) sum a (1 - T/Tc)^e, and over the frost below the triple point.
-    fn saturation(&self, t: f64) -> f64 {
-        if t < self.triple_temperature {
-            let exponent = -self.sublimation_slope * (1.0 / t - 1.0 / self.triple_temperature);
-            return self.triple_pressure * exponent.exp();
+    /// Beyond the highest filling the series turns over, and what it gives there looks like a result.
+    fn within_density(&self, density: MassDensity) -> Result<(), GasFault> {
+        let rho = density.si();
+        if rho <= 0.0 {
+            Err(GasFault::NoPressure)
+        } else if rho <= self.highest_density * DENSITY_ROUNDING {
+            Ok(())
+        } else {
+            Err(GasFault::FillingTooHigh { bound: self.highest_filling })
         }
-        let reduced = 1.0 - t / self.critical_temperature;
-        let sum: f64 = self.vapour.iter().map(|(a, e)| a * reduced.max(0.0).powf(*e)).sum();
-        self.critical_pressure * (self.critical_temperature / t * sum).exp()
     }
 
-    fn virial(&self, t: f64) -> (f64, f64) {
+    /// Pressure of saturation over the liquid, ln(p/pc) = (Tc/T) sum a (1 - T/Tc)^e, and over the frost below the triple point.
+    pub(super) fn saturation(&self, t: f64) -> f64 {
+        let series = |terms: &[(f64, f64)], x: f64| {
+            let (x, root) = (x.max(0.0), x.max(0.0).sqrt());
+            terms.iter().map(|(a, e)| a * power(x, root, *e)).sum::<f64>()
+        };
+        match &self.frost {
+            Some(frost) if t < self.triple_temperature => {
+                let exponent = match frost {
+                    Frost::Slope(slope) => -slope * (1.0 / t - 1.0 / self.triple_temperature),
+                    Frost::Series(terms) => {
+                        self.triple_temperature / t * series(terms, 1.0 - t / self.triple_temperature)
+                    }
+                };
+                self.triple_pressure * exponent.exp()
+            }
+            _ => {
+                let sum = series(&self.vapour, 1.0 - t / self.critical_temperature);
+                self.critical_pressure * (self.critical_temperature / t * sum).exp()
+            }
+        }
+    }
+
+    /// Second and third virial coefficient, m3/mol and m6/mol2.
+    pub(super) fn virial(&self, t: f64) -> (f64, f64) {
         let x = 300.0 / t;
         let series = |c: &[f64]| c.iter().rev().fold(0.0, |sum, c| sum * x + c);
         (series(&self.b), series(&self.c))
@@ -189,30 +244,79 @@ impl PureGas {
 
     /// Pressure of the gas, Pa, of a density in kg/m3, as if it did not condense.
     fn pressure_of_gas(&self, density: f64, t: f64) -> f64 {
-        let (b, c) = self.virial(t);
-        let rho = density / self.molar_mass;
-        rho * MOLAR_GAS_CONSTANT * t * (1.0 + b * rho + c * rho * rho)
+        virial_pressure(density / self.molar_mass, t, self.virial(t))
     }
 
-    /// Density of the gas, kg/m3, by Newton's method from the ideal gas.
-    fn density_of_gas(&self, p: f64, t: f64) -> Result<f64, GasFault> {
-        let (b, c) = self.virial(t);
-        let ideal = p / (MOLAR_GAS_CONSTANT * t);
-        let mut rho = ideal;
-        for _ in 0..50 {
-            let residual = rho * (1.0 + b * rho + c * rho * rho) - ideal;
-            let slope = 1.0 + 2.0 * b * rho + 3.0 * c * rho * rho;
-            if slope <= 0.0 {
-                return Err(GasFault::FillingTooHigh { bound: self.highest_filling });
-            }
-            let step = residual / slope;
-            rho -= step;
-            if step.abs() <= 1e-14 * rho.abs() {
-                break;
-            }
-        }
-        Ok(rho * self.molar_mass)
+    /// Density of the gas, kg/m3.
+    pub(super) fn density_of_gas(&self, p: f64, t: f64) -> Result<f64, GasFault> {
+        let fault = GasFault::FillingTooHigh { bound: self.highest_filling };
+        molar_density(p, t, self.virial(t)).map(|rho| rho * self.molar_mass).ok_or(fault)
     }
+}
+
+/// x^e, by multiplication where e is a whole or half number, as most exponents of vapour-pressure equations are.
+fn power(x: f64, root: f64, e: f64) -> f64 {
+    let halves = 2.0 * e;
+    if halves.fract() == 0.0 { root.powi(halves as i32) } else { x.powf(e) }
+}
+
+/// The root of a falling function between two temperatures, to 1e-9 K: false position with halved weights (Illinois).
+pub(super) fn root(f: impl Fn(f64) -> f64, low: f64, high: f64) -> f64 {
+    let (mut a, mut b) = (low, high);
+    let (mut fa, mut fb) = (f(a), f(b));
+    let mut side = 0_i8;
+    for _ in 0..200 {
+        let t = (a * fb - b * fa) / (fb - fa);
+        if !t.is_finite() || (b - a).abs() < 1e-9 {
+            break;
+        }
+        let ft = f(t);
+        if ft == 0.0 {
+            return t;
+        }
+        if (ft > 0.0) == (fa > 0.0) {
+            (a, fa) = (t, ft);
+            if side == -1 {
+                fb *= 0.5;
+            }
+            side = -1;
+        } else {
+            (b, fb) = (t, ft);
+            if side == 1 {
+                fa *= 0.5;
+            }
+            side = 1;
+        }
+        if ft.abs() < 1e-14 {
+            return t;
+        }
+    }
+    0.5 * (a + b)
+}
+
+/// Molar density of a gas with virial coefficients (B, C), mol/m3, by Newton's method from the ideal gas; none where the truncated
+/// series has turned over.
+pub(super) fn molar_density(p: f64, t: f64, (b, c): (f64, f64)) -> Option<f64> {
+    let ideal = p / (MOLAR_GAS_CONSTANT * t);
+    let mut rho = ideal;
+    for _ in 0..50 {
+        let residual = rho * (1.0 + b * rho + c * rho * rho) - ideal;
+        let slope = 1.0 + 2.0 * b * rho + 3.0 * c * rho * rho;
+        if slope <= 0.0 {
+            return None;
+        }
+        let step = residual / slope;
+        rho -= step;
+        if step.abs() <= 1e-14 * rho.abs() {
+            break;
+        }
+    }
+    Some(rho)
+}
+
+/// Pressure of a gas with virial coefficients, Pa, at a molar density.
+pub(super) fn virial_pressure(rho: f64, t: f64, (b, c): (f64, f64)) -> f64 {
+    rho * MOLAR_GAS_CONSTANT * t * (1.0 + b * rho + c * rho * rho)
 }
 
 #[cfg(test)]
@@ -279,6 +383,35 @@ mod tests {
         assert_eq!(sf6().highest_filling(celsius(-70.0)), Err(GasFault::TemperatureOutside { bound: 205.0 }));
         let density = MassDensity::from_si(40.0);
         assert!(matches!(sf6().pressure(density, celsius(80.0)), Err(GasFault::TemperatureOutside { .. })));
+    }
+
+    /// Above the highest filling nothing is told, however the density came about: at 250 kg/m3 the series has turned over, and a
+    /// dew point of it would be far off and look sound.
+    #[test]
+    fn no_state_is_told_beyond_the_highest_density() {
+        let too_high = GasFault::FillingTooHigh { bound: 1.6e6 };
+        for rho in [124.7, 130.0, 160.0, 200.0, 250.0, 300.0, 1000.0, f64::NAN] {
+            let density = MassDensity::from_si(rho);
+            assert_eq!(sf6().dew_point(density).expect_err("a fault"), too_high, "{rho}");
+            assert_eq!(sf6().pressure(density, celsius(-10.0)).expect_err("a fault"), too_high, "{rho}");
+            assert_eq!(sf6().two_phase(density, celsius(-10.0)).expect_err("a fault"), too_high, "{rho}");
+        }
+        for rho in [0.0, -1.0] {
+            assert_eq!(sf6().dew_point(MassDensity::from_si(rho)), Err(GasFault::NoPressure));
+        }
+        let highest = sf6().density(mpa(1.6), celsius(20.0)).expect("a density");
+        assert!(sf6().dew_point(highest).is_ok() && sf6().two_phase(highest, celsius(-10.0)).is_ok());
+    }
+
+    /// The bound that is looked up never calls a saturated gas dry.
+    #[test]
+    fn the_floor_of_saturation_lies_below_it() {
+        for t in (0..1100).map(|n| 206.0 + 0.1 * f64::from(n)) {
+            let density = MassDensity::from_si(60.0);
+            let pressure = sf6().pressure(density, ThermodynamicTemperature::from_si(t)).expect("a pressure").si();
+            let expected = sf6().pressure_of_gas(60.0, t).min(sf6().saturation(t));
+            assert!((pressure - expected).abs() < 1e-6, "{t}");
+        }
     }
 
     /// Below 0.3141 MPa abs the gas comes down as frost (gas basis, section 2.1).

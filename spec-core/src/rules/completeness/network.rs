@@ -14,7 +14,7 @@ use crate::sheet::{Facts, Set, Sheet, Stated};
 /// A system with what it states and the breakers that stand on it.
 struct Network<'a> {
     sheet: &'a Sheet,
-    facts: Facts,
+    facts: &'a Facts,
     breakers: Vec<Apparatus<'a>>,
     /// Whether infeeds are described, from which its currents follow.
     has_infeeds: bool,
@@ -26,7 +26,7 @@ fn networks(set: &Set) -> Vec<Network<'_>> {
             sheet,
             facts: set.facts(sheet.id),
             breakers: breakers_of(set, "on", sheet.id),
-            has_infeeds: set.of_kind(SheetKind::Infeed).any(|infeed| infeed.target("into") == Some(sheet.id)),
+            has_infeeds: set.pointing_at(sheet.id, "into").next().is_some(),
         })
         .collect()
 }
@@ -42,7 +42,7 @@ impl Network<'_> {
 
     /// Whether the three-phase level is stated, in amperes or as power.
     fn has_level(&self) -> bool {
-        mentions_any(&self.facts, &[&system::SHORT_CIRCUIT_CURRENT, &system::FAULT_LEVEL])
+        mentions_any(self.facts, &[&system::SHORT_CIRCUIT_CURRENT, &system::FAULT_LEVEL])
     }
 
     /// The breaker with the least breaking current among those whose own share is not documented.
@@ -244,7 +244,7 @@ fn time_constant(set: &Set, _: &Policy, findings: &mut Findings) {
         let level =
             [&system::SHORT_CIRCUIT_CURRENT, &system::FAULT_LEVEL].into_iter().find_map(|p| network.facts.statement(p));
         let Some(level) = level else { continue };
-        if network.breakers.is_empty() || network.has_infeeds || mentions_any(&network.facts, TIME_CONSTANT_BY) {
+        if network.breakers.is_empty() || network.has_infeeds || mentions_any(network.facts, TIME_CONSTANT_BY) {
             continue;
         }
         let message = format!(
@@ -368,13 +368,13 @@ fn neutral(set: &Set, _: &Policy, findings: &mut Findings) {
     for network in networks(set) {
         let currents = [&system::SHORT_CIRCUIT_CURRENT, &system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT];
         let by_currents = currents.iter().all(|current| network.facts.mentions(current));
-        if by_currents || mentions_any(&network.facts, EARTHING_BY) {
+        if by_currents || mentions_any(network.facts, EARTHING_BY) {
             continue;
         }
         let asks: Vec<_> = network
             .breakers
             .iter()
-            .filter(|b| !is_generator_breaker(&b.facts))
+            .filter(|b| !is_generator_breaker(b.facts))
             .filter_map(|b| EARTHING_FOR.iter().find_map(|p| b.facts.statement(p)))
             .collect();
         let circuits = circuits_of(set, &network.breakers);
@@ -384,7 +384,7 @@ fn neutral(set: &Set, _: &Policy, findings: &mut Findings) {
             capacitive || two_sources.iter().any(|p| circuit.yes_no(p).is_some_and(|(yes, _)| yes))
         });
         let generators_only =
-            !network.breakers.is_empty() && network.breakers.iter().all(|b| is_generator_breaker(&b.facts));
+            !network.breakers.is_empty() && network.breakers.iter().all(|b| is_generator_breaker(b.facts));
         if asks.is_empty() && (!by_circuit || generators_only) {
             continue;
         }
@@ -437,12 +437,12 @@ fn network_kind(set: &Set, _: &Policy, findings: &mut Findings) {
             continue;
         }
         let is_line = |circuit: &Facts| circuit.word(&circuit::KIND).is_some_and(|(kind, _)| kind == DIRECT_LINE);
-        if circuits_of(set, &network.breakers).iter().any(is_line) {
+        if circuits_of(set, &network.breakers).into_iter().any(is_line) {
             continue;
         }
         let open = |b: &&Apparatus<'_>| {
             let hardest = b.facts.class(&breaker::CLASSES, 'S').is_some_and(|(class, _)| class.grade >= 2);
-            !hardest && !is_generator_breaker(&b.facts)
+            !hardest && !is_generator_breaker(b.facts)
         };
         let Some(first) = network.breakers.iter().find(open) else { continue };
         let message = format!(

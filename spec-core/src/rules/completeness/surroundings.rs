@@ -74,7 +74,7 @@ fn site_data(set: &Set, _: &Policy, findings: &mut Findings) {
     for sheet in set.of_kind(SheetKind::Site) {
         let breakers = breakers_of(set, "at", sheet.id);
         if !breakers.is_empty() {
-            of_site(sheet, &set.facts(sheet.id), &breakers, findings);
+            of_site(sheet, set.facts(sheet.id), &breakers, findings);
         }
     }
 }
@@ -82,7 +82,7 @@ fn site_data(set: &Set, _: &Policy, findings: &mut Findings) {
 fn of_site(sheet: &Sheet, facts: &Facts, breakers: &[Apparatus<'_>], findings: &mut Findings) {
     let indoors = is_indoors(facts, breakers);
     let stated = |datum: &Datum| {
-        mentions_any(facts, datum.by) || breakers.iter().all(|apparatus| mentions_any(&apparatus.facts, datum.by))
+        mentions_any(facts, datum.by) || breakers.iter().all(|apparatus| mentions_any(apparatus.facts, datum.by))
     };
     let missing = |data: &'static [Datum]| -> Vec<&'static Datum> {
         data.iter().filter(|datum| !(stated(datum) || indoors && datum.outdoors_only)).collect()
@@ -153,7 +153,7 @@ fn precedence(set: &Set, _: &Policy, findings: &mut Findings) {
     for sheet in set.of_kind(SheetKind::Tender) {
         let facts = set.facts(sheet.id);
         // Undated standards have a rule of their own, which asks for the date.
-        let told = super::super::standards_cited::cites_undated(&facts);
+        let told = super::super::standards_cited::cites_undated(facts);
         let missing: Vec<_> = PRECEDENCE
             .iter()
             .filter(|(particular, _)| !facts.mentions(particular))
@@ -211,7 +211,7 @@ fn bays(set: &Set, sheet: &Sheet, findings: &mut Findings) {
         return;
     };
     let listed = items.len() as f64;
-    let mut circuits = set.of_kind(SheetKind::Circuit).filter(|circuit| circuit.target("for") == Some(sheet.id));
+    let mut circuits = set.pointing_at(sheet.id, "for").filter(|circuit| circuit.kind == SheetKind::Circuit);
     let is_spare =
         |circuit: &Sheet| set.facts(circuit.id).word(&circuit::KIND).is_some_and(|(kind, _)| kind == "spare");
     let spare = facts.mentions(&breaker::SPARE_FOR) || circuits.any(is_spare);
@@ -242,7 +242,7 @@ fn total(set: &Set, sheet: &Sheet, findings: &mut Findings) {
     let own =
         |breaker: &&Sheet| set.in_reach(breaker.file(), SheetKind::Tender).next().is_some_and(|t| t.id == sheet.id);
     for breaker in set.of_kind(SheetKind::Breaker).filter(own) {
-        match number_of(&set.facts(breaker.id)) {
+        match number_of(set.facts(breaker.id)) {
             Some(number) => {
                 sum += number;
                 working.push(format!("{} {}", breaker.name, significant(number, 6)));

@@ -1,0 +1,277 @@
+//! The recovery voltage that the network gives, where its infeeds say enough (methods of IEEE C37.011, from memory).
+
+use std::f64::consts::{PI, SQRT_2};
+
+use super::short_line_fault::there_and_back;
+use super::trv::{Envelope, envelope};
+use crate::quantity::{
+    Capacitance, ElectricCurrent, ElectricPotential, ElectricalResistance, Frequency, Inductance, Length, Physical,
+    Ratio, Time, VoltageRate,
+};
+use crate::standards::{Duty, SystemClass};
+
+/// Surge impedances of one line or cable at the busbar.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SurgeImpedances {
+    /// Positive sequence, Z1.
+    pub positive: ElectricalResistance,
+    /// Zero sequence, Z0.
+    pub zero: ElectricalResistance,
+}
+
+/// Surge impedance that the first pole of a three-phase fault sees: 3 Z0 Z1 / (Z1 + 2 Z0), Z1 and Z0 those of all lines in
+/// parallel; of n equal ones that is (1/n) 3 Z0 Z1 / (Z1 + 2 Z0). Ohm; none without lines. IEEE C37.011, from memory.
+pub fn equivalent_surge_impedance(lines: &[SurgeImpedances]) -> Option<ElectricalResistance> {
+    let parallel = |of: fn(&SurgeImpedances) -> ElectricalResistance| {
+        1.0 / lines.iter().map(|line| 1.0 / of(line).si()).sum::<f64>()
+    };
+    let (z1, z0) = (parallel(|line| line.positive), parallel(|line| line.zero));
+    let z = 3.0 * z0 * z1 / (z1 + 2.0 * z0);
+    (z.is_finite() && z > 0.0).then(|| ElectricalResistance::from_si(z))
+}
+
+/// Initial rate of rise: sqrt2 w I Zeq. V/s. IEEE C37.011, from memory.
+pub fn initial_rate(
+    current: ElectricCurrent,
+    frequency: Frequency,
+    surge_impedance: ElectricalResistance,
+) -> VoltageRate {
+    VoltageRate::from_si(SQRT_2 * 2.0 * PI * frequency.si() * current.si() * surge_impedance.si())
+}
+
+/// A recovery voltage that lines shape: u = E (1 - exp(-t/tau)) after a delay, until the first reflection comes back.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct ExponentialRise {
+    /// The voltage that it tends to, E.
+    pub crest: ElectricPotential,
+    /// tau = L / Zeq.
+    pub time_constant: Time,
+    /// Initial rate, E / tau.
+    pub rate: VoltageRate,
+    /// Delay by the capacitance at the breaker, C Zeq.
+    pub delay: Time,
+    /// When the first reflection arrives; the crest rises after it. None where no line has a known length.
+    pub first_reflection: Option<Time>,
+}
+
+/// The rise at a busbar of system voltage `rated`, first-pole factor `kpp`, when `current` of the lines' part is broken.
+///
+/// E = kpp Ur sqrt(2/3); L = kpp Ur / (sqrt3 w I), the inductance that the first pole sees, so that E / tau is the initial rate;
+/// `capacitance` is that between breaker and earth, `shortest` the length of the shortest line. IEEE C37.011, from memory.
+pub fn exponential_rise(
+    rated: ElectricPotential,
+    kpp: f64,
+    current: ElectricCurrent,
+    frequency: Frequency,
+    surge_impedance: ElectricalResistance,
+    capacitance: Capacitance,
+    shortest: Option<Length>,
+) -> ExponentialRise {
+    let crest = super::trv::crest(rated) * kpp;
+    let rate = initial_rate(current, frequency, surge_impedance);
+    ExponentialRise {
+        crest,
+        time_constant: crest / rate,
+        rate,
+        delay: Time::from_si(capacitance.si() * surge_impedance.si()),
+        first_reflection: shortest.map(there_and_back),
+    }
+}
+
+impl ExponentialRise {
+    /// The voltage at a time after current zero. It holds until the first reflection.
+    pub fn at(&self, time: Time) -> ElectricPotential {
+        let after = (time - self.delay).si().max(0.0);
+        self.crest * (1.0 - (-after / self.time_constant.si()).exp())
+    }
+
+    /// The voltage when the first reflection arrives, or the crest where none is known.
+    pub fn before_reflection(&self) -> ElectricPotential {
+        self.first_reflection.map_or(self.crest, |time| self.at(time))
+    }
+}
+
+/// Inductance of the source that limits a fault: Ur / (sqrt3 w I). H. IEEE C37.011, from memory.
+pub fn source_inductance(rated: ElectricPotential, current: ElectricCurrent, frequency: Frequency) -> Inductance {
+    Inductance::from_si(rated.si() / (3f64.sqrt() * 2.0 * PI * frequency.si() * current.si()))
+}
+
+/// Natural frequency 1 / (2 pi sqrt(L C)). Hz.
+pub fn natural_frequency(inductance: Inductance, capacitance: Capacitance) -> Frequency {
+    Frequency::from_si(1.0 / (2.0 * PI * (inductance.si() * capacitance.si()).sqrt()))
+}
+
+/// Slope of the tangent from the origin to 1 - cos, over that of the chord to its peak: the greatest (1 - cos x)/x (at x = 2.3311)
+/// times pi/2. The 1.138 of IEEE C37.04's 1-cosine envelope, from memory; follows from the wave.
+pub const TANGENT: f64 = 1.138_217;
+
+/// A recovery voltage that one oscillating circuit shapes, as of a fault limited by a transformer or a reactor.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct OneMinusCosine {
+    /// Its peak.
+    pub peak: ElectricPotential,
+    /// Time to the peak, half a period.
+    pub time: Time,
+    /// Rate of the tangent from the origin, 1.138 peak/time.
+    pub rate: VoltageRate,
+    /// Where that tangent reaches the peak, t3 = peak / rate = 0.8786 time.
+    pub t3: Time,
+}
+
+/// Of a circuit that swings about the crest `recovery` with `frequency`; `amplitude` is the amplitude factor, 2 undamped.
+/// IEEE C37.011, from memory. The tangent is that of the undamped wave.
+pub fn one_minus_cosine(recovery: ElectricPotential, amplitude: f64, frequency: Frequency) -> OneMinusCosine {
+    let (peak, time) = (recovery * amplitude, Time::from_si(0.5 / frequency.si()));
+    let rate: VoltageRate = peak / time * TANGENT;
+    OneMinusCosine { peak, time, rate, t3: peak / rate }
+}
+
+impl OneMinusCosine {
+    /// Mean rate to the peak: peak/time.
+    pub fn mean_rate(&self) -> VoltageRate {
+        self.peak / self.time
+    }
+}
+
+/// What a breaker withstands at a share of its breaking current.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Withstand {
+    /// The peak.
+    pub peak: ElectricPotential,
+    /// The rate of rise.
+    pub rate: VoltageRate,
+}
+
+/// Share of the rated breaking current that a duty is for: its own definition. None out of phase. IEC 62271-100 6.106.
+pub fn share_of_duty(duty: Duty) -> Option<f64> {
+    match duty {
+        Duty::T100 => Some(1.0),
+        Duty::T60 => Some(0.6),
+        Duty::T30 => Some(0.3),
+        Duty::T10 => Some(0.1),
+        Duty::OutOfPhase => None,
+    }
+}
+
+/// Peak and rate of the standard envelopes at a share of the rated breaking current, linear in the share between T10, T30, T60
+/// and T100; below T10 that of T10.
+///
+/// None above the rated current, for a share that is no positive number, and where the tables have no envelope.
+/// IEC 62271-100 and IEEE C37.011 (interpolation between the duties), from memory.
+pub fn withstand_at(rated: ElectricPotential, kpp: f64, class: Option<SystemClass>, share: f64) -> Option<Withstand> {
+    (share > 0.0 && share <= 1.0).then_some(())?;
+    let mut lower: Option<(f64, Envelope)> = None;
+    for duty in [Duty::T10, Duty::T30, Duty::T60, Duty::T100] {
+        let here = (share_of_duty(duty)?, envelope(rated, kpp, kpp, duty, class)?);
+        if share <= here.0 {
+            let Some(lower) = lower else {
+                return Some(Withstand { peak: here.1.uc, rate: here.1.rate });
+            };
+            let part = (share - lower.0) / (here.0 - lower.0);
+            let peak = lower.1.uc + (here.1.uc - lower.1.uc) * part;
+            let rate = lower.1.rate + (here.1.rate - lower.1.rate) * part;
+            return Some(Withstand { peak, rate });
+        }
+        lower = Some(here);
+    }
+    None
+}
+
+/// A prospective recovery voltage held against what a breaker withstands: two answers, never one.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct TrvComparison {
+    /// Prospective over withstood peak.
+    pub peak: Ratio,
+    /// Prospective over withstood rate.
+    pub rate: Ratio,
+}
+
+impl Withstand {
+    /// Holds a prospective peak and rate against it.
+    pub fn compared_with(&self, peak: ElectricPotential, rate: VoltageRate) -> TrvComparison {
+        TrvComparison { peak: peak / self.peak, rate: rate / self.rate }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn kv(n: f64) -> ElectricPotential {
+        ElectricPotential::from_si(n * 1e3)
+    }
+
+    fn line(z1: f64, z0: f64) -> SurgeImpedances {
+        SurgeImpedances { positive: ElectricalResistance::from_si(z1), zero: ElectricalResistance::from_si(z0) }
+    }
+
+    /// Own calculation: four lines of 350 and 600 ohm give 101.6 ohm; unequal ones in parallel by sequence.
+    #[test]
+    fn surge_impedances() {
+        let four = equivalent_surge_impedance(&[line(350.0, 600.0); 4]).expect("lines");
+        assert!((four.si() - 101.6).abs() < 0.05);
+        let unequal = equivalent_surge_impedance(&[line(300.0, 500.0), line(600.0, 1000.0)]).expect("lines");
+        assert!(
+            (unequal.si() - equivalent_surge_impedance(&[line(200.0, 1000.0 / 3.0)]).expect("a line").si()).abs()
+                < 1e-9
+        );
+        assert_eq!(equivalent_surge_impedance(&[]), None);
+    }
+
+    /// The crest over the time constant is the initial rate whatever kpp is; 30 km return after 200 us; delay of 5 nF.
+    #[test]
+    fn a_rise_until_the_first_reflection() {
+        let ohm = ElectricalResistance::from_si(101.6);
+        let (current, frequency) = (ElectricCurrent::from_si(40e3), Frequency::from_si(60.0));
+        let rise = exponential_rise(
+            kv(245.0),
+            1.3,
+            current,
+            frequency,
+            ohm,
+            Capacitance::from_si(5e-9),
+            Some(Length::from_si(30e3)),
+        );
+        assert!((rise.rate.si() / 1e9 - 2.167).abs() < 1e-3);
+        assert!((rise.first_reflection.expect("a line").si() - 200e-6).abs() < 1e-12);
+        assert!((rise.delay.si() - 0.508e-6).abs() < 1e-12);
+        assert_eq!(rise.at(Time::from_si(0.0)).si(), 0.0);
+        let early = rise.at(rise.delay + Time::from_si(1e-8)).si() / 1e-8;
+        assert!((early / rise.rate.si() - 1.0).abs() < 1e-3);
+        let value = rise.before_reflection().si() / rise.crest.si();
+        assert!((value - (1.0 - (-(200e-6 - 0.508e-6) / rise.time_constant.si()).exp())).abs() < 1e-12);
+    }
+
+    /// The factor of the tangent is the greatest of (1 - cos x)/x, found here by trial.
+    #[test]
+    fn the_tangent_of_a_cosine() {
+        let greatest = (1..31_416).map(|n| f64::from(n) * 1e-4).map(|x| (1.0 - x.cos()) / x).fold(0.0, f64::max);
+        assert!((greatest * PI / 2.0 - TANGENT).abs() < 1e-6, "{}", greatest * PI / 2.0);
+    }
+
+    /// At the shares of the duties the envelopes themselves; between them between; beyond them nothing.
+    #[test]
+    fn interpolation() {
+        let at = |share| withstand_at(kv(145.0), 1.3, None, share);
+        for duty in [Duty::T100, Duty::T60, Duty::T30, Duty::T10] {
+            let own = envelope(kv(145.0), 1.3, 1.3, duty, None).expect("an envelope");
+            let found = at(share_of_duty(duty).expect("a share")).expect("a withstand");
+            assert!((found.peak - own.uc).si().abs() < 1e-6 && (found.rate - own.rate).si().abs() < 1e-3, "{duty:?}");
+        }
+        let middle = at(0.8).expect("a withstand");
+        assert!((middle.rate.si() / 1e9 - 2.5).abs() < 1e-9);
+        assert_eq!(at(0.05), at(0.1));
+        for none in [0.0, -1.0, 1.01, f64::NAN] {
+            assert_eq!(at(none), None);
+        }
+        assert_eq!(withstand_at(kv(72.5), 1.5, None, 0.5), None);
+    }
+
+    #[test]
+    fn peak_and_rate_are_two_answers() {
+        let withstand = withstand_at(kv(145.0), 1.3, None, 1.0).expect("a withstand");
+        let compared = withstand.compared_with(withstand.peak * 0.9, withstand.rate * 1.2);
+        assert!((compared.peak.si() - 0.9).abs() < 1e-12);
+        assert!((compared.rate.si() - 1.2).abs() < 1e-12);
+    }
+}
