@@ -1,12 +1,13 @@
 //! The door: texts in, findings and figures out.
 
+use std::collections::HashMap;
 use std::sync::Arc;
 
 use crate::case::Case;
-use crate::finding::{Finding, FindingKind, Findings};
+use crate::finding::{self, Finding, FindingKind, Findings};
 use crate::particular::SheetKind;
 use crate::rules::{self, Check, Policy, Rule};
-use crate::sheet::{self, Set};
+use crate::sheet::{self, Comparison, Seen, Set, Sheet, SheetId, watch};
 use crate::source::{Loader, NoLoader, Sources};
 
 /// Holds texts against the rules.
@@ -74,33 +75,81 @@ impl Assessor {
 
     /// Holds the texts against the rules. Never stops at the first trouble: what could be read is checked.
     pub fn assess(&self, sources: &Sources) -> Assessment {
-        let mut sources = sources.clone();
-        let mut findings = Findings::new();
+        self.run(sources.clone(), None)
+    }
+
+    /// Holds these texts, by their names, against the rules, and takes over from an earlier assessment what still holds: the outcome
+    /// is the same, and the cost is that of what has changed.
+    pub fn assess_again(&self, before: &Assessment, texts: impl IntoIterator<Item = (String, Arc<str>)>) -> Assessment {
+        let mut sources = Sources::after(&before.sources);
+        for (name, text) in texts {
+            sources.add(name, text);
+        }
+        self.run(sources, Some(before))
+    }
+
+    fn run(&self, mut sources: Sources, before: Option<&Assessment>) -> Assessment {
+        let mut found = Findings::new();
         let names: Vec<&'static str> = self.rules.iter().map(|rule| rule.name).collect();
-        let set = sheet::build(&mut sources, self.loader.as_ref(), &names, &mut findings);
+        let set =
+            sheet::build(&mut sources, self.loader.as_ref(), &names, before.map(|before| &before.set), &mut found);
+        sources.settle();
         for rule in &self.rules {
-            if let Check::Set(check) = rule.check {
-                check(&set, &self.policy, &mut findings);
+            if let Check::Set(check) | Check::Both(check, _) = rule.check {
+                check(&set, &self.policy, &mut found);
             }
         }
+        let mut findings = found.shared();
+        let before = before.filter(|before| before.memory.policy == self.policy && before.memory.knows(&self.rules));
+        let mut same = before.map(|before| (before, Comparison::new(&set, &before.set)));
         let mut cases = Vec::new();
-        for sheet in set.of_kind(SheetKind::Breaker) {
-            let case = Case::new(&set, sheet, &self.policy);
-            let before = findings.len();
-            for rule in &self.rules {
-                if let Check::Case(check) = rule.check {
-                    check(&case, &mut findings);
-                }
-            }
-            for finding in findings.iter_mut().skip(before) {
-                finding.breaker.get_or_insert_with(|| sheet.name.clone());
-                finding.sheet.get_or_insert(sheet.id);
-            }
-            findings.retain_from(before, |finding| !case.has_reason(finding));
-            cases.push(CaseSummary { breaker: sheet.name.clone(), duty: case.duty.figures() });
+        let mut judged = HashMap::new();
+        for sheet in set.sheets() {
+            let kept = same.as_mut().and_then(|(before, same)| {
+                before.memory.judged.get(&sheet.id).filter(|kept| same.holds(&kept.seen, kept.age)).cloned()
+            });
+            let kept = kept.unwrap_or_else(|| Arc::new(self.judge(&set, sheet)));
+            findings.extend_from_slice(&kept.findings);
+            cases.extend(kept.case.clone());
+            judged.insert(sheet.id, kept);
         }
         rules::deviations::apply(&set, &self.policy, &mut findings);
-        Assessment { sources, findings: findings.sorted(), cases, set }
+        finding::sort(&mut findings, &sources);
+        let memory = Memory { rules: self.rules.clone(), policy: self.policy.clone(), judged };
+        Assessment { sources, set, findings, cases, memory }
+    }
+
+    /// Holds one sheet against the rules, and where it is a breaker, its case.
+    fn judge(&self, set: &Set, sheet: &Sheet) -> Judged {
+        let ((findings, case), seen) = watch(|| {
+            // Whatever is said of it depends on it.
+            set.sheet(sheet.id);
+            let mut findings = Findings::new();
+            for rule in &self.rules {
+                if let Check::Sheet(check) | Check::Both(_, check) = rule.check {
+                    check(set, sheet, &self.policy, &mut findings);
+                }
+            }
+            let case = (sheet.kind == SheetKind::Breaker).then(|| self.judge_case(set, sheet, &mut findings));
+            (findings.shared(), case)
+        });
+        Judged { findings, case, seen, age: set.age() }
+    }
+
+    fn judge_case(&self, set: &Set, sheet: &Sheet, findings: &mut Findings) -> Arc<CaseSummary> {
+        let case = Case::new(set, sheet, &self.policy);
+        let before = findings.len();
+        for rule in &self.rules {
+            if let Check::Case(check) = rule.check {
+                check(&case, findings);
+            }
+        }
+        for finding in findings.iter_mut().skip(before) {
+            finding.breaker.get_or_insert_with(|| sheet.name.clone());
+            finding.sheet.get_or_insert(sheet.id);
+        }
+        findings.retain_from(before, |finding| !case.has_reason(finding));
+        Arc::new(CaseSummary { breaker: sheet.name.clone(), duty: case.duty.figures() })
     }
 }
 
@@ -111,8 +160,33 @@ pub struct Assessment {
     pub sources: Sources,
     /// The sheets.
     pub set: Set,
-    findings: Vec<Finding>,
-    cases: Vec<CaseSummary>,
+    findings: Vec<Arc<Finding>>,
+    cases: Vec<Arc<CaseSummary>>,
+    memory: Memory,
+}
+
+/// What later assessments may take over.
+#[derive(Debug)]
+struct Memory {
+    rules: Vec<&'static Rule>,
+    policy: Policy,
+    judged: HashMap<SheetId, Arc<Judged>>,
+}
+
+/// What was found on a sheet, and what that rests on.
+#[derive(Debug)]
+struct Judged {
+    findings: Vec<Arc<Finding>>,
+    case: Option<Arc<CaseSummary>>,
+    seen: Seen,
+    /// The age of the set at that time.
+    age: u64,
+}
+
+impl Memory {
+    fn knows(&self, rules: &[&'static Rule]) -> bool {
+        self.rules.len() == rules.len() && self.rules.iter().zip(rules).all(|(a, b)| std::ptr::eq(*a, *b))
+    }
 }
 
 /// The duty of one breaker, as figures.
@@ -126,19 +200,19 @@ pub struct CaseSummary {
 
 impl Assessment {
     /// The findings, in the order of the text.
-    pub fn findings(&self) -> &[Finding] {
+    pub fn findings(&self) -> &[Arc<Finding>] {
         &self.findings
     }
 
     /// The breakers with their duty, in the order of the text.
-    pub fn cases(&self) -> &[CaseSummary] {
+    pub fn cases(&self) -> &[Arc<CaseSummary>] {
         &self.cases
     }
 
     /// Puts a finding in that arose outside of the text, such as a file that cannot be read.
     pub fn add(&mut self, finding: Finding) {
-        self.findings.push(finding);
-        self.findings.sort_by(|a, b| (a.place, a.rule).cmp(&(b.place, b.rule)));
+        self.findings.push(Arc::new(finding));
+        finding::sort(&mut self.findings, &self.sources);
     }
 
     /// How many findings of a kind are open, that is, not accepted.

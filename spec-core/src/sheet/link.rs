@@ -1,6 +1,6 @@
 //! What the links of headings point at, over a set of files.
 
-use std::collections::BTreeMap;
+use std::collections::HashMap;
 
 use super::{Set, Sheet, SheetId};
 use crate::finding::Findings;
@@ -52,40 +52,75 @@ pub(super) fn scope(files: usize, uses: &[(FileId, FileId, Place)], findings: &m
     Scope { reach }
 }
 
+/// What the links of each sheet point at while they are resolved, by the number of the sheet.
+#[derive(Debug)]
+pub(super) struct Links(Vec<Targets>);
+
+type Targets = Vec<(&'static str, LinkTarget)>;
+
+impl Links {
+    fn of(&self, id: SheetId) -> &[(&'static str, LinkTarget)] {
+        self.0.get(id.0 as usize).map_or(&[], Vec::as_slice)
+    }
+
+    fn of_mut(&mut self, id: SheetId) -> Option<&mut Targets> {
+        self.0.get_mut(id.0 as usize)
+    }
+
+    /// The sheet that the link `word` of a sheet points at.
+    fn target(&self, id: SheetId, word: &str) -> Option<SheetId> {
+        sheet_of(self.of(id), word)
+    }
+
+    /// What the links of a sheet point at, to be kept elsewhere.
+    pub fn take(&mut self, id: SheetId) -> Targets {
+        self.of_mut(id).map(std::mem::take).unwrap_or_default()
+    }
+}
+
+/// The sheet that the link `word` points at.
+pub(super) fn sheet_of(targets: &[(&'static str, LinkTarget)], word: &str) -> Option<SheetId> {
+    targets.iter().find(|(w, _)| *w == word).and_then(|(_, target)| match target {
+        LinkTarget::Sheet(id) => Some(*id),
+        LinkTarget::Rule(_) => None,
+    })
+}
+
 /// Resolves the links of every sheet.
 pub(super) fn resolve(set: &mut Set, rule_names: &[&'static str], findings: &mut Findings) {
     set.index_sheets();
     names_once(set, findings);
     let by_name = index(set);
-    let mut resolved = Vec::with_capacity(set.sheets.len());
-    for sheet in &set.sheets {
-        resolved.push(targets(set, &by_name, sheet, rule_names, findings));
-    }
-    for (sheet, targets) in set.sheets.iter_mut().zip(resolved) {
-        sheet.targets = targets;
+    let mut links = Links(vec![Targets::new(); set.slots.len()]);
+    for sheet in set.sheets() {
+        let found = targets(set, &by_name, sheet, rule_names, findings);
+        if let Some(slot) = links.of_mut(sheet.id) {
+            *slot = found;
+        }
     }
     for word in ["like", "through"] {
-        cut_chains(set, word, findings);
+        cut_chains(set, &mut links, word, findings);
     }
-    defaults(set, findings);
-    set.index_links();
+    defaults(set, &mut links, findings);
+    set.take_links(links);
 }
 
-type Index = BTreeMap<(FileId, String), Vec<SheetId>>;
+/// The sheets of each name, file by file.
+type Index<'a> = HashMap<(FileId, &'a str), Vec<SheetId>>;
 
-fn index(set: &Set) -> Index {
+fn index(set: &Set) -> Index<'_> {
     let mut index = Index::new();
-    for sheet in set.sheets.iter().filter(|sheet| !sheet.name.is_empty()) {
-        index.entry((sheet.file(), sheet.name.clone())).or_default().push(sheet.id);
+    for sheet in set.sheets().filter(|sheet| !sheet.name.is_empty()) {
+        index.entry((sheet.file, sheet.name.as_str())).or_default().push(sheet.id);
     }
     index
 }
 
-fn lookup<'a>(set: &'a Set, index: &Index, file: FileId, name: &str, kinds: &[SheetKind]) -> Option<&'a Sheet> {
+fn lookup<'a>(set: &'a Set, index: &Index<'_>, file: FileId, name: &str, kinds: &[SheetKind]) -> Option<&'a Sheet> {
     // Kinds in the order of preference, then files, so that a breaker is found before a system of its name.
     kinds.iter().find_map(|kind| {
         set.scope.of(file).iter().find_map(|id| {
-            let sheets = index.get(&(*id, name.to_owned()))?;
+            let sheets = index.get(&(*id, name))?;
             sheets.iter().filter_map(|id| set.sheet(*id)).find(|sheet| sheet.kind == *kind)
         })
     })
@@ -93,7 +128,7 @@ fn lookup<'a>(set: &'a Set, index: &Index, file: FileId, name: &str, kinds: &[Sh
 
 fn targets(
     set: &Set,
-    index: &Index,
+    index: &Index<'_>,
     sheet: &Sheet,
     rule_names: &[&'static str],
     findings: &mut Findings,
@@ -122,8 +157,7 @@ fn targets(
                 None => {
                     let reach = set.scope.of(sheet.file());
                     let names = set
-                        .sheets
-                        .iter()
+                        .sheets()
                         .filter(|s| kinds.contains(&s.kind) && s.id != sheet.id && reach.contains(&s.file()))
                         .map(|s| s.name.as_str());
                     let near = nearest(names, name);
@@ -165,8 +199,8 @@ fn nearest<'a>(names: impl Iterator<Item = &'a str>, wanted: &str) -> Option<&'a
 
 /// Two sheets of one kind and name in one file, or a second tender.
 fn names_once(set: &Set, findings: &mut Findings) {
-    let mut first: BTreeMap<(FileId, &'static str, &str), &Sheet> = BTreeMap::new();
-    for sheet in &set.sheets {
+    let mut first: HashMap<(FileId, &'static str, &str), &Sheet> = HashMap::new();
+    for sheet in set.sheets() {
         // `like` finds families and breakers alike, so they share their names.
         let room = match sheet.kind {
             SheetKind::Family | SheetKind::Breaker => "breaker or family",
@@ -197,13 +231,20 @@ const LONGEST_CHAIN: usize = 100;
 
 /// A chain of `like` (or `through`) that comes back to itself is cut at the last of its links in the text, and one that is longer
 /// than anybody can follow is cut where it becomes so. Every sheet is visited once.
-fn cut_chains(set: &mut Set, word: &'static str, findings: &mut Findings) {
+fn cut_chains(set: &Set, links: &mut Links, word: &'static str, findings: &mut Findings) {
+    // Where each sheet stands in the text, by its number.
+    let mut positions = vec![0; links.0.len()];
+    for (position, id) in set.order.iter().enumerate() {
+        if let Some(slot) = positions.get_mut(id.0 as usize) {
+            *slot = position;
+        }
+    }
     // How many sheets stand above each; nothing yet where that is not known.
-    let mut above: Vec<Option<usize>> = vec![None; set.sheets.len()];
-    let mut on_path = vec![false; set.sheets.len()];
-    for start in 0..set.sheets.len() {
-        let mut path = Vec::new();
-        let mut next = Some(SheetId(start as u32));
+    let mut above: Vec<Option<usize>> = vec![None; links.0.len()];
+    let mut on_path = vec![false; links.0.len()];
+    for start in &set.order {
+        let mut path: Vec<SheetId> = Vec::new();
+        let mut next = Some(*start);
         while let Some(id) = next {
             let at = id.0 as usize;
             if above.get(at).copied().flatten().is_some() {
@@ -211,8 +252,8 @@ fn cut_chains(set: &mut Set, word: &'static str, findings: &mut Findings) {
             }
             if on_path.get(at).copied().unwrap_or(true) {
                 let mut circle = path.split_off(path.iter().position(|on| *on == id).unwrap_or(0));
-                if let Some(last) = circle.iter().max().copied() {
-                    cut(set, last, word, findings, "comes back to itself");
+                if let Some(last) = circle.iter().max_by_key(|id| positions.get(id.0 as usize)).copied() {
+                    cut(set, links, last, word, findings, "comes back to itself");
                     // Turned so that the one that was cut is now the end of the chain.
                     let after = circle.iter().position(|on| *on == last).map_or(0, |end| (end + 1) % circle.len());
                     circle.rotate_left(after);
@@ -224,15 +265,15 @@ fn cut_chains(set: &mut Set, word: &'static str, findings: &mut Findings) {
                 *mark = true;
             }
             path.push(id);
-            next = set.sheet(id).and_then(|sheet| sheet.target(word));
+            next = links.target(id, word);
         }
         // From the far end back, so that what stands above is known first.
         for id in path.into_iter().rev() {
-            let target = set.sheet(id).and_then(|sheet| sheet.target(word));
+            let target = links.target(id, word);
             let depth = target.map_or(0, |t| above.get(t.0 as usize).copied().flatten().unwrap_or(0) + 1);
             let too_long = depth > LONGEST_CHAIN;
             if too_long {
-                cut(set, id, word, findings, "stands at the end of more than 100 sheets");
+                cut(set, links, id, word, findings, "stands at the end of more than 100 sheets");
             }
             if let Some(slot) = above.get_mut(id.0 as usize) {
                 *slot = Some(if too_long { 0 } else { depth });
@@ -240,24 +281,25 @@ fn cut_chains(set: &mut Set, word: &'static str, findings: &mut Findings) {
         }
     }
 }
+
 /// Takes a link out of a sheet, and says why.
-fn cut(set: &mut Set, id: SheetId, word: &str, findings: &mut Findings, why: &str) {
-    let Some(sheet) = set.sheets.get_mut(id.0 as usize) else { return };
-    sheet.targets.retain(|(w, _)| *w != word);
+fn cut(set: &Set, links: &mut Links, id: SheetId, word: &str, findings: &mut Findings, why: &str) {
+    let (Some(sheet), Some(targets)) = (set.sheet(id), links.of_mut(id)) else { return };
+    targets.retain(|(w, _)| *w != word);
     let place = sheet.links.iter().find(|(link, _)| link.word == word).map_or(sheet.heading, |(_, place)| *place);
     let message = format!("{} {why} through {word}; this link is left out", sheet.title());
     findings.add(&rules::CIRCLE, place, message).label("left out");
 }
 
 /// Links that were left out: taken over through `like`, or the only sheet in reach.
-fn defaults(set: &mut Set, findings: &mut Findings) {
+fn defaults(set: &Set, links: &mut Links, findings: &mut Findings) {
     let mut added = Vec::new();
-    for sheet in &set.sheets {
+    for sheet in set.sheets() {
         for (word, kind) in wanted(sheet.kind) {
-            if sheet.target(word).is_some() || sheet.links.iter().any(|(link, _)| link.word == *word) {
+            if links.target(sheet.id, word).is_some() || sheet.links.iter().any(|(link, _)| link.word == *word) {
                 continue;
             }
-            let inherited = inherited(set, sheet, word);
+            let inherited = inherited(links, sheet.id, word);
             let mut in_reach = set.in_reach(sheet.file(), *kind);
             match (inherited, in_reach.next(), in_reach.next()) {
                 (Some(id), _, _) => added.push((sheet.id, *word, id)),
@@ -285,8 +327,8 @@ fn defaults(set: &mut Set, findings: &mut Findings) {
         }
     }
     for (id, word, target) in added {
-        if let Some(sheet) = set.sheets.get_mut(id.0 as usize) {
-            sheet.targets.push((word, LinkTarget::Sheet(target)));
+        if let Some(targets) = links.of_mut(id) {
+            targets.push((word, LinkTarget::Sheet(target)));
         }
     }
 }
@@ -301,15 +343,8 @@ const fn wanted(kind: SheetKind) -> &'static [(&'static str, SheetKind)] {
     }
 }
 
-fn inherited(set: &Set, sheet: &Sheet, word: &str) -> Option<SheetId> {
-    let mut next = sheet.target("like");
-    let mut steps = 0;
-    while let Some(above) = next.and_then(|id| set.sheet(id)) {
-        if let Some(target) = above.target(word) {
-            return Some(target);
-        }
-        steps += 1;
-        next = above.target("like").filter(|_| steps < set.sheets.len());
-    }
-    None
+fn inherited(links: &Links, id: SheetId, word: &str) -> Option<SheetId> {
+    // Circles of `like` are cut before this.
+    let mut above = std::iter::successors(links.target(id, "like"), |id| links.target(*id, "like"));
+    above.find_map(|id| links.target(id, word))
 }

@@ -6,29 +6,36 @@ mod link;
 mod read_quantity;
 mod read_value;
 mod reading;
+mod watch;
 
-pub use build::build;
+pub(crate) use build::build;
 pub use facts::{Facts, Stated};
 pub use link::{LinkTarget, Scope};
 pub use reading::{Class, Date, Item, Mixture, Pause, QuantityReading, Reading, Sequence, SequenceStep, Share};
 
+pub(crate) use watch::{Seen, watch};
+
 use std::collections::BTreeMap;
-use std::sync::OnceLock;
+use std::sync::{Arc, OnceLock};
 
 use firstpole_grammar::{Link, Name};
 
 use crate::particular::{Found, Limit, Particular, SheetKind};
-use crate::source::{FileId, Place};
+use crate::source::{Block, BlockId, FileId, Place};
+use build::BlockReading;
+use watch::Question;
 
-/// A sheet of the set.
+/// A sheet of the set, by the number of its block.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
-pub struct SheetId(pub u32);
+pub struct SheetId(u32);
 
 /// A sheet: its heading and what stands under it.
 #[derive(Clone, Debug)]
 pub struct Sheet {
     /// Which one it is.
     pub id: SheetId,
+    /// The file that it stands in.
+    file: FileId,
     /// What it describes.
     pub kind: SheetKind,
     /// Its name; for a tender its title, empty where it is missing.
@@ -42,7 +49,7 @@ pub struct Sheet {
     /// What the links point at, as far as they could be resolved, with the word of each.
     pub targets: Vec<(&'static str, LinkTarget)>,
     /// The particulars, in the order of the text.
-    pub statements: Vec<Statement>,
+    pub statements: Vec<Arc<Statement>>,
     /// The buyer's own labels, with their texts.
     pub own: Vec<OwnLine>,
     /// The end of the sheet's last line that says something: where a new particular is put.
@@ -52,15 +59,12 @@ pub struct Sheet {
 impl Sheet {
     /// The file that it stands in.
     pub const fn file(&self) -> FileId {
-        self.heading.file
+        self.file
     }
 
     /// The sheet that the link `word` points at.
     pub fn target(&self, word: &str) -> Option<SheetId> {
-        self.targets.iter().find(|(w, _)| *w == word).and_then(|(_, target)| match target {
-            LinkTarget::Sheet(id) => Some(*id),
-            LinkTarget::Rule(_) => None,
-        })
+        link::sheet_of(&self.targets, word)
     }
 
     /// `breaker LineBay`: how messages call it.
@@ -138,11 +142,29 @@ impl Statement {
 /// The sheets of a set of files, resolved.
 #[derive(Debug, Default)]
 pub struct Set {
+    /// What was made of each block, by its number.
+    slots: Vec<Option<Slot>>,
     /// The sheets, file by file, in the order of the text.
-    pub sheets: Vec<Sheet>,
+    order: Vec<SheetId>,
     /// Which files each file can refer to, itself first.
     pub scope: Scope,
     index: Index,
+    /// Counts up from one set to the next that takes over from it.
+    age: u64,
+}
+
+/// What was made of a block.
+#[derive(Clone, Debug)]
+struct Slot {
+    file: FileId,
+    block: Arc<Block>,
+    read: Arc<BlockReading>,
+    /// The sheet with its resolved links; a block before the first heading has none.
+    sheet: Option<Arc<Sheet>>,
+    /// The age of the set in which the sheet or one of its links was last another.
+    changed: u64,
+    /// What the sheet states, made when it is first asked for.
+    facts: OnceLock<Arc<Facts>>,
 }
 
 /// Where sheets are found without looking through all of them.
@@ -151,67 +173,138 @@ struct Index {
     by_kind: BTreeMap<SheetKind, Vec<SheetId>>,
     by_file: BTreeMap<(FileId, SheetKind), Vec<SheetId>>,
     pointing: BTreeMap<(SheetId, &'static str), Vec<SheetId>>,
-    /// What each sheet states, made when it is first asked for.
-    facts: Vec<OnceLock<Facts>>,
 }
 
 impl Set {
     /// A sheet.
     pub fn sheet(&self, id: SheetId) -> Option<&Sheet> {
-        self.sheets.get(id.0 as usize)
+        watch::sheet(id);
+        self.peek(id)
+    }
+
+    /// A sheet, without a note of it.
+    fn peek(&self, id: SheetId) -> Option<&Sheet> {
+        self.slot(id)?.sheet.as_deref()
+    }
+
+    fn slot(&self, id: SheetId) -> Option<&Slot> {
+        self.slots.get(id.0 as usize).and_then(Option::as_ref)
+    }
+
+    /// The sheet of a block.
+    pub fn sheet_of(&self, block: BlockId) -> Option<&Sheet> {
+        self.sheet(SheetId(block.0))
+    }
+
+    /// All sheets, file by file, in the order of the text.
+    pub fn sheets(&self) -> impl DoubleEndedIterator<Item = &Sheet> {
+        watch::question(Question::All);
+        self.order.iter().filter_map(|id| self.sheet(*id))
     }
 
     /// What a sheet states, with what it takes over through `like`, as rules ask for it.
     pub fn facts(&self, id: SheetId) -> &Facts {
         static NONE: Facts = Facts::new(Vec::new());
-        let slot = self.index.facts.get(id.0 as usize);
-        slot.map_or(&NONE, |slot| slot.get_or_init(|| Facts::new(self.resolved(id))))
+        // Whoever asks depends on the whole chain, also where the answer is there already.
+        self.chain(id).for_each(|sheet| watch::sheet(sheet.id));
+        let slot = self.slot(id).filter(|slot| slot.sheet.is_some());
+        slot.map_or(&NONE, |slot| slot.facts.get_or_init(|| Arc::new(Facts::new(self.resolved(id)))))
     }
 
     /// The sheets of one kind that `file` can refer to, in the order of the text, its own first.
     pub fn in_reach(&self, file: FileId, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
+        watch::question(Question::InReach(file, kind));
         let ids = self.scope.of(file).iter().filter_map(move |file| self.index.by_file.get(&(*file, kind)));
         ids.flatten().filter_map(|id| self.sheet(*id))
     }
 
     /// The sheets of one kind.
     pub fn of_kind(&self, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
+        watch::question(Question::OfKind(kind));
         self.index.by_kind.get(&kind).into_iter().flatten().filter_map(|id| self.sheet(*id))
     }
 
     /// The sheets whose link `word` points at `target`, in the order of the text.
     pub fn pointing_at(&self, target: SheetId, word: &'static str) -> impl Iterator<Item = &Sheet> {
+        watch::question(Question::Pointing(target, word));
         self.index.pointing.get(&(target, word)).into_iter().flatten().filter_map(|id| self.sheet(*id))
+    }
+
+    /// The sheets that a question is answered with.
+    fn answer(&self, question: &Question) -> Vec<SheetId> {
+        match question {
+            Question::All => self.order.clone(),
+            Question::OfKind(kind) => self.index.by_kind.get(kind).cloned().unwrap_or_default(),
+            Question::InReach(file, kind) => {
+                let ids = self.scope.of(*file).iter().filter_map(|file| self.index.by_file.get(&(*file, *kind)));
+                ids.flatten().copied().collect()
+            }
+            Question::Pointing(target, word) => self.index.pointing.get(&(*target, word)).cloned().unwrap_or_default(),
+        }
+    }
+
+    /// Which sets came before this one, in a row in which each took over from the last.
+    pub(crate) const fn age(&self) -> u64 {
+        self.age
     }
 
     /// Takes the sheets into the index, as far as their kinds and files go.
     fn index_sheets(&mut self) {
-        for sheet in &self.sheets {
-            self.index.by_kind.entry(sheet.kind).or_default().push(sheet.id);
-            self.index.by_file.entry((sheet.file(), sheet.kind)).or_default().push(sheet.id);
+        let mut index = Index::default();
+        for sheet in self.order.iter().filter_map(|id| self.peek(*id)) {
+            index.by_kind.entry(sheet.kind).or_default().push(sheet.id);
+            index.by_file.entry((sheet.file, sheet.kind)).or_default().push(sheet.id);
         }
+        self.index = index;
     }
 
-    /// Takes the links into the index, once they are resolved.
-    fn index_links(&mut self) {
-        self.index.facts.resize_with(self.sheets.len(), OnceLock::new);
-        for sheet in &self.sheets {
-            for (word, target) in &sheet.targets {
+    /// Takes resolved links in, and into the index.
+    fn take_links(&mut self, mut links: link::Links) {
+        let mut pointing: BTreeMap<(SheetId, &'static str), Vec<SheetId>> = BTreeMap::new();
+        for id in &self.order {
+            let Some(slot) = self.slots.get_mut(id.0 as usize).and_then(Option::as_mut) else { continue };
+            let Some(sheet) = &mut slot.sheet else { continue };
+            let targets = links.take(*id);
+            for (word, target) in &targets {
                 if let LinkTarget::Sheet(target) = target {
-                    self.index.pointing.entry((*target, word)).or_default().push(sheet.id);
+                    pointing.entry((*target, word)).or_default().push(*id);
                 }
+            }
+            if sheet.targets != targets {
+                Arc::make_mut(sheet).targets = targets;
+                slot.changed = self.age;
+            }
+        }
+        self.index.pointing = pointing;
+        self.drop_stale_facts();
+    }
+
+    /// Facts that were taken over from an earlier set hold as long as no sheet of their chain has changed.
+    fn drop_stale_facts(&mut self) {
+        let is_stale = |id: &SheetId| {
+            let kept = self.slot(*id).is_some_and(|slot| slot.facts.get().is_some());
+            kept && self.chain(*id).any(|sheet| self.slot(sheet.id).is_some_and(|slot| slot.changed == self.age))
+        };
+        let stale: Vec<SheetId> = self.order.iter().copied().filter(is_stale).collect();
+        for id in stale {
+            if let Some(slot) = self.slots.get_mut(id.0 as usize).and_then(Option::as_mut) {
+                slot.facts.take();
             }
         }
     }
 
+    /// A sheet and those that it takes over from through `like`, the nearest first.
+    fn chain(&self, id: SheetId) -> impl Iterator<Item = &Sheet> {
+        // Circles are cut when links are resolved.
+        std::iter::successors(self.peek(id), |sheet| sheet.target("like").and_then(|id| self.peek(id)))
+    }
+
     /// What a sheet states, with what it takes over through `like`: its own statements first, then those of the sheets that it
     /// is like, nearest first, for particulars that were not stated before.
-    pub fn resolved(&self, id: SheetId) -> Vec<Statement> {
-        let mut all: Vec<Statement> = Vec::new();
-        let mut next = Some(id);
-        let mut seen = Vec::new();
-        while let Some(sheet) = next.filter(|id| !seen.contains(id)).and_then(|id| self.sheet(id)) {
-            seen.push(sheet.id);
+    pub fn resolved(&self, id: SheetId) -> Vec<Arc<Statement>> {
+        let mut all: Vec<Arc<Statement>> = Vec::new();
+        for sheet in self.chain(id) {
+            watch::sheet(sheet.id);
             let above = all.len();
             for statement in &sheet.statements {
                 let nearer = all.get(..above).unwrap_or(&[]);
@@ -222,9 +315,39 @@ impl Set {
                     all.push(statement.clone());
                 }
             }
-            next = sheet.target("like");
         }
         all
+    }
+}
+
+/// Whether what somebody made of an earlier set still holds in one that took over from it.
+#[derive(Debug)]
+pub(crate) struct Comparison<'a> {
+    now: &'a Set,
+    before: &'a Set,
+    /// Whether questions are still answered as before, as far as somebody wanted to know.
+    same: BTreeMap<Question, bool>,
+}
+
+impl<'a> Comparison<'a> {
+    /// Of a set with the one that it took over from.
+    pub fn new(now: &'a Set, before: &'a Set) -> Self {
+        Self { now, before, same: BTreeMap::new() }
+    }
+
+    /// Whether all that was seen, when a set of this age was the newest, is still the same.
+    pub fn holds(&mut self, seen: &Seen, age: u64) -> bool {
+        let unchanged = |id: &SheetId| self.now.slot(*id).is_some_and(|slot| slot.changed <= age);
+        seen.sheets.iter().all(unchanged) && seen.questions.iter().all(|question| self.is_answered_alike(question))
+    }
+
+    fn is_answered_alike(&mut self, question: &Question) -> bool {
+        if let Some(same) = self.same.get(question) {
+            return *same;
+        }
+        let same = self.now.answer(question) == self.before.answer(question);
+        self.same.insert(question.clone(), same);
+        same
     }
 }
 
