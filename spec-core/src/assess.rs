@@ -1,14 +1,15 @@
 //! The door: texts in, findings and figures out.
 
-use std::collections::HashMap;
 use std::sync::Arc;
+
+use firstpole_grammar::Span;
 
 use crate::case::Case;
 use crate::finding::{self, Finding, FindingKind, Findings};
 use crate::particular::SheetKind;
 use crate::rules::{self, Check, Policy, Rule};
-use crate::sheet::{self, Comparison, Seen, Set, Sheet, SheetId, watch};
-use crate::source::{Loader, NoLoader, Sources};
+use crate::sheet::{self, Comparison, Seen, Set, Sheet, watch};
+use crate::source::{FilePlace, Loader, NoLoader, Place, Sources};
 
 /// Holds texts against the rules.
 ///
@@ -90,6 +91,7 @@ impl Assessor {
 
     fn run(&self, mut sources: Sources, before: Option<&Assessment>) -> Assessment {
         let mut found = Findings::new();
+        let before = before.filter(|before| before.memory.knows(&self.rules));
         let names: Vec<&'static str> = self.rules.iter().map(|rule| rule.name).collect();
         let set =
             sheet::build(&mut sources, self.loader.as_ref(), &names, before.map(|before| &before.set), &mut found);
@@ -100,18 +102,21 @@ impl Assessor {
             }
         }
         let mut findings = found.shared();
-        let before = before.filter(|before| before.memory.policy == self.policy && before.memory.knows(&self.rules));
+        let before = before.filter(|before| before.memory.policy == self.policy);
         let mut same = before.map(|before| (before, Comparison::new(&set, &before.set)));
         let mut cases = Vec::new();
-        let mut judged = HashMap::new();
+        let mut judged = vec![None; set.numbers()];
         for sheet in set.sheets() {
             let kept = same.as_mut().and_then(|(before, same)| {
-                before.memory.judged.get(&sheet.id).filter(|kept| same.holds(&kept.seen, kept.age)).cloned()
+                let kept = before.memory.judged.get(sheet.id.0 as usize)?.as_ref()?;
+                same.holds(&kept.seen, kept.age).then(|| kept.clone())
             });
             let kept = kept.unwrap_or_else(|| Arc::new(self.judge(&set, sheet)));
             findings.extend_from_slice(&kept.findings);
             cases.extend(kept.case.clone());
-            judged.insert(sheet.id, kept);
+            if let Some(slot) = judged.get_mut(sheet.id.0 as usize) {
+                *slot = Some(kept);
+            }
         }
         rules::deviations::apply(&set, &self.policy, &mut findings);
         finding::sort(&mut findings, &sources);
@@ -170,7 +175,8 @@ pub struct Assessment {
 struct Memory {
     rules: Vec<&'static Rule>,
     policy: Policy,
-    judged: HashMap<SheetId, Arc<Judged>>,
+    /// By the number of the sheet.
+    judged: Vec<Option<Arc<Judged>>>,
 }
 
 /// What was found on a sheet, and what that rests on.
@@ -215,6 +221,16 @@ impl Assessment {
         finding::sort(&mut self.findings, &self.sources);
     }
 
+    /// Where a place lies.
+    pub fn at(&self, place: Place) -> FilePlace {
+        self.sources.at(place)
+    }
+
+    /// The bytes that a place takes in the text of its file.
+    pub fn span(&self, place: Place) -> Span {
+        self.sources.span(place)
+    }
+
     /// How many findings of a kind are open, that is, not accepted.
     pub fn count(&self, kind: FindingKind) -> usize {
         self.findings.iter().filter(|finding| finding.kind == kind && finding.accepted.is_none()).count()
@@ -228,5 +244,101 @@ impl Assessment {
     /// Whether a finding blocks a gate that blocks on these kinds.
     pub fn blocks(&self, gate: &[FindingKind]) -> bool {
         self.findings.iter().any(|finding| finding.blocks(gate))
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+
+    use super::*;
+    use crate::source::{LoadFault, NoLoader};
+
+    const FAMILY: &str = "cbspec 1\nfamily Big\n    rated voltage: 145 kV\n    DC time constant: 45 ms\n";
+    const BAY: &str = "cbspec 1\n\nuse \"family.cbspec\"\n\ntender \"A\"\n    jurisdiction: EU\n\nsystem Ring\n    highest voltage: 145 kV\n    \
+                       frequency: 50 Hz\n    short-circuit current: 28 kA\n    X/R: 21\n\nsite Yard\n    installation: outdoor\n    \
+                       altitude: 900 m\n\nbreaker One on Ring at Yard like Big\n    Isc: 31.5 kA\n\nbreaker Two on Ring at Yard like One\n    \
+                       opening time: 30 ms\n\ncircuit Other for One\n    kind: cable\n\ncircuit Line for Two\n    kind: overhead line\n    load current: 900 A\n\n\
+                       deviation from rated-voltage-not-preferred in Two\n    reason: \"x\"\n";
+
+    struct Families(String);
+
+    impl Loader for Families {
+        fn load(&self, _: &str, path: &str) -> Result<(String, Arc<str>), LoadFault> {
+            if path == "family.cbspec" {
+                Ok((path.to_owned(), self.0.as_str().into()))
+            } else {
+                NoLoader.load("", path)
+            }
+        }
+    }
+
+    /// All that can be seen of an assessment.
+    fn told(assessment: &Assessment) -> String {
+        let findings = assessment.findings().iter().map(|f| {
+            let related: Vec<_> = f.related.iter().map(|r| (assessment.at(r.place), &r.message)).collect();
+            let edits: Vec<_> = f.edits.iter().map(|e| (assessment.at(e.place), &e.text)).collect();
+            format!("{:?} {} {:?} {} {related:?} {edits:?}\n", assessment.at(f.place), f.rule, f.breaker, f.message)
+        });
+        let figures = |case: &CaseSummary| {
+            let figures: Vec<_> = case.duty.iter().map(|f| (f.key, f.working.clone())).collect();
+            format!("{figures:?}")
+        };
+        let cases = assessment.cases().iter().map(|case| format!("{} {}\n", case.breaker, figures(case)));
+        let sheets = assessment.set.sheets().map(|sheet| {
+            let facts = assessment.set.facts(sheet.id);
+            let stated = facts.statements().iter().map(|s| (assessment.at(s.value), s.particular.label));
+            format!("{} {:?} {:?}\n", sheet.title(), assessment.at(sheet.heading), stated.collect::<Vec<_>>())
+        });
+        findings.chain(cases).chain(sheets).collect()
+    }
+
+    fn assessor(family: &str) -> Assessor {
+        Assessor::standard().with_loader(Families(family.to_owned()))
+    }
+
+    #[test]
+    fn what_did_not_change_is_kept() {
+        let before = assessor(FAMILY).assess(&Sources::of("bay", BAY));
+        let text = BAY.replace("load current: 900 A", "load current: 1 900 A");
+        let after = assessor(FAMILY).assess_again(&before, [("bay".to_owned(), text.as_str().into())]);
+        let kept = |name: &str| {
+            let of = |a: &Assessment| a.cases().iter().find(|case| case.breaker == name).cloned().expect("a case");
+            Arc::ptr_eq(&of(&before), &of(&after))
+        };
+        assert!(kept("One"));
+        assert!(!kept("Two"), "its circuit has changed");
+    }
+
+    #[test]
+    fn other_rules_or_thresholds_keep_nothing() {
+        let before = assessor(FAMILY).assess(&Sources::of("bay", BAY));
+        let policy = Policy { issued: true, ..Policy::default() };
+        let again = assessor(FAMILY).with_policy(policy.clone());
+        let after = again.assess_again(&before, [("bay".to_owned(), BAY.into())]);
+        let fresh = assessor(FAMILY).with_policy(policy).assess(&Sources::of("bay", BAY));
+        assert_eq!(told(&after), told(&fresh));
+    }
+
+    proptest! {
+        #![proptest_config(ProptestConfig::with_cases(60))]
+        #[test]
+        fn edit_upon_edit_is_as_read_afresh(edits in prop::collection::vec(
+            (any::<bool>(), 0_usize..1000, 0_usize..40, "(site Yard|\n|breaker Three on Ring|[0-9]|x|:|use |#|\nfamily Big\n|kA| like Two| at|){0,2}"),
+            1..12,
+        )) {
+            let (mut bay, mut family) = (BAY.to_owned(), FAMILY.to_owned());
+            let mut assessment = assessor(&family).assess(&Sources::of("bay", bay.as_str()));
+            for (own, start, len, put) in edits {
+                let text = if own { &mut bay } else { &mut family };
+                let start = text.floor_char_boundary(start % (text.len() + 1));
+                let end = text.floor_char_boundary((start + len).min(text.len())).max(start);
+                text.replace_range(start..end, &put);
+                let assessor = assessor(&family);
+                assessment = assessor.assess_again(&assessment, [("bay".to_owned(), bay.as_str().into())]);
+                let fresh = assessor.assess(&Sources::of("bay", bay.as_str()));
+                prop_assert_eq!(told(&assessment), told(&fresh));
+            }
+        }
     }
 }

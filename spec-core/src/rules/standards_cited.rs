@@ -52,9 +52,8 @@ fn breakers_of<'a>(set: &'a Set, list: &Cited<'_>) -> Vec<&'a Facts> {
         at += 1;
     }
     let breakers = takers.into_iter().filter(|sheet| sheet.kind == SheetKind::Breaker).map(|sheet| set.facts(sheet.id));
-    let states = |facts: &&Facts| {
-        facts.statement(&breaker::STANDARDS).is_some_and(|own| own.value == list.statement.value)
-    };
+    let states =
+        |facts: &&Facts| facts.statement(&breaker::STANDARDS).is_some_and(|own| own.value == list.statement.value);
     breakers.filter(states).collect()
 }
 

@@ -29,14 +29,23 @@ pub(crate) fn build(
 ) -> Set {
     let mut set = Set { age: before.map_or(0, |before| before.age + 1), ..Set::default() };
     let mut uses = Vec::new();
+    let mut same = before.is_some();
     let mut next = 0;
     // Files that `use` brings in are appended, and so are read in turn.
     while let Some(file) = sources.shared(FileId(next)) {
         let id = FileId(next);
         let mut head = Head::default();
         for at in &file.blocks {
-            let slot = before.and_then(|before| before.taken_over(id, at));
-            let slot = slot.unwrap_or_else(|| read_block(id, &file.text, at, set.age));
+            let slot = before.and_then(|before| before.taken_over(id, at)).unwrap_or_else(|| {
+                let slot = read_block(id, &file.text, at, set.age);
+                let earlier = before.and_then(|before| before.peek(SheetId(at.id.0)));
+                same &= match (&slot.sheet, earlier) {
+                    (Some(sheet), Some(earlier)) => sheet.is_headed_like(earlier),
+                    (None, None) => true,
+                    _ => false,
+                };
+                Arc::new(slot)
+            });
             findings.extend(&slot.read.findings);
             head.note(&slot.read);
             for (path, place) in &slot.read.uses {
@@ -54,19 +63,33 @@ pub(crate) fn build(
         head.check(findings);
         next += 1;
     }
-    set.scope = link::scope(next as usize, &uses, findings);
-    link::resolve(&mut set, rule_names, findings);
+    match before.filter(|before| same && before.order == set.order && before.web.uses == uses) {
+        Some(before) => set.hang_together_like(before),
+        None => link::resolve(&mut set, uses, next as usize, rule_names),
+    }
+    set.drop_stale_facts();
+    findings.extend(&set.web.findings);
     set
 }
 
 impl Set {
     /// What was made of a block, where it still stands in the same file.
-    fn taken_over(&self, file: FileId, at: &BlockAt) -> Option<Slot> {
+    fn taken_over(&self, file: FileId, at: &BlockAt) -> Option<Arc<Slot>> {
         let slot = self.slots.get(at.id.0 as usize)?.as_ref()?;
         (slot.file == file && Arc::ptr_eq(&slot.block, &at.block)).then(|| slot.clone())
     }
 
-    fn put(&mut self, id: BlockId, slot: Slot) {
+    /// Takes the links over from a set with the same headings.
+    fn hang_together_like(&mut self, before: &Self) {
+        self.web = before.web.clone();
+        let changed = |id: &SheetId| self.slot(*id).is_some_and(|slot| slot.changed == self.age);
+        let read: Vec<SheetId> = self.order.iter().copied().filter(changed).collect();
+        for id in read {
+            self.take_targets(id, before.peek(id).map(|sheet| sheet.targets.clone()).unwrap_or_default());
+        }
+    }
+
+    fn put(&mut self, id: BlockId, slot: Arc<Slot>) {
         let at = id.0 as usize;
         if slot.sheet.is_some() {
             self.order.push(SheetId(id.0));

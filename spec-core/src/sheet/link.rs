@@ -1,8 +1,9 @@
 //! What the links of headings point at, over a set of files.
 
-use std::collections::HashMap;
+use std::collections::{BTreeMap, HashMap};
+use std::sync::Arc;
 
-use super::{Set, Sheet, SheetId};
+use super::{Set, Sheet, SheetId, Web};
 use crate::finding::Findings;
 use crate::particular::{SheetKind, Target};
 use crate::rules::reading as rules;
@@ -31,7 +32,7 @@ impl Scope {
 }
 
 /// The scope of every file, from what uses what; circles are found and cut.
-pub(super) fn scope(files: usize, uses: &[(FileId, FileId, Place)], findings: &mut Findings) -> Scope {
+fn scope(files: usize, uses: &[(FileId, FileId, Place)], findings: &mut Findings) -> Scope {
     let mut reach = Vec::with_capacity(files);
     for file in 0..files as u32 {
         let mut seen = vec![FileId(file)];
@@ -54,7 +55,7 @@ pub(super) fn scope(files: usize, uses: &[(FileId, FileId, Place)], findings: &m
 
 /// What the links of each sheet point at while they are resolved, by the number of the sheet.
 #[derive(Debug)]
-pub(super) struct Links(Vec<Targets>);
+struct Links(Vec<Targets>);
 
 type Targets = Vec<(&'static str, LinkTarget)>;
 
@@ -73,7 +74,7 @@ impl Links {
     }
 
     /// What the links of a sheet point at, to be kept elsewhere.
-    pub fn take(&mut self, id: SheetId) -> Targets {
+    fn take(&mut self, id: SheetId) -> Targets {
         self.of_mut(id).map(std::mem::take).unwrap_or_default()
     }
 }
@@ -86,23 +87,39 @@ pub(super) fn sheet_of(targets: &[(&'static str, LinkTarget)], word: &str) -> Op
     })
 }
 
-/// Resolves the links of every sheet.
-pub(super) fn resolve(set: &mut Set, rule_names: &[&'static str], findings: &mut Findings) {
-    set.index_sheets();
-    names_once(set, findings);
+/// Resolves the links of every sheet, in a set of so many files of which these use each other.
+pub(super) fn resolve(set: &mut Set, uses: Vec<(FileId, FileId, Place)>, files: usize, rule_names: &[&'static str]) {
+    let mut findings = Findings::new();
+    let scope = scope(files, &uses, &mut findings);
+    set.web = Arc::new(Web { uses, scope, index: set.indexed(), findings: Vec::new() });
+    names_once(set, &mut findings);
     let by_name = index(set);
     let mut links = Links(vec![Targets::new(); set.slots.len()]);
     for sheet in set.sheets() {
-        let found = targets(set, &by_name, sheet, rule_names, findings);
+        let found = targets(set, &by_name, sheet, rule_names, &mut findings);
         if let Some(slot) = links.of_mut(sheet.id) {
             *slot = found;
         }
     }
     for word in ["like", "through"] {
-        cut_chains(set, &mut links, word, findings);
+        cut_chains(set, &mut links, word, &mut findings);
     }
-    defaults(set, &mut links, findings);
-    set.take_links(links);
+    defaults(set, &mut links, &mut findings);
+    let mut pointing: BTreeMap<(SheetId, &'static str), Vec<SheetId>> = BTreeMap::new();
+    for id in set.order.clone() {
+        let targets = links.take(id);
+        for (word, target) in &targets {
+            if let LinkTarget::Sheet(target) = target {
+                pointing.entry((*target, word)).or_default().push(id);
+            }
+        }
+        set.take_targets(id, targets);
+    }
+    // Nobody else has it yet.
+    if let Some(web) = Arc::get_mut(&mut set.web) {
+        web.index.pointing = pointing;
+        web.findings = findings.shared();
+    }
 }
 
 /// The sheets of each name, file by file.
@@ -119,7 +136,7 @@ fn index(set: &Set) -> Index<'_> {
 fn lookup<'a>(set: &'a Set, index: &Index<'_>, file: FileId, name: &str, kinds: &[SheetKind]) -> Option<&'a Sheet> {
     // Kinds in the order of preference, then files, so that a breaker is found before a system of its name.
     kinds.iter().find_map(|kind| {
-        set.scope.of(file).iter().find_map(|id| {
+        set.web.scope.of(file).iter().find_map(|id| {
             let sheets = index.get(&(*id, name))?;
             sheets.iter().filter_map(|id| set.sheet(*id)).find(|sheet| sheet.kind == *kind)
         })
@@ -155,12 +172,13 @@ fn targets(
                 }
                 Some(target) => found.push((word, LinkTarget::Sheet(target.id))),
                 None => {
-                    let reach = set.scope.of(sheet.file());
+                    let reach = set.web.scope.of(sheet.file());
                     let names = set
                         .sheets()
                         .filter(|s| kinds.contains(&s.kind) && s.id != sheet.id && reach.contains(&s.file()))
                         .map(|s| s.name.as_str());
-                    let near = nearest(names, name);
+                    // A text in which every link is wrong gets proposals for the first ones.
+                    let near = (findings.len() < UNKNOWN_COMPARED).then(|| nearest(names, name)).flatten();
                     let kinds: Vec<&str> = kinds.iter().map(|kind| kind.word()).collect();
                     unknown(findings, *place, &kinds.join(" or "), name, near);
                 }
@@ -182,6 +200,9 @@ fn unknown(findings: &mut Findings, place: Place, what: &str, name: &str, near: 
         finding.replace_by(if quoted { near.to_owned() } else { format!("\"{near}\"") });
     }
 }
+
+/// Findings on links up to which names are compared with an unknown one.
+const UNKNOWN_COMPARED: usize = 50;
 
 /// How many names an unknown one is compared with.
 const NAMES_COMPARED: usize = 1000;

@@ -20,6 +20,7 @@ use std::sync::{Arc, OnceLock};
 
 use firstpole_grammar::{Link, Name};
 
+use crate::finding::Finding;
 use crate::particular::{Found, Limit, Particular, SheetKind};
 use crate::source::{Block, BlockId, FileId, Place};
 use build::BlockReading;
@@ -27,7 +28,7 @@ use watch::Question;
 
 /// A sheet of the set, by the number of its block.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
-pub struct SheetId(u32);
+pub struct SheetId(pub(crate) u32);
 
 /// A sheet: its heading and what stands under it.
 #[derive(Clone, Debug)]
@@ -65,6 +66,13 @@ impl Sheet {
     /// The sheet that the link `word` points at.
     pub fn target(&self, word: &str) -> Option<SheetId> {
         link::sheet_of(&self.targets, word)
+    }
+
+    /// Whether the heading is the same, and stands at the same place.
+    fn is_headed_like(&self, other: &Self) -> bool {
+        (self.kind, self.file, &self.name, self.name_place, self.heading)
+            == (other.kind, other.file, &other.name, other.name_place, other.heading)
+            && self.links == other.links
     }
 
     /// `breaker LineBay`: how messages call it.
@@ -143,14 +151,24 @@ impl Statement {
 #[derive(Debug, Default)]
 pub struct Set {
     /// What was made of each block, by its number.
-    slots: Vec<Option<Slot>>,
+    slots: Vec<Option<Arc<Slot>>>,
     /// The sheets, file by file, in the order of the text.
     order: Vec<SheetId>,
-    /// Which files each file can refer to, itself first.
-    pub scope: Scope,
-    index: Index,
+    web: Arc<Web>,
     /// Counts up from one set to the next that takes over from it.
     age: u64,
+}
+
+/// How the files and sheets of a set hang together. It is the same as long as no heading and no `use` changes.
+#[derive(Debug, Default)]
+struct Web {
+    /// Which file uses which, and where.
+    uses: Vec<(FileId, FileId, Place)>,
+    /// Which files each file can refer to, itself first.
+    scope: Scope,
+    index: Index,
+    /// What is wrong with the links.
+    findings: Vec<Arc<Finding>>,
 }
 
 /// What was made of a block.
@@ -188,7 +206,11 @@ impl Set {
     }
 
     fn slot(&self, id: SheetId) -> Option<&Slot> {
-        self.slots.get(id.0 as usize).and_then(Option::as_ref)
+        self.slots.get(id.0 as usize).and_then(Option::as_deref)
+    }
+
+    fn slot_mut(&mut self, id: SheetId) -> Option<&mut Slot> {
+        self.slots.get_mut(id.0 as usize).and_then(Option::as_mut).map(Arc::make_mut)
     }
 
     /// The sheet of a block.
@@ -214,32 +236,40 @@ impl Set {
     /// The sheets of one kind that `file` can refer to, in the order of the text, its own first.
     pub fn in_reach(&self, file: FileId, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
         watch::question(Question::InReach(file, kind));
-        let ids = self.scope.of(file).iter().filter_map(move |file| self.index.by_file.get(&(*file, kind)));
+        let ids = self.web.scope.of(file).iter().filter_map(move |file| self.web.index.by_file.get(&(*file, kind)));
         ids.flatten().filter_map(|id| self.sheet(*id))
     }
 
     /// The sheets of one kind.
     pub fn of_kind(&self, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
         watch::question(Question::OfKind(kind));
-        self.index.by_kind.get(&kind).into_iter().flatten().filter_map(|id| self.sheet(*id))
+        self.web.index.by_kind.get(&kind).into_iter().flatten().filter_map(|id| self.sheet(*id))
     }
 
     /// The sheets whose link `word` points at `target`, in the order of the text.
     pub fn pointing_at(&self, target: SheetId, word: &'static str) -> impl Iterator<Item = &Sheet> {
         watch::question(Question::Pointing(target, word));
-        self.index.pointing.get(&(target, word)).into_iter().flatten().filter_map(|id| self.sheet(*id))
+        self.web.index.pointing.get(&(target, word)).into_iter().flatten().filter_map(|id| self.sheet(*id))
+    }
+
+    /// How many numbers of blocks are in use.
+    pub(crate) const fn numbers(&self) -> usize {
+        self.slots.len()
     }
 
     /// The sheets that a question is answered with.
     fn answer(&self, question: &Question) -> Vec<SheetId> {
         match question {
             Question::All => self.order.clone(),
-            Question::OfKind(kind) => self.index.by_kind.get(kind).cloned().unwrap_or_default(),
+            Question::OfKind(kind) => self.web.index.by_kind.get(kind).cloned().unwrap_or_default(),
             Question::InReach(file, kind) => {
-                let ids = self.scope.of(*file).iter().filter_map(|file| self.index.by_file.get(&(*file, *kind)));
+                let ids =
+                    self.web.scope.of(*file).iter().filter_map(|file| self.web.index.by_file.get(&(*file, *kind)));
                 ids.flatten().copied().collect()
             }
-            Question::Pointing(target, word) => self.index.pointing.get(&(*target, word)).cloned().unwrap_or_default(),
+            Question::Pointing(target, word) => {
+                self.web.index.pointing.get(&(*target, word)).cloned().unwrap_or_default()
+            }
         }
     }
 
@@ -248,46 +278,38 @@ impl Set {
         self.age
     }
 
-    /// Takes the sheets into the index, as far as their kinds and files go.
-    fn index_sheets(&mut self) {
+    /// The sheets by kind and by file.
+    fn indexed(&self) -> Index {
         let mut index = Index::default();
         for sheet in self.order.iter().filter_map(|id| self.peek(*id)) {
             index.by_kind.entry(sheet.kind).or_default().push(sheet.id);
             index.by_file.entry((sheet.file, sheet.kind)).or_default().push(sheet.id);
         }
-        self.index = index;
+        index
     }
 
-    /// Takes resolved links in, and into the index.
-    fn take_links(&mut self, mut links: link::Links) {
-        let mut pointing: BTreeMap<(SheetId, &'static str), Vec<SheetId>> = BTreeMap::new();
-        for id in &self.order {
-            let Some(slot) = self.slots.get_mut(id.0 as usize).and_then(Option::as_mut) else { continue };
-            let Some(sheet) = &mut slot.sheet else { continue };
-            let targets = links.take(*id);
-            for (word, target) in &targets {
-                if let LinkTarget::Sheet(target) = target {
-                    pointing.entry((*target, word)).or_default().push(*id);
-                }
-            }
-            if sheet.targets != targets {
-                Arc::make_mut(sheet).targets = targets;
-                slot.changed = self.age;
-            }
+    /// Takes the resolved links of a sheet in.
+    fn take_targets(&mut self, id: SheetId, targets: Vec<(&'static str, LinkTarget)>) {
+        if self.peek(id).is_none_or(|sheet| sheet.targets == targets) {
+            return;
         }
-        self.index.pointing = pointing;
-        self.drop_stale_facts();
+        let age = self.age;
+        if let Some(slot) = self.slot_mut(id)
+            && let Some(sheet) = &mut slot.sheet
+        {
+            Arc::make_mut(sheet).targets = targets;
+            slot.changed = age;
+        }
     }
 
-    /// Facts that were taken over from an earlier set hold as long as no sheet of their chain has changed.
+    /// Facts that were taken over from an earlier set hold as long as no sheet of their chain has changed. The slots of the others
+    /// are no longer shared with that set.
     fn drop_stale_facts(&mut self) {
-        let is_stale = |id: &SheetId| {
-            let kept = self.slot(*id).is_some_and(|slot| slot.facts.get().is_some());
-            kept && self.chain(*id).any(|sheet| self.slot(sheet.id).is_some_and(|slot| slot.changed == self.age))
-        };
+        let changed = |id: SheetId| self.slot(id).is_some_and(|slot| slot.changed == self.age);
+        let is_stale = |id: &SheetId| self.chain(*id).any(|sheet| changed(sheet.id));
         let stale: Vec<SheetId> = self.order.iter().copied().filter(is_stale).collect();
         for id in stale {
-            if let Some(slot) = self.slots.get_mut(id.0 as usize).and_then(Option::as_mut) {
+            if let Some(slot) = self.slot_mut(id) {
                 slot.facts.take();
             }
         }
@@ -325,6 +347,8 @@ impl Set {
 pub(crate) struct Comparison<'a> {
     now: &'a Set,
     before: &'a Set,
+    /// Whether every question is answered as before.
+    all_alike: bool,
     /// Whether questions are still answered as before, as far as somebody wanted to know.
     same: BTreeMap<Question, bool>,
 }
@@ -332,13 +356,14 @@ pub(crate) struct Comparison<'a> {
 impl<'a> Comparison<'a> {
     /// Of a set with the one that it took over from.
     pub fn new(now: &'a Set, before: &'a Set) -> Self {
-        Self { now, before, same: BTreeMap::new() }
+        Self { now, before, all_alike: Arc::ptr_eq(&now.web, &before.web), same: BTreeMap::new() }
     }
 
     /// Whether all that was seen, when a set of this age was the newest, is still the same.
     pub fn holds(&mut self, seen: &Seen, age: u64) -> bool {
         let unchanged = |id: &SheetId| self.now.slot(*id).is_some_and(|slot| slot.changed <= age);
-        seen.sheets.iter().all(unchanged) && seen.questions.iter().all(|question| self.is_answered_alike(question))
+        seen.sheets.iter().all(unchanged)
+            && (self.all_alike || seen.questions.iter().all(|question| self.is_answered_alike(question)))
     }
 
     fn is_answered_alike(&mut self, question: &Question) -> bool {
