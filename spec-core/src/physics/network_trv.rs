@@ -85,11 +85,30 @@ impl ExponentialRise {
         self.crest * (1.0 - (-after / self.time_constant.si()).exp())
     }
 
+    /// The steepest line from the origin that touches the rise: E/tau without delay. With D = delay/tau it touches where
+    /// e^x = x + 1 + D, x = (t - delay)/tau, and is E/tau e^-x. V/s. Follows from the wave; only to be used up to the first reflection.
+    pub fn tangent(&self) -> VoltageRate {
+        let delay = (self.delay / self.time_constant).value;
+        if !(delay > 0.0 && delay.is_finite()) {
+            return self.rate;
+        }
+        // Newton from above; the function is convex, so that every step stays above the root.
+        let mut x = (2.0 * delay).sqrt().max((1.0 + delay).ln());
+        for _ in 0..NEWTON_STEPS {
+            let (value, slope) = (x.exp() - x - 1.0 - delay, x.exp_m1());
+            x -= value / slope;
+        }
+        self.rate * (-x).exp()
+    }
+
     /// The voltage when the first reflection arrives, or the crest where none is known.
     pub fn before_reflection(&self) -> ElectricPotential {
         self.first_reflection.map_or(self.crest, |time| self.at(time))
     }
 }
+
+/// Steps of Newton's method for the tangent: it doubles the digits with each.
+const NEWTON_STEPS: usize = 12;
 
 /// Inductance of the source that limits a fault: Ur / (sqrt3 w I). H. IEEE C37.011, from memory.
 pub fn source_inductance(rated: ElectricPotential, current: ElectricCurrent, frequency: Frequency) -> Inductance {
@@ -240,6 +259,21 @@ mod tests {
         assert!((early / rise.rate.si() - 1.0).abs() < 1e-3);
         let value = rise.before_reflection().si() / rise.crest.si();
         assert!((value - (1.0 - (-(200e-6 - 0.508e-6) / rise.time_constant.si()).exp())).abs() < 1e-12);
+    }
+
+    /// The tangent of a delayed rise is the greatest u/t, found here by trial.
+    #[test]
+    fn the_tangent_of_a_delayed_rise() {
+        let (current, frequency) = (ElectricCurrent::from_si(40e3), Frequency::from_si(60.0));
+        for nanofarad in [0.0, 1.0, 20.0, 500.0, 20_000.0] {
+            let capacitance = Capacitance::from_si(nanofarad * 1e-9);
+            let z = ElectricalResistance::from_si(101.6);
+            let rise = exponential_rise(kv(245.0), 1.3, current, frequency, z, capacitance, None);
+            let times = (1..200_000).map(|n| rise.time_constant * (f64::from(n) * 1e-4));
+            let greatest = times.map(|t| (rise.at(t) / t).si()).fold(0.0, f64::max);
+            let tangent = rise.tangent().si();
+            assert!((greatest / tangent - 1.0).abs() < 2e-4, "{nanofarad} nF: {greatest} {tangent}");
+        }
     }
 
     /// The factor of the tangent is the greatest of (1 - cos x)/x, found here by trial.

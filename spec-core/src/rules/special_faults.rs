@@ -4,11 +4,12 @@ use super::several_breakers::copied_lines;
 use super::switching_special::kind_of;
 use super::{Check, EQUAL, Rule, add_line, breaking_current};
 use crate::case::{Case, Part};
+use crate::duty::limited;
 use crate::finding::{Datum, FindingKind, Findings};
 use crate::particular::{breaker, circuit, system};
 use crate::quantity::{
-    Capacitance, ElectricCurrent, ElectricPotential, ElectricalResistance, Length, Physical, Power, Ratio, Time,
-    significant,
+    Capacitance, ElectricCurrent, ElectricPotential, ElectricalResistance, Frequency, Length, Physical, Power, Ratio,
+    Time, significant,
 };
 use crate::sheet::Statement;
 use crate::standards::{Duty, out_of_phase_factor};
@@ -327,9 +328,10 @@ pub static TRANSFORMER_LIMITED_FAULT: Rule = Rule {
     kind: FindingKind::Caution,
     basis: "IEEE C37.011, IEC 62271-100:2008 annex M (from memory)",
     formula: "I = Sr/(sqrt3 U uk), 7 to 60 % of Isc, connection by bars of at most 50 m",
-    explanation: "A transformer with little capacitance beside it swings faster than T10 and T30. Silent where the connection is long, of \
-                  cable or gas-insulated duct, or its length is not stated; where the current lies outside of 7 to 60 %; and where \
-                  the rating, or the class for fast transients, is answered.",
+    explanation: "A transformer with little capacitance beside it swings faster than T10 and T30. Where its natural frequency or its \
+                  capacitance to earth is stated, its rate of rise is held against the envelope at that current. Silent where that \
+                  covers it; where the connection is long, of cable or gas-insulated duct, or its length is not stated; where the \
+                  current lies outside of 7 to 60 %; and where the rating, or the class for fast transients, is answered.",
     check: Check::Case(limited_fault),
 };
 
@@ -369,6 +371,16 @@ fn limited_fault(case: &Case<'_>, findings: &mut Findings) {
         if !(LIMITED_FROM..=LIMITED_TO).contains(&share) {
             continue;
         }
+        // Where the transformer's own oscillation is known, it is held against the envelope at that current.
+        let reactance = nominal.value / (3f64.sqrt() * current);
+        let (natural, capacitance) = (
+            part.quantity::<Frequency>(&circuit::NATURAL_FREQUENCY),
+            part.quantity::<Capacitance>(&circuit::CAPACITANCE_TO_EARTH),
+        );
+        let known = limited(case, current, reactance, natural.map(|s| s.value), capacitance.map(|s| s.value));
+        if known.as_ref().is_some_and(|(covered, _)| *covered) {
+            continue;
+        }
         let shown = isc.like(current);
         let percent = crate::duty::percent(share);
         let message = format!(
@@ -381,6 +393,7 @@ fn limited_fault(case: &Case<'_>, findings: &mut Findings) {
             .label("a fast recovery voltage")
             .needed(Datum { text: shown.clone(), si: Some(current.si()) })
             .working(format!("{} / (sqrt3 x {} x {}) = {shown}", power.measure, nominal.measure, impedance.measure))
+            .working(known.map(|(_, working)| working).unwrap_or_default())
             .beside(length.statement, "a short connection")
             .beside(isc.statement, "the breaking current")
             .advice("add transformer-limited fault: yes with its current, or ask for the class for fast transients");

@@ -12,7 +12,7 @@ mod network;
 mod transformer;
 
 pub use decay::{asynchronous_decay_factor, synchronous_decay_factor};
-pub use fault::{Fault, PeakMethod, steady_heat};
+pub use fault::{EQUIVALENT_SHARE, Fault, PeakMethod, steady_heat};
 pub use impedance::{Impedance, ZeroSequence};
 pub use machine::{
     AsynchronousMotors, PowerStationUnit, SynchronousGenerator, TapChanger, generator_correction,
@@ -172,6 +172,16 @@ impl Infeed {
     /// Z1 at the point, correction factors included; none where there are converter plants only.
     pub fn positive(&self) -> Option<Impedance> {
         self.network.seen(View::INITIAL)
+    }
+
+    /// Whether one chain of elements feeds the point, so that R/X is the same at any frequency.
+    pub fn is_one_branch(&self) -> bool {
+        self.network.is_one_branch()
+    }
+
+    /// Whether machines whose current decays are among the sources.
+    pub fn has_machines(&self) -> bool {
+        !self.machines.is_empty()
     }
 
     /// Z1 at the point as the peak current has it: with the fictitious resistance of generators, at a share of the frequency.

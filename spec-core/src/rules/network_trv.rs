@@ -1,0 +1,155 @@
+//! Rules on the recovery voltage of the network against what the breaker withstands at that current.
+
+use super::{Check, EQUAL, Rule, breaking_current};
+use crate::case::Case;
+use crate::duty::{percent, withstand};
+use crate::finding::{Datum, Finding, FindingKind, Findings};
+use crate::particular::{breaker, system};
+use crate::physics::network_trv::Withstand;
+use crate::quantity::{ElectricCurrent, ElectricPotential, Physical, Ratio, Time, VoltageRate, significant};
+use crate::sheet::{Stated, Statement};
+
+/// The rules of this subject.
+pub static ALL: &[&Rule] = &[&TRV_ABOVE_ENVELOPE];
+
+/// The network's recovery voltage lies below the envelope.
+pub static TRV_ABOVE_ENVELOPE: Rule = Rule {
+    name: "trv-above-envelope",
+    title: "The recovery voltage of the network lies below the standard envelope at that current.",
+    kind: FindingKind::Shortfall,
+    basis: "IEC 62271-100:2021 (envelopes), IEEE C37.011 (interpolation and network) (from memory)",
+    formula: "peak and rate of rise of the study, or sqrt2 w I Zeq of the lines, against T10, T30, T60, T100 interpolated at I/Isc",
+    explanation: "What a study states of a fault at the busbar counts; else the rate that lines, cables and apparatus at the busbar \
+                  give, as far as the infeeds say what they are for a wave. Peak and rate are two findings: the one asks for a higher \
+                  rating or a lower recovery voltage, the other for capacitance, or a higher breaking current, of which the fault is \
+                  then a smaller share. Silent above the rated breaking current, where the tables have no envelope, on generator \
+                  circuit-breakers, where TRV mitigation is asked for, and where the network says too little.",
+    check: Check::Case(above),
+};
+
+fn above(case: &Case<'_>, findings: &mut Findings) {
+    let answered = case.breaker.mentions(&breaker::TRV_MITIGATION);
+    if case.is_generator_breaker() || answered {
+        return;
+    }
+    if [&system::PROSPECTIVE_TRV_PEAK, &system::PROSPECTIVE_TRV_RATE_OF_RISE]
+        .into_iter()
+        .any(|p| case.system.mentions(p))
+    {
+        study(case, findings);
+    } else {
+        network(case, findings);
+    }
+}
+
+/// The rate of a studied wave: as stated, else of peak and t3, else of peak and time to peak.
+fn studied_rate<'a>(
+    case: &'a Case<'_>,
+    peak: Option<&Stated<'a, ElectricPotential>>,
+) -> Option<(VoltageRate, &'a Statement, String)> {
+    if let Some(rate) = case.system.quantity::<VoltageRate>(&system::PROSPECTIVE_TRV_RATE_OF_RISE) {
+        return Some((rate.value, rate.statement, String::new()));
+    }
+    let peak = peak?;
+    let time: Stated<'_, Time> = case
+        .system
+        .quantity(&system::PROSPECTIVE_TRV_TIME_T3)
+        .or_else(|| case.system.quantity(&system::PROSPECTIVE_TRV_TIME_TO_PEAK))
+        .filter(|time: &Stated<'_, Time>| time.value.si() > 0.0)?;
+    let rate: VoltageRate = peak.value / time.value;
+    Some((rate, time.statement, format!("{}/{} = {}", peak.measure, time.measure, rate.show())))
+}
+
+fn study(case: &Case<'_>, findings: &mut Findings) {
+    let stated = case.system.quantity::<ElectricCurrent>(&system::PROSPECTIVE_TRV_CURRENT).map(|stated| stated.value);
+    let of_duty = || case.duty.short_circuit_current.as_ref().map(|figure| figure.value);
+    let Some(current) = stated.or_else(of_duty) else { return };
+    let Some((allowed, share)) = withstand(case, current) else { return };
+    let peak = case.system.quantity::<ElectricPotential>(&system::PROSPECTIVE_TRV_PEAK);
+    if let Some(peak) = peak.as_ref().filter(|peak| peak.value.si() > allowed.peak.si() * (1.0 + EQUAL)) {
+        let message = format!(
+            "the recovery voltage of the study peaks at {} at {}, and the envelope at {} of the rated current at {}",
+            peak.measure,
+            current.show(),
+            percent(share.value),
+            peak.like(allowed.peak)
+        );
+        let finding = findings.add(&TRV_ABOVE_ENVELOPE, peak.place(), message);
+        finding.label("above the peak of the envelope").stated(&peak.measure).needed(Datum::of(allowed.peak));
+        finding.advice(
+            "ask for a higher first-pole-to-clear factor or rated voltage, or lower the recovery voltage by arresters; state TRV \
+             mitigation",
+        );
+        rated(case, finding, allowed, share);
+    }
+    let Some((rate, statement, working)) = studied_rate(case, peak.as_ref()) else { return };
+    if rate.si() > allowed.rate.si() * (1.0 + EQUAL) {
+        let message = format!(
+            "the recovery voltage of the study rises by {} at {}, and the envelope at {} of the rated current by {}",
+            rate.show(),
+            current.show(),
+            percent(share.value),
+            allowed.rate.show()
+        );
+        let finding = findings.add(&TRV_ABOVE_ENVELOPE, statement.value, message);
+        finding
+            .label("steeper than the envelope")
+            .stated(Datum::of(rate))
+            .needed(Datum::of(allowed.rate))
+            .working(working);
+        finding.advice(STEEP);
+        rated(case, finding, allowed, share);
+    }
+}
+
+/// What cures a steep rise.
+const STEEP: &str = "ask for capacitance at the busbar (TRV mitigation), or a higher breaking current, of which the fault is a smaller share";
+
+fn network(case: &Case<'_>, findings: &mut Findings) {
+    let trv = &case.duty.network_trv;
+    let Some(rate) = trv.rate.as_ref() else { return };
+    let share = case.breaker.quantity(&breaker::SHORT_CIRCUIT_CURRENT_THROUGH_THE_BREAKER).map(|stated| stated.value);
+    let Some(current) = share.or_else(|| case.duty.short_circuit_current.as_ref().map(|figure| figure.value)) else {
+        return;
+    };
+    let (Some((allowed, share)), Some(isc)) = (withstand(case, current), breaking_current(case)) else { return };
+    if rate.value.si() <= allowed.rate.si() * (1.0 + case.policy.trv_tolerance) {
+        return;
+    }
+    let message = format!(
+        "at {}, {} of the rated breaking current, the network lets the recovery voltage rise by {}, and the envelope by {}",
+        current.show(),
+        percent(share.value),
+        rate.value.show(),
+        allowed.rate.show()
+    );
+    let finding = findings.add(&TRV_ABOVE_ENVELOPE, isc.place(), message);
+    finding
+        .label("the network's recovery voltage is steeper")
+        .stated(Datum::of(allowed.rate))
+        .needed(Datum::of(rate.value));
+    finding.working(rate.working.to_string());
+    for place in &trv.shaped_by {
+        finding.related(*place, "shapes the recovery voltage");
+    }
+    finding.advice(STEEP);
+    rated(case, finding, allowed, share);
+}
+
+/// The envelope in the working, and what it hangs on.
+fn rated(case: &Case<'_>, finding: &mut Finding, allowed: Withstand, share: Ratio) {
+    finding.working(format!(
+        "envelope at I/Isc = {}: peak {}, rate {}, linear between the duties",
+        significant(share.value, 3),
+        allowed.peak.show(),
+        allowed.rate.show()
+    ));
+    if let Some(isc) = breaking_current(case)
+        && isc.place() != finding.place
+    {
+        finding.beside(isc.statement, "the rated breaking current");
+    }
+    if let Some(kpp) = case.breaker.quantity::<Ratio>(&breaker::FIRST_POLE_TO_CLEAR_FACTOR) {
+        finding.beside(kpp.statement, "the first-pole-to-clear factor");
+    }
+}
