@@ -231,6 +231,21 @@ mod tests {
     }
 
     #[test]
+    fn motors_that_no_infeed_counts() {
+        let bay = |more: &str| {
+            let bay = Bay::new().without("system", "short-circuit current").set("circuit", "kind", "motor");
+            bay.and("infeed Grid into Ring\n    kind: network\n    short-circuit current: 28 kA\n    X/R: 13\n")
+                .and(more)
+        };
+        let motors = "infeed M into Ring\n    kind: motor group\n    rated voltage: 132 kV\n    rated power: 20 MVA\n    starting current ratio: 5\n";
+        bay("").one("motor-contribution");
+        bay(motors).silent("motor-contribution");
+        bay("").set("system", "motors counted", "yes").silent("motor-contribution");
+        bay("").set("system", "short-circuit current", "28 kA").silent("motor-contribution");
+        bay("").set("circuit", "kind", "transformer").silent("motor-contribution");
+    }
+
+    #[test]
     fn endurance_classes_end_at_52_kv() {
         let bay = |ur: &str| Bay::new().set("breaker", "classes", "C2, E2, M2").set("breaker", "rated voltage", ur);
         bay("145 kV").one("endurance-not-verifiable");

@@ -495,6 +495,12 @@ mod tests {
         bay.clone().set("circuit", "connection by", "cable").silent("transformer-limited-fault");
         bay.clone().set("circuit", "rated power", "60 MVA").silent("transformer-limited-fault");
         bay.clone().set("breaker", "transformer-limited fault", "no").silent("transformer-limited-fault");
-        bay.without("circuit", "connection length").silent("transformer-limited-fault");
+        bay.clone().without("circuit", "connection length").silent("transformer-limited-fault");
+        // Where its oscillation is known the envelope decides: 20.9 ohm at 50 Hz are 66.6 mH, which 5 nF slow to 8.7 kHz.
+        bay.clone().set("circuit", "capacitance to earth", "5 nF").silent("transformer-limited-fault");
+        let fast = bay.clone().set("circuit", "capacitance to earth", "1 nF").one("transformer-limited-fault");
+        assert!(fast.working[1].contains("19.5 kHz"), "{:?}", fast.working);
+        bay.clone().set("circuit", "natural frequency", "9 kHz").silent("transformer-limited-fault");
+        bay.set("circuit", "natural frequency", "14 kHz").one("transformer-limited-fault");
     }
 }
