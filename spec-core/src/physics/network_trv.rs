@@ -101,6 +101,20 @@ impl ExponentialRise {
         self.rate * (-x).exp()
     }
 
+    /// The crest with the first reflection from a line whose far end is open: a wave that left with the busbar's voltage comes back
+    /// after `there_and_back`, and adds K E x e^-x, x = (t - there_and_back)/tau, K = 2 Zeq/Z the part that passes from that line (or
+    /// those equal ones) to the busbar with its source. The sum is greatest at x = 1 + e^(-there_and_back/tau)/K, where it is
+    /// E (1 + K e^-x). Attenuation is left out. Follows from the circuit: a ramp of current into L beside the lines; the coefficient of
+    /// IEEE C37.011, from memory.
+    pub fn crest_with_reflection(&self, there_and_back: Time, passing: f64) -> ElectricPotential {
+        let not_yet_risen = (-(there_and_back / self.time_constant).value).exp();
+        if passing <= 0.0 || !passing.is_finite() {
+            return self.crest;
+        }
+        let x = 1.0 + not_yet_risen / passing;
+        self.crest * (1.0 + passing * (-x).exp())
+    }
+
     /// The voltage when the first reflection arrives, or the crest where none is known.
     pub fn before_reflection(&self) -> ElectricPotential {
         self.first_reflection.map_or(self.crest, |time| self.at(time))
@@ -259,6 +273,43 @@ mod tests {
         assert!((early / rise.rate.si() - 1.0).abs() < 1e-3);
         let value = rise.before_reflection().si() / rise.crest.si();
         assert!((value - (1.0 - (-(200e-6 - 0.508e-6) / rise.time_constant.si()).exp())).abs() < 1e-12);
+    }
+
+    /// The same circuit step by step: the current of the source's inductance and of the lines together is a ramp, and the wave that
+    /// left on the open line comes back doubled.
+    #[test]
+    fn a_reflection_raises_the_crest() {
+        let (current, frequency, z) = (ElectricCurrent::from_si(20e3), Frequency::from_si(50.0), 250.0);
+        let (lines, kpp) = (3.0, 1.3);
+        let all = ElectricalResistance::from_si(z / lines);
+        let rise = exponential_rise(kv(145.0), kpp, current, frequency, all, Capacitance::default(), None);
+        for microseconds in [20.0, 100.0, 400.0] {
+            let (back, step) = (microseconds * 1e-6, 1e-8);
+            let inductance = rise.time_constant.si() * all.si();
+            let ramp = rise.crest.si() / inductance;
+            let delay = (back / step) as usize;
+            let mut left: Vec<f64> = Vec::new();
+            let (mut through, mut greatest) = (0.0f64, 0.0f64);
+            // Until the second reflection.
+            for at in 0..2 * delay + 1 {
+                let arriving = at.checked_sub(delay).and_then(|then| left.get(then)).copied().unwrap_or(0.0);
+                let time = at as f64 * step;
+                let voltage = (ramp * time - through + 2.0 * arriving / z) * all.si();
+                through += voltage / inductance * step;
+                left.push(voltage - arriving);
+                greatest = greatest.max(voltage);
+            }
+            let passing = 2.0 * all.si() / z;
+            let crest = rise.crest_with_reflection(Time::from_si(back), passing).si();
+            let reached = 1.0 + (-(back / rise.time_constant.si())).exp() / passing;
+            // Where the crest comes before the second reflection, it is the greatest voltage.
+            if reached * rise.time_constant.si() < back {
+                assert!((greatest / crest - 1.0).abs() < 1e-3, "{microseconds}: {greatest} {crest}");
+            } else {
+                assert!(greatest <= crest * 1.001, "{microseconds}: {greatest} {crest}");
+            }
+        }
+        assert_eq!(rise.crest_with_reflection(Time::from_si(1e-4), 0.0), rise.crest);
     }
 
     /// The tangent of a delayed rise is the greatest u/t, found here by trial.

@@ -129,6 +129,8 @@ pub enum BusbarKind {
         zero: Option<ElectricalResistance>,
         /// Its length.
         length: Option<Length>,
+        /// Whether it feeds nothing, so that its far end is open for a wave.
+        open: bool,
     },
     /// A transformer, a reactor or a machine: its own reactance at the busbar's voltage.
     Apparatus {

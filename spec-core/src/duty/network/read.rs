@@ -20,9 +20,14 @@ pub(super) struct At {
     pub nominal: Option<ElectricPotential>,
     /// The system's voltage over the voltage there, by the ratios of the transformers between.
     pub ratio: f64,
+    /// The voltage factor of the system, where the place is at its voltage: a feeder stated there gives its own current back.
+    pub c: Option<f64>,
     /// Whether it is the busbar of the system itself.
     pub busbar: bool,
 }
+
+/// How many infeeds of one system are read: far more than a network has, and few enough for any text to be read at once.
+const MOST_INFEEDS: usize = 300;
 
 /// Reads the infeeds of one system.
 pub(super) struct Reader<'a> {
@@ -31,6 +36,8 @@ pub(super) struct Reader<'a> {
     pub found: Infeeds,
     /// Systems and infeeds that are being read, so that a circle ends.
     open: Vec<SheetId>,
+    /// How many were read.
+    count: usize,
 }
 
 /// A sheet with what it states.
@@ -64,7 +71,7 @@ impl Source<'_> {
 
 impl<'a> Reader<'a> {
     pub fn new(set: &'a Set, frequency: Option<Frequency>) -> Self {
-        Self { set, frequency, found: Infeeds::default(), open: Vec::new() }
+        Self { set, frequency, found: Infeeds::default(), open: Vec::new(), count: 0 }
     }
 
     pub fn source(&self, id: SheetId) -> Option<Source<'a>> {
@@ -83,7 +90,7 @@ impl<'a> Reader<'a> {
             self.lacks(&own, Off::Everything, &[&system::FREQUENCY]);
         }
         self.open.push(system);
-        let at = At { voltage: nominal, nominal: Some(nominal), ratio: 1.0, busbar: true };
+        let at = At { voltage: nominal, nominal: Some(nominal), ratio: 1.0, c: Some(c), busbar: true };
         let infeed = self.together(&ids, at);
         self.open.pop();
         self.found.lacking.extend(super::trv::almost_enough(&self.found.at_busbar));
@@ -164,6 +171,15 @@ impl<'a> Reader<'a> {
     /// One infeed as its place sees it; a system stands for its network.
     pub fn one(&mut self, id: SheetId, at: At) -> Option<Infeed> {
         let source = self.source(id)?;
+        self.count += 1;
+        if self.count > MOST_INFEEDS {
+            if !self.found.incomplete {
+                let words = format!("a place among the first {MOST_INFEEDS} infeeds; sum several up in one");
+                self.lacks_words(&source, Off::Everything, vec![words]);
+            }
+            self.found.incomplete = true;
+            return None;
+        }
         if self.open.contains(&id) {
             let words = "a source that is not fed by this system again".to_owned();
             self.lacks_words(&source, Off::Everything, vec![words]);
@@ -336,6 +352,7 @@ impl<'a> Reader<'a> {
                 positive: source.positive(&infeed::SURGE_IMPEDANCE),
                 zero: source.positive(&infeed::ZERO_SEQUENCE_SURGE_IMPEDANCE),
                 length: source.positive(&infeed::LENGTH),
+                open: self.behind(source.sheet).is_empty(),
             },
             "transformer" | "power station unit" | "generator" | "series reactor" => BusbarKind::Apparatus {
                 reactance: None,

@@ -45,7 +45,7 @@ impl<'a> Reader<'a> {
         let feeder = NetworkFeeder {
             nominal,
             strength,
-            c: c.unwrap_or_else(|| super::c_max(nominal)),
+            c: c.or(at.c).unwrap_or_else(|| super::c_max(nominal)),
             r_over_x,
             zero: FeederZero::Unknown,
         };
@@ -86,7 +86,7 @@ impl<'a> Reader<'a> {
                 self.lacks(source, Off::Everything, &[&system::SHORT_CIRCUIT_CURRENT]);
                 return None;
             }
-            let there = At { voltage: nominal, nominal: Some(nominal), busbar: false, ..at };
+            let there = At { voltage: nominal, nominal: Some(nominal), c: Some(c), busbar: false, ..at };
             return self.together(&ids, there);
         };
         let Some(r_over_x) = self.ratio_of_system(source) else {

@@ -130,6 +130,7 @@ impl<'a> Reader<'a> {
             voltage: far,
             nominal: self.nominal_of_any(&behind),
             ratio: at.ratio * (own / far).value,
+            c: None,
             busbar: false,
         };
         if let (Side::High, [only]) = (side, behind.as_slice())
@@ -155,7 +156,10 @@ impl<'a> Reader<'a> {
         let Some(side) = self.side(source, high, low, at) else { return };
         let (own, far) = if side == Side::High { (high, low) } else { (low, high) };
         let nominal = self.nominal_of_any(&self.behind(source.sheet));
-        self.combined_behind(source, At { voltage: far, nominal, ratio: at.ratio * (own / far).value, busbar: false });
+        self.combined_behind(
+            source,
+            At { voltage: far, nominal, ratio: at.ratio * (own / far).value, c: None, busbar: false },
+        );
     }
 
     /// The nominal voltage that any of these states.
@@ -179,7 +183,7 @@ impl<'a> Reader<'a> {
         let machine = self.generator_of(generator, true);
         let tap_changer = self.tap_changer(source);
         let (mut machine, tap_changer) = (machine?, tap_changer?);
-        let there = At { voltage: transformer.low, nominal: None, ratio: 1.0, busbar: false };
+        let there = At { voltage: transformer.low, nominal: None, ratio: 1.0, c: None, busbar: false };
         if !self.stands_right(generator, &infeed::RATED_VOLTAGE, there) {
             return None;
         }
@@ -364,7 +368,7 @@ impl<'a> Reader<'a> {
             if !ids.is_empty() {
                 let nominal = self.nominal_of_any(ids);
                 let ratio = at.ratio * (own_voltage / *voltage).value;
-                *slot = self.together(ids, At { voltage: *voltage, nominal, ratio, busbar: false });
+                *slot = self.together(ids, At { voltage: *voltage, nominal, ratio, c: None, busbar: false });
             }
         }
         Some(seen)

@@ -8,6 +8,7 @@ use crate::physics::network_trv::{
     SurgeImpedances, Withstand, equivalent_surge_impedance, exponential_rise, natural_frequency, one_minus_cosine,
     source_inductance, withstand_at,
 };
+use crate::physics::short_line_fault::there_and_back;
 use crate::physics::trv::crest;
 use crate::quantity::{
     Capacitance, ElectricCurrent, ElectricPotential, ElectricalResistance, Frequency, Inductance, Length, Physical,
@@ -111,7 +112,7 @@ impl NetworkTrv {
         if things.is_empty() || infeeds.is_off(Off::RecoveryVoltage) || !things.iter().all(|t| known(&t.kind)) {
             return Self::default();
         }
-        of_lines(things, &fault).or_else(|| of_apparatus(case, infeeds, &fault)).unwrap_or_default()
+        of_lines(infeeds, &fault).or_else(|| of_apparatus(case, infeeds, &fault)).unwrap_or_default()
     }
 }
 
@@ -131,50 +132,90 @@ fn fault(case: &Case<'_>, duty: &Duty) -> Option<Fault> {
     })
 }
 
-/// Lines and cables at the busbar: an exponential rise.
-fn of_lines(things: &[AtBusbar], fault: &Fault) -> Option<NetworkTrv> {
-    let mut lines: Vec<SurgeImpedances> = Vec::new();
-    let mut shortest: Option<Length> = None;
-    let mut shaped_by = Vec::new();
-    let mut capacitance = fault.capacitance;
-    for thing in things {
-        match thing.kind {
-            BusbarKind::Line { positive: Some(positive), zero: Some(zero), length } => {
-                lines.extend(std::iter::repeat_n(SurgeImpedances { positive, zero }, thing.number as usize));
-                shortest = match (shortest, length) {
-                    (Some(a), Some(b)) => Some(if b < a { b } else { a }),
-                    (a, b) => a.or(b),
-                };
-                shaped_by.push(thing.place);
+/// The lines at the busbar as one wave sees them.
+#[derive(Default)]
+struct Lines {
+    /// Equal ones side by side as one.
+    impedances: Vec<SurgeImpedances>,
+    /// Those whose far end is open, with their length.
+    open: Vec<(SurgeImpedances, Length)>,
+    number: u32,
+    shortest: Option<Length>,
+    capacitance: Capacitance,
+    places: Vec<Place>,
+}
+
+impl Lines {
+    fn of(things: &[AtBusbar], capacitance: Capacitance) -> Option<Self> {
+        let mut lines = Self { capacitance, ..Self::default() };
+        for thing in things {
+            let many = f64::from(thing.number);
+            match thing.kind {
+                BusbarKind::Line { positive: Some(positive), zero: Some(zero), length, open } => {
+                    let all = SurgeImpedances { positive: positive / many, zero: zero / many };
+                    lines.impedances.push(all);
+                    lines.number = lines.number.saturating_add(thing.number);
+                    lines.places.push(thing.place);
+                    let Some(length) = length else { continue };
+                    if lines.shortest.is_none_or(|shortest| length < shortest) {
+                        lines.shortest = Some(length);
+                    }
+                    if open {
+                        lines.open.push((all, length));
+                    }
+                }
+                BusbarKind::Apparatus { capacitance: Some(own), .. } => lines.capacitance += own * many,
+                BusbarKind::Apparatus { .. } | BusbarKind::Other => {}
+                BusbarKind::Line { .. } => return None,
             }
-            BusbarKind::Line { .. } => return None,
-            BusbarKind::Apparatus { capacitance: own, .. } => {
-                capacitance += own.unwrap_or_default() * f64::from(thing.number);
-            }
-            BusbarKind::Other => {}
         }
+        Some(lines)
     }
-    let z = equivalent_surge_impedance(&lines)?;
-    let rise = exponential_rise(fault.rated, fault.kpp.value, fault.current, fault.frequency, z, capacitance, shortest);
-    let tangent = rise.tangent();
+}
+
+/// Lines and cables at the busbar: an exponential rise.
+fn of_lines(infeeds: &Infeeds, fault: &Fault) -> Option<NetworkTrv> {
+    let mut lines = Lines::of(&infeeds.at_busbar, fault.capacitance)?;
+    // Only where all sources are described is a line without one known to end open.
+    if infeeds.seen.is_none() {
+        lines.open.clear();
+    }
+    let z = equivalent_surge_impedance(&lines.impedances)?;
+    let (kpp, c) = (fault.kpp.value, lines.capacitance);
+    let rise = exponential_rise(fault.rated, kpp, fault.current, fault.frequency, z, c, lines.shortest);
     let mut rate = Figure::new(
-        tangent,
+        rise.tangent(),
         "steepest line from the origin to E (1 - exp(-t/tau)) with its delay C Zeq; sqrt2 w I Zeq without delay",
         C37_011,
     )
     .given("I", fault.current.show())
-    .given("Zeq", format!("{} of {} lines", z.show(), lines.len()))
-    .given("C", capacitance.show());
+    .given("Zeq", format!("{} of {} lines", z.show(), lines.number))
+    .given("C", c.show());
     if let Some(reflection) = rise.first_reflection {
         rate = rate.given("first reflection", micro(reflection));
     }
-    let peak = Figure::new(rise.crest, "E = kpp Ur sqrt(2/3), until reflections come back", C37_011)
-        .given("kpp", significant(fault.kpp.value, 3))
-        .given("Ur", fault.rated.show());
+    // The highest of the reflections from lines that are open at their far end; at a source a wave comes back with another sign.
+    let reflected = lines.open.iter().filter_map(|(own, length)| {
+        let own = equivalent_surge_impedance(&[*own])?;
+        let back = there_and_back(*length);
+        Some((rise.crest_with_reflection(back, 2.0 * (z / own).value), back))
+    });
+    let highest = reflected.max_by(|a, b| a.0.si().total_cmp(&b.0.si()));
+    let peak = match highest {
+        Some((crest, back)) => Figure::new(
+            crest,
+            "E (1 + K e^-x), E = kpp Ur sqrt(2/3), K = 2 Zeq/Z of the open line, x = 1 + exp(-t/tau)/K",
+            C37_011,
+        )
+        .given("t", micro(back))
+        .given("tau", micro(rise.time_constant)),
+        None => Figure::new(rise.crest, "E = kpp Ur sqrt(2/3), of no line is the far end known to be open", C37_011),
+    };
+    let peak = peak.given("kpp", significant(kpp, 3)).given("Ur", fault.rated.show());
     Some(NetworkTrv {
-        peak: Some(peak.resting_on(shaped_by.iter().copied())),
-        rate: Some(rate.resting_on(shaped_by.iter().copied())),
-        shaped_by,
+        peak: Some(peak.resting_on(lines.places.iter().copied())),
+        rate: Some(rate.resting_on(lines.places.iter().copied())),
+        shaped_by: lines.places,
     })
 }
 
