@@ -291,7 +291,7 @@ mod tests {
             let mut left: Vec<f64> = Vec::new();
             let (mut through, mut greatest) = (0.0f64, 0.0f64);
             // Until the second reflection.
-            for at in 0..2 * delay + 1 {
+            for at in 0..=2 * delay {
                 let arriving = at.checked_sub(delay).and_then(|then| left.get(then)).copied().unwrap_or(0.0);
                 let time = at as f64 * step;
                 let voltage = (ramp * time - through + 2.0 * arriving / z) * all.si();

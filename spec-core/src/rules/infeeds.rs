@@ -1,15 +1,13 @@
 //! Rules on the infeeds of a system: what they lack, and whether what the system states agrees with them.
 
-use super::dc_component::NETWORK_CONSTANTS_DISAGREE;
-use super::short_circuit::FAULT_LEVEL_DISAGREES;
-use super::{Check, EQUAL, Policy, Rule};
-use crate::duty::{FromInfeeds, Infeeds, Off};
-use crate::finding::{Datum, Finding, FindingKind, Findings};
+mod agreement;
+
+use super::{Check, Policy, Rule};
+use crate::duty::{Infeeds, Off};
+use crate::finding::{Datum, FindingKind, Findings};
 use crate::particular::{Particular, SheetKind, breaker, system};
-use crate::physics::short_circuit;
-use crate::quantity::{ElectricCurrent, ElectricPotential, Frequency, Physical, Power, Ratio, Time, significant};
-use crate::sheet::{Facts, Set, Sheet, Statement};
-use crate::source::Place;
+use crate::quantity::{Frequency, Physical};
+use crate::sheet::{Facts, Set, Sheet};
 
 /// The rules of this subject.
 pub static ALL: &[&Rule] = &[&INFEED_INCOMPLETE, &INFEED_MISPLACED];
@@ -84,7 +82,7 @@ pub static INFEED_INCOMPLETE: Rule = Rule {
 fn incomplete(set: &Set, policy: &Policy, findings: &mut Findings) {
     for fed in fed_systems(set) {
         missing_data(&fed, findings);
-        disagreements(&fed, policy, findings);
+        agreement::check(&fed, policy, findings);
     }
 }
 
@@ -178,153 +176,6 @@ fn misplaced(set: &Set, _: &Policy, findings: &mut Findings) {
     }
 }
 
-/// What the system states counts; where its infeeds say otherwise, that is told once, the level before its constants.
-fn disagreements(fed: &Fed<'_>, policy: &Policy, findings: &mut Findings) {
-    if fed.infeeds.seen.is_none() {
-        return;
-    }
-    let from = FromInfeeds::of(&fed.infeeds, None);
-    let first = fed.infeeds.places().next();
-    if !level_agrees(fed, &from, policy, first, findings) {
-        return;
-    }
-    time_constant_agrees(fed, &from, policy, first, findings);
-    earthing_agrees(fed, &from, policy, first, findings);
-}
-
-fn rests_on(finding: &mut Finding, fed: &Fed<'_>, first: Option<Place>) {
-    if let Some(first) = first {
-        finding.related(first, format!("the first of {} infeeds", fed.infeeds.parts.len()));
-    }
-}
-
-/// A current as it is stated: in amperes, or as a fault level with its voltage.
-fn stated_level<'a>(fed: &'a Fed<'_>) -> Option<(ElectricCurrent, &'a Statement)> {
-    if let Some(current) = fed.facts.quantity::<ElectricCurrent>(&system::SHORT_CIRCUIT_CURRENT) {
-        return Some((current.value, current.statement));
-    }
-    let level = fed.facts.quantity::<Power>(&system::FAULT_LEVEL)?;
-    let voltage = level.statement.quantity()?.at?.to::<ElectricPotential>()?;
-    Some((short_circuit::current_of_fault_level(level.value, voltage), level.statement))
-}
-
-fn level_agrees(
-    fed: &Fed<'_>,
-    from: &FromInfeeds,
-    policy: &Policy,
-    first: Option<Place>,
-    findings: &mut Findings,
-) -> bool {
-    let one = fed.facts.quantity::<ElectricCurrent>(&system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT);
-    let pairs = [
-        ("three-phase", stated_level(fed), from.three_phase.as_ref()),
-        ("single-phase", one.map(|s| (s.value, s.statement)), from.single_phase.as_ref()),
-    ];
-    for (name, stated, figure) in pairs {
-        let (Some((stated, statement)), Some(figure)) = (stated, figure) else { continue };
-        let apart = (stated.si() - figure.value.si()) / figure.value.si();
-        if !apart.is_finite() || apart.abs() <= policy.fault_level_tolerance + EQUAL {
-            continue;
-        }
-        let message = format!(
-            "{} is stated as the {name} short-circuit current of {}, and its infeeds give {}",
-            stated.show(),
-            fed.sheet.title(),
-            figure.value.show()
-        );
-        let finding = findings.add(&FAULT_LEVEL_DISAGREES, statement.value, message);
-        // A level for a later year, or one of a state with fewer sources, may well differ.
-        let state = fed.facts.word(&system::LEVEL_VALID_WITH).map(|(word, _)| word);
-        let another_state = state.is_some_and(|word| word != "all sources in service");
-        if apart > 0.0 || another_state {
-            finding.kind(FindingKind::Caution);
-        }
-        finding
-            .label("does not agree with the infeeds")
-            .stated(Datum::of(stated))
-            .needed(Datum::of(figure.value))
-            .working(figure.working.to_string())
-            .advice("checks go by the stated value; correct it or the infeeds, or leave the value out");
-        rests_on(finding, fed, first);
-        return false;
-    }
-    true
-}
-
-fn time_constant_agrees(
-    fed: &Fed<'_>,
-    from: &FromInfeeds,
-    policy: &Policy,
-    first: Option<Place>,
-    findings: &mut Findings,
-) {
-    let Some(figure) = from.time_constant.as_ref() else { return };
-    let Some(frequency) = fed.frequency else { return };
-    let tau = fed.facts.quantity::<Time>(&system::DC_TIME_CONSTANT).map(|s| (s.value, s.statement));
-    let of_x = || {
-        let stated = fed.facts.quantity::<Ratio>(&system::X_OVER_R)?;
-        Some((short_circuit::time_constant(stated.value.value, frequency), stated.statement))
-    };
-    let Some((stated, statement)) = tau.or_else(of_x) else { return };
-    // A longer one than the infeeds' is on the safe side.
-    if stated.si() >= figure.value.si() * (1.0 - policy.infeed_constant_tolerance) {
-        return;
-    }
-    let message = format!(
-        "a time constant of {} is stated for {}, and its infeeds give {}",
-        stated.show(),
-        fed.sheet.title(),
-        figure.value.show()
-    );
-    let finding = findings.add(&NETWORK_CONSTANTS_DISAGREE, statement.value, message);
-    finding
-        .label("shorter than that of the infeeds")
-        .stated(Datum::of(stated))
-        .needed(Datum::of(figure.value))
-        .working(figure.working.to_string())
-        .advice("checks go by the stated value; correct it or the infeeds, or leave the value out");
-    rests_on(finding, fed, first);
-}
-
-fn earthing_agrees(fed: &Fed<'_>, from: &FromInfeeds, policy: &Policy, first: Option<Place>, findings: &mut Findings) {
-    let ratio = fed.facts.quantity::<Ratio>(&system::X0_OVER_X1);
-    let known = from.x0_over_x1.as_ref();
-    if let (Some(stated), Some(figure)) = (&ratio, known) {
-        if figure.value.value <= stated.value.value * (1.0 + policy.infeed_constant_tolerance) {
-            return;
-        }
-        let text = significant(figure.value.value, 3);
-        let message = format!(
-            "X0/X1 of at most {} is stated for {}, and its infeeds give {text}",
-            significant(stated.value.value, 3),
-            fed.sheet.title()
-        );
-        let finding = findings.add(&NETWORK_CONSTANTS_DISAGREE, stated.place(), message);
-        finding.label("less than the infeeds give").needed(text).working(figure.working.to_string());
-        rests_on(finding, fed, first);
-        return;
-    }
-    let Some((word @ ("solidly earthed" | "effectively earthed"), statement)) = fed.facts.word(&system::NEUTRAL) else {
-        return;
-    };
-    if ratio.is_some() || from.effectively_earthed() != Some(false) {
-        return;
-    }
-    let found = match (known, from.r0_over_x1) {
-        (Some(x0), Some(r0)) => format!("X0/X1 {} and R0/X1 {}", significant(x0.value.value, 3), significant(r0, 3)),
-        _ => "no earthed neutral at all".to_owned(),
-    };
-    let message = format!("the neutral of {} is stated as {word}, and its infeeds give {found}", fed.sheet.title());
-    let finding = findings.add(&NETWORK_CONSTANTS_DISAGREE, statement.value, message);
-    finding.label("not by the infeeds").stated(word).advice(
-        "effectively earthed means X0/X1 of at most 3 and R0/X1 of at most 1: correct the neutral of the system or of the infeeds",
-    );
-    if let Some(known) = known {
-        finding.working(known.working.to_string());
-    }
-    rests_on(finding, fed, first);
-}
-
 #[cfg(test)]
 mod tests {
     use crate::finding::FindingKind;
@@ -339,14 +190,6 @@ mod tests {
     }
 
     const GRID: &str = "    short-circuit current: 28.4 kA\n    X/R: 13\n    X0/X1: 2.6\n    R0/X0: 0.1\n    nominal voltage: 132 kV\n";
-
-    /// The same with a stated level beside it.
-    fn both(stated: &str) -> Bay {
-        Bay::new()
-            .set("system", "short-circuit current", stated)
-            .without("system", "single-phase short-circuit current")
-            .and(&format!("infeed Grid into Ring\n    kind: network\n{GRID}"))
-    }
 
     #[test]
     fn infeeds_take_the_place_of_a_stated_level() {
@@ -429,6 +272,22 @@ mod tests {
         fed(&grid).set("system", "neutral", "isolated").silent("infeed-incomplete");
         fed(&grid).set("system", "single-phase short-circuit current", "24 kA").silent("infeed-incomplete");
         fed(&grid).without("system", "neutral").one("infeed-incomplete");
+        // Behind a delta winding nothing has to be known of it; between two earthed stars all of it.
+        let behind = |connection: &str, more: &str| {
+            let transformer = format!(
+                "infeed T into Ring\n    kind: transformer\n    rated power: 300 MVA\n    high-voltage side: 230 kV\n    low-voltage side: 138 kV\n    \
+                 impedance voltage: 12 %\n    load losses: 600 kW\n    winding connection: {connection}\n    neutral: solidly earthed\n{more}"
+            );
+            let upper =
+                "infeed Upper into Ring through T\n    kind: network\n    fault level: 9 GVA at 220 kV\n    X/R: 12\n";
+            fed(GRID).and(&transformer).and(upper)
+        };
+        behind("Dyn5", "").silent("infeed-incomplete");
+        behind("Yyn0", "").silent("infeed-incomplete");
+        let stars = behind("YNyn0", "    neutral of the far side: solidly earthed\n").one("infeed-incomplete");
+        assert!(stars.message.contains("infeed Upper lacks X0/X1 and R0/X0"), "{}", stars.message);
+        let unsaid = behind("YNyn0", "").one("infeed-incomplete");
+        assert!(unsaid.message.contains("neutral of the far side"), "{}", unsaid.message);
     }
 
     #[test]
@@ -480,35 +339,48 @@ mod tests {
         at("132 kV").silent("infeed-misplaced");
     }
 
+    /// A feeder at the system gives its own current back, whatever the voltage factor of the system is; behind a transformer, whose
+    /// network has another, the factors differ.
     #[test]
-    fn a_stated_level_is_held_against_the_infeeds() {
-        both("28.4 kA").silent("fault-level-disagrees");
-        both("29.8 kA").silent("fault-level-disagrees");
-        let more = both("30 kA").one("fault-level-disagrees");
-        assert_eq!(more.kind, FindingKind::Caution);
-        let less = both("26.5 kA").one("fault-level-disagrees");
-        assert_eq!(less.kind, FindingKind::Contradiction);
-        assert!(less.message.contains("28.4 kA"), "{}", less.message);
-        both("27 kA").silent("fault-level-disagrees");
-        // Fewer sources than all are in service on purpose.
-        let reduced = both("26.5 kA").set("system", "level valid with", "reduced infeed");
-        assert_eq!(reduced.one("fault-level-disagrees").kind, FindingKind::Caution);
+    fn the_voltage_factor_of_the_system() {
+        let lower = fed(GRID).set("system", "voltage factor", "1.05");
+        lower.clone().set("system", "short-circuit current", "28.4 kA").silent("fault-level-disagrees");
+        lower.set("breaker", "rated short-circuit breaking current", "from duty").silent("from-duty-open");
     }
 
-    /// X/R 13 at 50 Hz is 41.4 ms.
+    /// What is left to the duty is chosen by the infeeds: 28.4 kA at 41.4 ms.
     #[test]
-    fn stated_constants_are_held_against_the_infeeds() {
-        let rule = "network-constants-disagree";
-        both("28.4 kA").silent(rule);
-        both("28.4 kA").set("system", "DC time constant", "36 ms").one(rule);
-        both("28.4 kA").set("system", "DC time constant", "38 ms").silent(rule);
-        both("28.4 kA").set("system", "DC time constant", "60 ms").silent(rule);
-        both("28.4 kA").set("system", "X0/X1", "2.2").one(rule);
-        both("28.4 kA").set("system", "X0/X1", "2.4").silent(rule);
-        let high = fed(&GRID.replace("X0/X1: 2.6", "X0/X1: 3.1"));
-        assert!(high.one(rule).message.contains("effectively earthed"));
-        fed(&GRID.replace("X0/X1: 2.6", "X0/X1: 3.0")).silent(rule);
-        // One finding for one cause: where the level is another, its constants are not told as well.
-        both("26.5 kA").set("system", "DC time constant", "36 ms").silent(rule);
+    fn ratings_are_chosen_by_the_infeeds() {
+        let bay = fed(GRID)
+            .set("breaker", "rated short-circuit breaking current", "from duty")
+            .set("breaker", "DC time constant", "from duty")
+            .set("breaker", "rated short-circuit making current", "from duty")
+            .set("breaker", "first-pole-to-clear factor", "from duty");
+        let grave: Vec<_> = bay.findings().into_iter().filter(|f| f.kind < FindingKind::Excess).collect();
+        assert!(grave.is_empty(), "{grave:#?}");
+    }
+
+    /// Any text ends: a thousand infeeds, and systems that feed each other twice in thirty steps.
+    #[test]
+    fn more_infeeds_than_a_network_has() {
+        let many: Vec<String> =
+            (0..1000).map(|n| format!("infeed N{n} into Ring\n    kind: network\n    short-circuit current: 1 kA\n    X/R: 9\n    neutral: isolated\n")).collect();
+        let finding = fed(GRID).and(&many.concat()).one("infeed-incomplete");
+        assert!(finding.message.contains("300 infeeds"), "{}", finding.message);
+        let transformer = "    kind: transformer\n    rated power: 100 MVA\n    high-voltage side: 132 kV\n    low-voltage side: 132 kV\n    \
+                           impedance voltage: 12 %\n    load losses: 300 kW\n    winding connection: Dd0\n";
+        let doubled: Vec<String> = (0..30)
+            .map(|n| {
+                let above = n + 1;
+                format!(
+                    "system S{n}\n    nominal voltage: 132 kV\ninfeed A{n} into S{n} from S{above}\n{transformer}infeed B{n} into S{n} from S{above}\n{transformer}"
+                )
+            })
+            .collect();
+        let bay = fed(GRID)
+            .and(&doubled.concat())
+            .and("system S30\n    nominal voltage: 132 kV\n")
+            .and(&format!("infeed T into Ring from S0\n{transformer}"));
+        bay.one("infeed-incomplete");
     }
 }

@@ -200,10 +200,10 @@ pub static SERIES_REACTOR_TRV: Rule = Rule {
     title: "A series reactor beside the breaker has a capacitance that slows its oscillation.",
     kind: FindingKind::Caution,
     basis: "IEEE C37.011 (from memory); public literature on current-limiting reactors (2007)",
-    formula: "1/(2 f) of the reactor with its capacitance >= time to peak of the envelope at that current",
+    formula: "1/(2 f) of the reactor with its capacitance, or by its own frequency, >= time to peak of the envelope at that current",
     explanation: "With its stray capacitance a reactor oscillates at tens of kilohertz, far faster than any terminal fault duty. Silent \
                   where a capacitor to earth or across the reactor, or the class for fast transients, is asked for, and where the \
-                  stated capacitance is enough.",
+                  stated capacitance is enough or the stated natural frequency low enough.",
     check: Check::Case(series_reactor),
 };
 
@@ -240,7 +240,8 @@ fn series_reactor(case: &Case<'_>, findings: &mut Findings) {
             Ok(fast) => Some(fast),
             Err(()) => None,
         };
-        if working.is_none() && part.mentions(&circuit::SERIES_REACTOR_CAPACITANCE) {
+        let said = [&circuit::SERIES_REACTOR_CAPACITANCE, &circuit::NATURAL_FREQUENCY];
+        if working.is_none() && said.into_iter().any(|particular| part.mentions(particular)) {
             continue;
         }
         let message = format!(
@@ -261,7 +262,11 @@ fn series_reactor(case: &Case<'_>, findings: &mut Findings) {
 
 /// The working where the oscillation is too fast, nothing where it is slow enough; an error where it cannot be reckoned.
 fn oscillation(case: &Case<'_>, part: &Part<'_>, reactance: ElectricalResistance) -> Result<String, ()> {
-    let capacitance = part.quantity::<Capacitance>(&circuit::SERIES_REACTOR_CAPACITANCE).ok_or(())?;
+    let capacitance = part.quantity::<Capacitance>(&circuit::SERIES_REACTOR_CAPACITANCE);
+    let natural = part.quantity::<Frequency>(&circuit::NATURAL_FREQUENCY).filter(|stated| stated.value.si() > 0.0);
+    if capacitance.is_none() && natural.is_none() {
+        return Err(());
+    }
     let omega = 2.0 * std::f64::consts::PI * case.frequency().ok_or(())?.si();
     let isc = breaking_current(case).ok_or(())?;
     let nominal = case.system.quantity::<ElectricPotential>(&system::NOMINAL_VOLTAGE).ok_or(())?;
@@ -271,15 +276,20 @@ fn oscillation(case: &Case<'_>, part: &Part<'_>, reactance: ElectricalResistance
     let duty = duty_of(current / isc.value.si());
     let (envelope, _) = case.duty.trv.envelope(duty).ok_or(())?;
     let needed = envelope.t3.or(envelope.t2).unwrap_or(envelope.uc / envelope.rate);
-    let time = std::f64::consts::PI * (reactance.si() / omega * capacitance.value.si()).sqrt();
+    // A stated capacitance counts before the reactor's own frequency, of which it may be the cure.
+    let of_capacitance = capacitance.map(|stated| {
+        let time = std::f64::consts::PI * (reactance.si() / omega * stated.value.si()).sqrt();
+        (time, format!("pi sqrt(L C) with {}", stated.measure))
+    });
+    let of_frequency = || natural.map(|stated| (0.5 / stated.value.si(), format!("1/(2 f) of {}", stated.measure)));
+    let (time, how) = of_capacitance.or_else(of_frequency).ok_or(())?;
     if time >= needed.si() {
         return Ok(String::new());
     }
     let us = |time: f64| format!("{} us", significant(time * 1e6, 3));
     Ok(format!(
-        "pi sqrt(L C) = {} with {} ({} kHz) < {} of {} for {} kA",
+        "{how} = {} ({} kHz) < {} of {} for {} kA",
         us(time),
-        capacitance.measure,
         significant(0.5e-3 / time, 3),
         us(Time::si(needed)),
         duty.word(),
@@ -467,7 +477,10 @@ mod tests {
         bay.clone().set("breaker", "fast TRV class", "yes").silent("series-reactor-trv");
         let small = bay.clone().set("circuit", "series reactor capacitance", "2 nF").one("series-reactor-trv");
         assert!(small.working[0].contains("kHz"), "{:?}", small.working);
-        bay.set("circuit", "series reactor capacitance", "500 nF").silent("series-reactor-trv");
+        bay.clone().set("circuit", "series reactor capacitance", "500 nF").silent("series-reactor-trv");
+        let own = bay.clone().set("circuit", "natural frequency", "20 kHz").one("series-reactor-trv");
+        assert!(own.working[0].contains("1/(2 f) of 20 kHz = 25 us"), "{:?}", own.working);
+        bay.set("circuit", "natural frequency", "1 kHz").silent("series-reactor-trv");
         Bay::new().silent("series-reactor-trv");
     }
 

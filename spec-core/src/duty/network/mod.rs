@@ -17,7 +17,7 @@ pub(crate) use trv::{limited, withstand};
 use crate::particular::{SheetKind, infeed, system};
 use crate::physics::infeed::{Impedance, Infeed};
 use crate::quantity::{
-    Capacitance, ElectricPotential, ElectricalResistance, Frequency, Length, Physical, Ratio, significant,
+    Capacitance, ElectricPotential, ElectricalResistance, Frequency, Length, Physical, Power, Ratio, significant,
 };
 use crate::sheet::{Facts, Set, SheetId};
 use crate::source::Place;
@@ -134,6 +134,10 @@ pub enum BusbarKind {
     },
     /// A transformer, a reactor or a machine: its own reactance at the busbar's voltage.
     Apparatus {
+        /// Whether it is a machine by itself, without a transformer.
+        machine: bool,
+        /// Its rated power.
+        power: Option<Power>,
         /// Its reactance, where it is known.
         reactance: Option<ElectricalResistance>,
         /// Its natural frequency as seen from the busbar.

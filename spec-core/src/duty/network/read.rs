@@ -24,6 +24,8 @@ pub(super) struct At {
     pub c: Option<f64>,
     /// Whether it is the busbar of the system itself.
     pub busbar: bool,
+    /// Whether zero-sequence current from there reaches the system: behind a delta winding nothing has to be known of it.
+    pub earth: bool,
 }
 
 /// How many infeeds of one system are read: far more than a network has, and few enough for any text to be read at once.
@@ -38,6 +40,8 @@ pub(super) struct Reader<'a> {
     open: Vec<SheetId>,
     /// How many were read.
     count: usize,
+    /// Whether the zero sequence of the one that is being read counts.
+    earth: bool,
 }
 
 /// A sheet with what it states.
@@ -71,7 +75,7 @@ impl Source<'_> {
 
 impl<'a> Reader<'a> {
     pub fn new(set: &'a Set, frequency: Option<Frequency>) -> Self {
-        Self { set, frequency, found: Infeeds::default(), open: Vec::new(), count: 0 }
+        Self { set, frequency, found: Infeeds::default(), open: Vec::new(), count: 0, earth: true }
     }
 
     pub fn source(&self, id: SheetId) -> Option<Source<'a>> {
@@ -90,7 +94,7 @@ impl<'a> Reader<'a> {
             self.lacks(&own, Off::Everything, &[&system::FREQUENCY]);
         }
         self.open.push(system);
-        let at = At { voltage: nominal, nominal: Some(nominal), ratio: 1.0, c: Some(c), busbar: true };
+        let at = At { voltage: nominal, nominal: Some(nominal), ratio: 1.0, c: Some(c), busbar: true, earth: true };
         let infeed = self.together(&ids, at);
         self.open.pop();
         self.found.lacking.extend(super::trv::almost_enough(&self.found.at_busbar));
@@ -121,6 +125,9 @@ impl<'a> Reader<'a> {
 
     /// The same in words of its own.
     pub fn lacks_words(&mut self, source: &Source<'a>, off: Off, what: Vec<String>) {
+        if off == Off::Earth && !self.earth {
+            return;
+        }
         let (title, place) = (source.sheet.title(), source.sheet.name_place);
         if let Some(known) = self.found.lacking.iter_mut().find(|l| l.place == place && l.off == off) {
             known.what.extend(what);
@@ -187,6 +194,7 @@ impl<'a> Reader<'a> {
             return None;
         }
         self.open.push(id);
+        let earth = std::mem::replace(&mut self.earth, at.earth);
         let (seen, idle) = if source.sheet.kind == SheetKind::System {
             (self.whole_system(&source, at), false)
         } else if self.only_for_waves(&source, at) {
@@ -195,6 +203,7 @@ impl<'a> Reader<'a> {
             (self.infeed(&source, at), false)
         };
         self.open.pop();
+        self.earth = earth;
         self.found.incomplete |= seen.is_none() && !idle;
         seen
     }
@@ -355,6 +364,8 @@ impl<'a> Reader<'a> {
                 open: self.behind(source.sheet).is_empty(),
             },
             "transformer" | "power station unit" | "generator" | "series reactor" => BusbarKind::Apparatus {
+                machine: kind == "generator",
+                power: source.positive(&infeed::RATED_POWER),
                 reactance: None,
                 natural: source.positive(&infeed::NATURAL_FREQUENCY),
                 capacitance: source.positive(&infeed::CAPACITANCE_TO_EARTH),

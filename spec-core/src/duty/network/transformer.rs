@@ -132,6 +132,7 @@ impl<'a> Reader<'a> {
             ratio: at.ratio * (own / far).value,
             c: None,
             busbar: false,
+            earth: at.earth && both_earthed(transformer.high_winding, transformer.low_winding),
         };
         if let (Side::High, [only]) = (side, behind.as_slice())
             && let Some(generator) = self.source(*only).filter(|s| is_kind(s, "generator"))
@@ -158,7 +159,7 @@ impl<'a> Reader<'a> {
         let nominal = self.nominal_of_any(&self.behind(source.sheet));
         self.combined_behind(
             source,
-            At { voltage: far, nominal, ratio: at.ratio * (own / far).value, c: None, busbar: false },
+            At { voltage: far, nominal, ratio: at.ratio * (own / far).value, c: None, busbar: false, earth: false },
         );
     }
 
@@ -183,7 +184,7 @@ impl<'a> Reader<'a> {
         let machine = self.generator_of(generator, true);
         let tap_changer = self.tap_changer(source);
         let (mut machine, tap_changer) = (machine?, tap_changer?);
-        let there = At { voltage: transformer.low, nominal: None, ratio: 1.0, c: None, busbar: false };
+        let there = At { voltage: transformer.low, nominal: None, ratio: 1.0, c: None, busbar: false, earth: false };
         if !self.stands_right(generator, &infeed::RATED_VOLTAGE, there) {
             return None;
         }
@@ -323,7 +324,7 @@ impl<'a> Reader<'a> {
         ];
         let zero = if let [Some(a), Some(b), Some(c)] = zero { Some([a, b, c]) } else { None };
         let transformer = ThreeWindingTransformer { voltages, windings, pairs: [hm, hl, ml], zero };
-        let behind = self.behind_sides(source, &voltages, (own, own_voltage), at)?;
+        let behind = self.behind_sides(source, &transformer, (own, own_voltage), at)?;
         let c = super::c_max(low);
         let [high, middle, low] = &behind;
         let seen = match own {
@@ -344,10 +345,12 @@ impl<'a> Reader<'a> {
     fn behind_sides(
         &mut self,
         source: &Source<'a>,
-        voltages: &[ElectricPotential; 3],
+        transformer: &ThreeWindingTransformer,
         (own, own_voltage): (usize, ElectricPotential),
         at: At,
     ) -> Option<[Option<Infeed>; 3]> {
+        let voltages = &transformer.voltages;
+        let own_winding = transformer.windings.get(own).copied().unwrap_or(Winding::Unknown);
         let behind = self.behind(source.sheet);
         if behind.is_empty() {
             return self.combined_behind(source, at).map(|_| [None, None, None]);
@@ -364,15 +367,25 @@ impl<'a> Reader<'a> {
             list.push(id);
         }
         let mut seen: [Option<Infeed>; 3] = [None, None, None];
-        for ((ids, voltage), slot) in at_sides.iter().zip(voltages).zip(&mut seen) {
+        for (((ids, voltage), winding), slot) in at_sides.iter().zip(voltages).zip(transformer.windings).zip(&mut seen)
+        {
             if !ids.is_empty() {
                 let nominal = self.nominal_of_any(ids);
                 let ratio = at.ratio * (own_voltage / *voltage).value;
-                *slot = self.together(ids, At { voltage: *voltage, nominal, ratio, c: None, busbar: false });
+                let earth = at.earth && both_earthed(own_winding, winding);
+                let there = At { voltage: *voltage, nominal, ratio, c: None, busbar: false, earth };
+                *slot = self.together(ids, there);
             }
         }
         Some(seen)
     }
+}
+
+/// Whether two windings pass zero-sequence current from one to the other: both in star, with an earthed neutral.
+fn both_earthed(one: Winding, other: Winding) -> bool {
+    // Of an unknown winding the connection is asked for first.
+    let earthed = |winding| matches!(winding, Winding::Star(neutral) if neutral != Neutral::Isolated);
+    earthed(one) && earthed(other)
 }
 
 /// The neutral of several transformers side by side: each has its own.

@@ -15,7 +15,7 @@ use crate::quantity::{
     Ratio, Time, VoltageRate, significant,
 };
 use crate::source::Place;
-use crate::standards::SystemClass;
+use crate::standards::{GeneratorFault, SystemClass, first_pole_factors, generator_breaker_trv};
 
 const C37_011: &str = "IEEE C37.011 (from memory)";
 
@@ -34,6 +34,10 @@ pub struct NetworkTrv {
 pub(crate) fn withstand(case: &Case<'_>, current: ElectricCurrent) -> Option<(Withstand, Ratio)> {
     let rated = case.rated_voltage()?.value;
     let isc = case.breaker.quantity::<ElectricCurrent>(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT)?.value;
+    if case.is_generator_breaker() {
+        let share = current / isc;
+        return generator_breaker(case, rated).filter(|_| share.value <= 1.0).map(|withstand| (withstand, share));
+    }
     let kpp = case.breaker.quantity::<Ratio>(&breaker::FIRST_POLE_TO_CLEAR_FACTOR)?.value.value;
     let class = case.breaker.class(&breaker::CLASSES, 'S').map(|(class, _)| match class.grade {
         1 => SystemClass::S1,
@@ -41,6 +45,22 @@ pub(crate) fn withstand(case: &Case<'_>, current: ElectricCurrent) -> Option<(Wi
     });
     let share = current / isc;
     withstand_at(rated, kpp, class, share.value).map(|withstand| (withstand, share))
+}
+
+/// What a generator circuit-breaker withstands: of the greatest transformer at the busbar, through which the system feeds the fault,
+/// else of the greatest generator there.
+fn generator_breaker(case: &Case<'_>, rated: ElectricPotential) -> Option<Withstand> {
+    let greatest = |machines: bool| {
+        let powers = case.infeeds.at_busbar.iter().filter_map(|thing| match thing.kind {
+            BusbarKind::Apparatus { machine, power, .. } if machine == machines => power,
+            _ => None,
+        });
+        powers.max_by(|a, b| a.si().total_cmp(&b.si()))
+    };
+    let row = greatest(false)
+        .and_then(|power| generator_breaker_trv(GeneratorFault::SystemSource, power))
+        .or_else(|| generator_breaker_trv(GeneratorFault::GeneratorSource, greatest(true)?))?;
+    Some(Withstand { peak: row.peak(rated), rate: row.rate() })
 }
 
 /// What is almost enough for a recovery voltage: of things of one kind at the busbar some say what they are for a wave, others not.
@@ -228,7 +248,7 @@ fn of_apparatus(case: &Case<'_>, infeeds: &Infeeds, fault: &Fault) -> Option<Net
     let omega = std::f64::consts::TAU * fault.frequency.si();
     let mut capacitance = fault.capacitance;
     for thing in &infeeds.at_busbar {
-        let BusbarKind::Apparatus { reactance, natural, capacitance: own } = thing.kind else { return None };
+        let BusbarKind::Apparatus { reactance, natural, capacitance: own, .. } = thing.kind else { return None };
         capacitance += match (own, natural) {
             (Some(own), _) => own * f64::from(thing.number),
             // Its own inductance, of all that stand side by side, and its own frequency give its capacitance.
@@ -245,9 +265,12 @@ fn of_apparatus(case: &Case<'_>, infeeds: &Infeeds, fault: &Fault) -> Option<Net
         |z| Inductance::from_si(z.reactance().si() / omega),
     );
     let (withstand, _) = withstand(case, fault.current)?;
-    let kpp = case.breaker.quantity::<Ratio>(&breaker::FIRST_POLE_TO_CLEAR_FACTOR)?.value;
+    // The standard of generator circuit-breakers counts with 1.5.
+    let own = if case.is_generator_breaker() { first_pole_factors().last().map(Ratio::from_si) } else { None };
+    let stated = || case.breaker.quantity::<Ratio>(&breaker::FIRST_POLE_TO_CLEAR_FACTOR).map(|stated| stated.value);
+    let kpp = own.or_else(stated)?;
     let swing = crest(fault.rated);
-    // No study says how it is damped: as the standard's duty at that current.
+    // No study says how it is damped: as the standard's wave.
     let amplitude = (withstand.peak / (swing * kpp)).value;
     let frequency = natural_frequency(inductance, capacitance);
     let wave = one_minus_cosine(swing * fault.kpp, amplitude, frequency);
@@ -260,7 +283,7 @@ fn of_apparatus(case: &Case<'_>, infeeds: &Infeeds, fault: &Fault) -> Option<Net
             .given("peak", wave.peak.show())
     };
     let rate = shown(Figure::new(wave.rate, "1.138 peak 2 f, f = 1/(2 pi sqrt(L C))", C37_011));
-    let peak = Figure::new(wave.peak, "kaf kpp Ur sqrt(2/3), damped as the standard's duty at that current", C37_011)
+    let peak = Figure::new(wave.peak, "kaf kpp Ur sqrt(2/3), damped as the standard's wave at that current", C37_011)
         .given("kaf", significant(amplitude, 3))
         .given("kpp", significant(fault.kpp.value, 3))
         .given("Ur", fault.rated.show());
