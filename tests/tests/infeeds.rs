@@ -164,3 +164,49 @@ fn the_recovery_voltage_of_one_reactance() {
     // 1.138 peak 2 f.
     near(figure(&all, "network_trv_rate"), 1.138_217 * figure(&all, "network_trv_peak") * 2.0 * 8.70e3, 1e-3);
 }
+
+/// A motor of 5 MW at 10 kV, 0.88, 97.5 %, five times its current (of the ten-node network of pandapower's tests): ZM = 3.432 ohm by
+/// IEC 60909-0, own calculation; a third of a second later nearly nothing of it is left, at 0.1 s mu q of it.
+#[test]
+fn a_group_of_motors() {
+    let motors = |power: &str| {
+        let text = format!(
+            "cbspec 1\nsystem Bus\n    nominal voltage: 10 kV\n    frequency: 50 Hz\ninfeed M into Bus\n    kind: motor group\n    number in parallel: 2\n    \
+             rated voltage: 10 kV\n    {power}\n    starting current ratio: 5\n    pole pairs: 1\n\
+             site Yard\n    altitude: 100 m\nbreaker B on Bus at Yard\n    opening time: 90 ms\n"
+        );
+        Assessor::standard().assess(&Sources::of("motors.cbspec", text))
+    };
+    let by_shaft = motors("rated power: 5 MW\n    power factor: 0.88\n    efficiency: 97.5 %");
+    let initial = figure(&by_shaft, "short_circuit_current");
+    near(initial, 2.0 * 1.1 * 10e3 / 3f64.sqrt() / 3.432, 1e-3);
+    // mu and q at 0.1 s: 0.62 + 0.72 exp(-0.32 Ik/Ir), Ik/Ir = 5.5; 0.57 + 0.12 ln 5.
+    let mu = 0.62 + 0.72 * (-0.32f64 * 5.5).exp();
+    let q = 0.57 + 0.12 * 5f64.ln();
+    near(figure(&by_shaft, "symmetrical_breaking_current"), mu * q * initial, 1e-3);
+    // The same by apparent power, without which no shaft power a pole pair is known.
+    let apparent = motors("rated power: 5.8275 MVA");
+    near(figure(&apparent, "short_circuit_current"), initial, 1e-4);
+    near(figure(&apparent, "symmetrical_breaking_current"), initial, 1e-4);
+}
+
+/// A transformer of 31.5 MVA, 12 %, 115/10.5 kV, Dyn5, its neutral through 6 ohm: Ik1 by IEC 60909-0, own calculation.
+#[test]
+fn a_neutral_resistor() {
+    let all = assess(
+        "system Bus\n    nominal voltage: 10 kV\n    frequency: 50 Hz\n    neutral: low-resistance earthed\n\
+         infeed T into Bus\n    kind: transformer\n    rated power: 31.5 MVA\n    high-voltage side: 115 kV\n    low-voltage side: 10.5 kV\n    \
+         impedance voltage: 12 %\n    load losses: 157.5 kW\n    winding connection: Dyn5\n    neutral: low-resistance earthed\n    neutral resistor: 6 ohm\n\
+         infeed Grid into Bus through T\n    kind: network\n    nominal voltage: 110 kV\n    short-circuit current: 20 kA\n    R/X: 0.1\n",
+    );
+    // ZT = 0.42 ohm, RT = 0.0175, KT = 0.97487; ZQ = 3.4930 ohm (10.5/115)^2 at R/X 0.1.
+    let (rt, xt) = (0.0175 * 0.97487, (0.42f64.powi(2) - 0.0175f64.powi(2)).sqrt() * 0.97487);
+    let zq = 1.1 * 110e3 / (3f64.sqrt() * 20e3) * (10.5f64 / 115.0).powi(2);
+    let xq = zq / 1.01f64.sqrt();
+    let (r1, x1) = (rt + 0.1 * xq, xt + xq);
+    near(figure(&all, "short_circuit_current"), 1.1 * 10e3 / 3f64.sqrt() / r1.hypot(x1), 1e-4);
+    let (r0, x0) = (rt + 18.0, xt);
+    let one = 3f64.sqrt() * 1.1 * 10e3 / (2.0 * r1 + r0).hypot(2.0 * x1 + x0);
+    near(figure(&all, "short_circuit_current_single_phase"), one, 1e-4);
+    near(figure(&all, "first_pole_factor"), 1.5, 1e-9);
+}

@@ -4,10 +4,10 @@ use super::{Check, EQUAL, Rule, breaking_current};
 use crate::case::Case;
 use crate::duty::{percent, withstand};
 use crate::finding::{Datum, Finding, FindingKind, Findings};
-use crate::particular::{breaker, system};
+use crate::particular::{Particular, breaker, circuit, system};
 use crate::physics::network_trv::Withstand;
 use crate::quantity::{ElectricCurrent, ElectricPotential, Physical, Ratio, Time, VoltageRate, significant};
-use crate::sheet::{Stated, Statement};
+use crate::sheet::{Facts, Stated, Statement};
 
 /// The rules of this subject.
 pub static ALL: &[&Rule] = &[&TRV_ABOVE_ENVELOPE];
@@ -19,7 +19,7 @@ pub static TRV_ABOVE_ENVELOPE: Rule = Rule {
     kind: FindingKind::Shortfall,
     basis: "IEC 62271-100:2021, IEC/IEEE 62271-37-013 (envelopes), IEEE C37.011 (interpolation and network) (from memory)",
     formula: "peak and rate of rise of the study, or sqrt2 w I Zeq of the lines, against T10, T30, T60, T100 interpolated at I/Isc",
-    explanation: "What a study states of a fault at the busbar counts; else the rate that lines, cables and apparatus at the busbar \
+    explanation: "What a study states counts: in a circuit of a fault in it, in the system of a fault at the busbar; of the latter else the rate that lines, cables and apparatus at the busbar \
                   give, as far as the infeeds say what they are for a wave. Peak and rate are two findings: the one asks for a higher \
                   rating or a lower recovery voltage, the other for capacitance, or a higher breaking current, of which the fault is \
                   then a smaller share. A generator circuit-breaker is held against the table of its own standard, by the power of \
@@ -32,40 +32,69 @@ fn above(case: &Case<'_>, findings: &mut Findings) {
     if case.breaker.mentions(&breaker::TRV_MITIGATION) {
         return;
     }
-    if [&system::PROSPECTIVE_TRV_PEAK, &system::PROSPECTIVE_TRV_RATE_OF_RISE]
-        .into_iter()
-        .any(|p| case.system.mentions(p))
-    {
-        study(case, findings);
+    for part in &case.circuits {
+        // Of a fault in a circuit nothing but the study tells the current.
+        study(case, (&part.facts, OF_CIRCUIT), None, findings);
+    }
+    let studied = [&system::PROSPECTIVE_TRV_PEAK, &system::PROSPECTIVE_TRV_RATE_OF_RISE];
+    if studied.into_iter().any(|p| case.system.mentions(p)) {
+        let of_duty = case.duty.short_circuit_current.as_ref().map(|figure| figure.value);
+        study(case, (&case.system.facts, OF_SYSTEM), of_duty, findings);
     } else {
         network(case, findings);
     }
 }
 
+/// Where a study stands: the sheet's facts, and its particulars of current, peak, rate, t3 and time to peak.
+type Study<'a> = (&'a Facts, [&'static Particular; 5]);
+
+/// The study of a fault at the busbar.
+static OF_SYSTEM: [&Particular; 5] = [
+    &system::PROSPECTIVE_TRV_CURRENT,
+    &system::PROSPECTIVE_TRV_PEAK,
+    &system::PROSPECTIVE_TRV_RATE_OF_RISE,
+    &system::PROSPECTIVE_TRV_TIME_T3,
+    &system::PROSPECTIVE_TRV_TIME_TO_PEAK,
+];
+
+/// The study of a fault in a circuit.
+static OF_CIRCUIT: [&Particular; 5] = [
+    &circuit::PROSPECTIVE_TRV_CURRENT,
+    &circuit::PROSPECTIVE_TRV_PEAK,
+    &circuit::PROSPECTIVE_TRV_RATE_OF_RISE,
+    &circuit::PROSPECTIVE_TRV_TIME_T3,
+    &circuit::PROSPECTIVE_TRV_TIME_TO_PEAK,
+];
+
 /// The rate of a studied wave: as stated, else of peak and t3, else of peak and time to peak.
 fn studied_rate<'a>(
-    case: &'a Case<'_>,
+    (facts, [_, _, rate, t3, to_peak]): Study<'a>,
     peak: Option<&Stated<'a, ElectricPotential>>,
 ) -> Option<(VoltageRate, &'a Statement, String)> {
-    if let Some(rate) = case.system.quantity::<VoltageRate>(&system::PROSPECTIVE_TRV_RATE_OF_RISE) {
+    if let Some(rate) = facts.quantity::<VoltageRate>(rate) {
         return Some((rate.value, rate.statement, String::new()));
     }
     let peak = peak?;
-    let time: Stated<'_, Time> = case
-        .system
-        .quantity(&system::PROSPECTIVE_TRV_TIME_T3)
-        .or_else(|| case.system.quantity(&system::PROSPECTIVE_TRV_TIME_TO_PEAK))
+    let time: Stated<'_, Time> = facts
+        .quantity(t3)
+        .or_else(|| facts.quantity(to_peak))
         .filter(|time: &Stated<'_, Time>| time.value.si() > 0.0)?;
     let rate: VoltageRate = peak.value / time.value;
     Some((rate, time.statement, format!("{}/{} = {}", peak.measure, time.measure, rate.show())))
 }
 
-fn study(case: &Case<'_>, findings: &mut Findings) {
-    let stated = case.system.quantity::<ElectricCurrent>(&system::PROSPECTIVE_TRV_CURRENT).map(|stated| stated.value);
-    let of_duty = || case.duty.short_circuit_current.as_ref().map(|figure| figure.value);
-    let Some(current) = stated.or_else(of_duty) else { return };
+/// Whether the study of a fault in a circuit is stated, so that no rule has to estimate it.
+pub(super) fn is_studied(part: &Facts) -> bool {
+    [&circuit::PROSPECTIVE_TRV_PEAK, &circuit::PROSPECTIVE_TRV_RATE_OF_RISE].into_iter().any(|p| part.mentions(p))
+}
+
+fn study(case: &Case<'_>, study: Study<'_>, otherwise: Option<ElectricCurrent>, findings: &mut Findings) {
+    let (facts, [current, peak, ..]) = study;
+    let Some(current) = facts.quantity::<ElectricCurrent>(current).map(|stated| stated.value).or(otherwise) else {
+        return;
+    };
     let Some((allowed, share)) = withstand(case, current) else { return };
-    let peak = case.system.quantity::<ElectricPotential>(&system::PROSPECTIVE_TRV_PEAK);
+    let peak = facts.quantity::<ElectricPotential>(peak);
     if let Some(peak) = peak.as_ref().filter(|peak| peak.value.si() > allowed.peak.si() * (1.0 + EQUAL)) {
         let message = format!(
             "the recovery voltage of the study peaks at {} at {}, and the envelope at {} of the rated current at {}",
@@ -82,7 +111,7 @@ fn study(case: &Case<'_>, findings: &mut Findings) {
         );
         rated(case, finding, allowed, share);
     }
-    let Some((rate, statement, working)) = studied_rate(case, peak.as_ref()) else { return };
+    let Some((rate, statement, working)) = studied_rate(study, peak.as_ref()) else { return };
     if rate.si() > allowed.rate.si() * (1.0 + EQUAL) {
         let message = format!(
             "the recovery voltage of the study rises by {} at {}, and the envelope at {} of the rated current by {}",
@@ -282,6 +311,14 @@ mod tests {
         study("prospective TRV rate of rise", "4.5 kV/us")
             .set("system", "prospective TRV current", "9.45 kA")
             .silent(RULE);
+        // In a circuit it is of a fault there, at the current of the study, without which nothing can be told.
+        let circuit = |rate: &str, current: &str| {
+            let bay = Bay::new().set("circuit", "prospective TRV rate of rise", rate);
+            bay.set("circuit", "prospective TRV current", current)
+        };
+        circuit("5.4 kV/us", "9.45 kA").one(RULE);
+        circuit("4.9 kV/us", "9.45 kA").silent(RULE);
+        Bay::new().set("circuit", "prospective TRV rate of rise", "9 kV/us").silent(RULE);
         // A study speaks instead of the lines.
         lines(2).set("system", "prospective TRV rate of rise", "1.9 kV/us").silent(RULE);
         // Above the rated current another rule speaks.

@@ -64,6 +64,7 @@ impl FromInfeeds {
                 .resting_on(infeeds.places()),
         );
         all.peak_factor = kappa(infeeds, seen, &fault);
+        all.breaking = breaking(infeeds, seen, &fault, separation, &three);
         if infeeds.is_off(Off::DirectCurrent) {
             return all;
         }
@@ -76,7 +77,6 @@ impl FromInfeeds {
                     .from("tau", tau)
             });
         }
-        all.breaking = breaking(infeeds, seen, &fault, separation, &three);
         all
     }
 
