@@ -210,3 +210,46 @@ fn a_neutral_resistor() {
     near(figure(&all, "short_circuit_current_single_phase"), one, 1e-4);
     near(figure(&all, "first_pole_factor"), 1.5, 1e-9);
 }
+
+const TRANSFORMER: &str = "    kind: transformer\n    rated power: 15 MVA\n    high-voltage side: 33 kV\n    low-voltage side: 11 kV\n    \
+                           impedance voltage: 10 %\n    load losses: 80 kW\n    winding connection: Dyn11\n    neutral: solidly earthed\n";
+const UPPER: &str = "system Upper\n    nominal voltage: 33 kV\n    short-circuit current: 18.5 kA\n    X/R: 11\n\
+                     system Bus\n    nominal voltage: 11 kV\n    frequency: 50 Hz\n";
+
+/// Two transformers that one system feeds are the same as two side by side: their source counts once.
+#[test]
+fn transformers_of_one_source() {
+    let two = assess(&format!(
+        "{UPPER}infeed T1 into Bus from Upper\n{TRANSFORMER}infeed T2 into Bus from Upper\n{TRANSFORMER}"
+    ));
+    let pair = assess(&format!("{UPPER}infeed T into Bus from Upper\n{TRANSFORMER}    number in parallel: 2\n"));
+    let keys = [
+        "short_circuit_current",
+        "short_circuit_current_single_phase",
+        "peak_current",
+        "dc_time_constant",
+        "first_pole_factor",
+    ];
+    for key in keys {
+        near(figure(&two, key), figure(&pair, key), 1e-9);
+    }
+    // ZT = 0.8067 ohm of each at 11 kV, KT = 0.9858; ZQ = 1.1 x 33 kV/(sqrt3 18.5 kA)/9: own calculation, R/X of both about 0.06.
+    let (zt, zq) = (0.10f64 * 121.0 / 15.0 * 0.985_9, 1.1 * 33e3 / (3f64.sqrt() * 18.5e3) / 9.0);
+    near(figure(&two, "short_circuit_current"), 1.1 * 11e3 / 3f64.sqrt() / (zt / 2.0 + zq), 1e-3);
+}
+
+/// A source that feeds in by two ways of different length makes a mesh, which is not reckoned, and not counted twice.
+#[test]
+fn a_mesh_is_told() {
+    let line = "    kind: cable\n    length: 2 km\n    resistance per length: 0.1 ohm/km\n    reactance per length: 0.1 ohm/km\n";
+    let text = format!(
+        "cbspec 1\n{UPPER}infeed T1 into Bus from Upper\n{TRANSFORMER}infeed Cable into Bus from T2\n{line}infeed T2 into Bus from Upper\n{TRANSFORMER}\
+         {BREAKER}"
+    );
+    let all = Assessor::standard().assess(&Sources::of("mesh.cbspec", text));
+    let found: Vec<_> = all.findings().iter().filter(|finding| finding.rule == "infeed-incomplete").collect();
+    assert_eq!(found.len(), 1);
+    assert!(found.iter().all(|finding| finding.message.contains("a mesh is not reckoned")), "{found:#?}");
+    let case = all.cases().first().expect("a breaker");
+    assert!(case.duty.iter().all(|figure| figure.key != "short_circuit_current" || figure.value.is_none()));
+}

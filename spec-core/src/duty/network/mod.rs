@@ -4,6 +4,7 @@
 //! read from the system outwards, so that every transformer knows which of its sides is the system's.
 
 mod currents;
+mod element;
 mod read;
 mod source;
 mod transformer;

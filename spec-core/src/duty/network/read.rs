@@ -5,10 +5,8 @@ use super::{
     shown,
 };
 use crate::particular::{Particular, SheetKind, infeed, system};
-use crate::physics::infeed::{Element, Impedance, Infeed, PassiveElement, ZeroAcross, ZeroSequence};
-use crate::quantity::{
-    ElectricCurrent, ElectricPotential, ElectricalResistance, Frequency, ImpedancePerLength, Length, Physical, Ratio,
-};
+use crate::physics::infeed::{Impedance, Infeed, ZeroSequence};
+use crate::quantity::{ElectricPotential, ElectricalResistance, Frequency, Physical, Ratio};
 use crate::sheet::{Facts, Reading, Set, Sheet, SheetId};
 
 /// A place where infeeds stand: at the system, or on the far side of an element.
@@ -37,11 +35,11 @@ pub(super) struct Reader<'a> {
     pub frequency: Option<Frequency>,
     pub found: Infeeds,
     /// Systems and infeeds that are being read, so that a circle ends.
-    open: Vec<SheetId>,
-    /// How many were read.
-    count: usize,
+    pub(super) open: Vec<SheetId>,
+    /// All that were read.
+    read: Vec<SheetId>,
     /// Whether the zero sequence of the one that is being read counts.
-    earth: bool,
+    pub(super) earth: bool,
 }
 
 /// A sheet with what it states.
@@ -75,7 +73,7 @@ impl Source<'_> {
 
 impl<'a> Reader<'a> {
     pub fn new(set: &'a Set, frequency: Option<Frequency>) -> Self {
-        Self { set, frequency, found: Infeeds::default(), open: Vec::new(), count: 0, earth: true }
+        Self { set, frequency, found: Infeeds::default(), open: Vec::new(), read: Vec::new(), earth: true }
     }
 
     pub fn source(&self, id: SheetId) -> Option<Source<'a>> {
@@ -108,9 +106,18 @@ impl<'a> Reader<'a> {
         self.found.incomplete = true;
     }
 
-    /// Several infeeds at one place, side by side.
+    /// Several infeeds at one place, side by side; elements that the same source feeds lead to it together.
     pub fn together(&mut self, ids: &[SheetId], at: At) -> Option<Infeed> {
-        let seen: Vec<Infeed> = ids.iter().filter_map(|id| self.one(*id, at)).collect();
+        let mut seen: Vec<Infeed> = Vec::new();
+        let mut done: Vec<SheetId> = Vec::new();
+        for id in ids {
+            if done.contains(id) {
+                continue;
+            }
+            let group = self.fed_alike(*id, ids);
+            seen.extend(if group.len() > 1 { self.side_by_side(&group, at) } else { self.one(*id, at) });
+            done.extend(group);
+        }
         Infeed::all_in_parallel(&seen)
     }
 
@@ -175,22 +182,31 @@ impl<'a> Reader<'a> {
         self.together(&behind, at)
     }
 
+    /// Whether an infeed may be read here: neither one too many, nor in a circle, nor by a second way, which only a mesh could tell.
+    pub fn enters(&mut self, source: &Source<'a>) -> bool {
+        let id = source.sheet.id;
+        let why = if self.read.len() >= MOST_INFEEDS {
+            if self.found.incomplete {
+                return false;
+            }
+            format!("a place among the first {MOST_INFEEDS} infeeds; sum several up in one")
+        } else if self.open.contains(&id) {
+            "a source that is not fed by this system again".to_owned()
+        } else if self.read.contains(&id) {
+            "a single way by which it feeds in: a mesh is not reckoned, sum it up in one infeed".to_owned()
+        } else {
+            self.read.push(id);
+            return true;
+        };
+        self.lacks_words(source, Off::Everything, vec![why]);
+        self.found.incomplete = true;
+        false
+    }
+
     /// One infeed as its place sees it; a system stands for its network.
     pub fn one(&mut self, id: SheetId, at: At) -> Option<Infeed> {
         let source = self.source(id)?;
-        self.count += 1;
-        if self.count > MOST_INFEEDS {
-            if !self.found.incomplete {
-                let words = format!("a place among the first {MOST_INFEEDS} infeeds; sum several up in one");
-                self.lacks_words(&source, Off::Everything, vec![words]);
-            }
-            self.found.incomplete = true;
-            return None;
-        }
-        if self.open.contains(&id) {
-            let words = "a source that is not fed by this system again".to_owned();
-            self.lacks_words(&source, Off::Everything, vec![words]);
-            self.found.incomplete = true;
+        if !self.enters(&source) {
             return None;
         }
         self.open.push(id);
@@ -231,97 +247,14 @@ impl<'a> Reader<'a> {
         match kind {
             "network" => self.network(source, at),
             "transformer" => self.transformer(source, at),
-            "overhead line" | "cable" => self.line(source, at),
+            "overhead line" | "cable" | "series reactor" => self.led(source, kind, at),
             "generator" => self.generator(source, at),
             "power station unit" => self.power_station_unit(source, at),
             "motor group" => self.motors(source, at),
             "converter plant" => self.converter(source, at),
-            "series reactor" => self.reactor(source, at),
-            _ => self.impedance(source, at),
+            _ if self.behind(source.sheet).is_empty() => self.impedance(source, at),
+            _ => self.led(source, kind, at),
         }
-    }
-
-    fn line(&mut self, source: &Source<'a>, at: At) -> Option<Infeed> {
-        let needed = [&infeed::LENGTH, &infeed::RESISTANCE_PER_LENGTH, &infeed::REACTANCE_PER_LENGTH];
-        let values = (
-            source.positive::<Length>(&infeed::LENGTH),
-            source.quantity::<ImpedancePerLength>(&infeed::RESISTANCE_PER_LENGTH),
-            source.positive::<ImpedancePerLength>(&infeed::REACTANCE_PER_LENGTH),
-        );
-        let (Some(length), Some(resistance), Some(reactance)) = values else {
-            self.lacks(source, Off::Everything, &needed);
-            self.combined_behind(source, At { busbar: false, ..at });
-            return None;
-        };
-        let zero = (
-            source.quantity::<ImpedancePerLength>(&infeed::ZERO_SEQUENCE_RESISTANCE_PER_LENGTH),
-            source.quantity::<ImpedancePerLength>(&infeed::ZERO_SEQUENCE_REACTANCE_PER_LENGTH),
-        );
-        let zero = if let (Some(r0), Some(x0)) = zero { Some((r0, x0)) } else { None };
-        let many = 1.0 / f64::from(number(source.facts));
-        let one = PassiveElement {
-            length,
-            resistance: resistance * many,
-            reactance: reactance * many,
-            zero: zero.map(|(r0, x0)| (r0 * many, x0 * many)),
-        };
-        let element = one.element();
-        self.part(source, at, element.positive);
-        let behind = self.combined_behind(source, At { busbar: false, ..at })?;
-        // Behind an open path nothing of the line's own zero sequence counts.
-        if zero.is_none() && behind.zero() != ZeroSequence::Open {
-            let needed = [&infeed::ZERO_SEQUENCE_RESISTANCE_PER_LENGTH, &infeed::ZERO_SEQUENCE_REACTANCE_PER_LENGTH];
-            self.lacks(source, Off::Earth, &needed);
-        }
-        Some(behind.through(&element))
-    }
-
-    fn reactor(&mut self, source: &Source<'a>, at: At) -> Option<Infeed> {
-        let reactance = source.positive::<ElectricalResistance>(&infeed::REACTANCE);
-        let many = 1.0 / f64::from(number(source.facts));
-        let rated = source.positive::<ElectricCurrent>(&infeed::RATED_CURRENT);
-        let voltage = source.positive::<ElectricPotential>(&infeed::NOMINAL_VOLTAGE).or(at.nominal);
-        let share = source.positive::<Ratio>(&infeed::IMPEDANCE_VOLTAGE);
-        let of_share = || {
-            let (share, rated, voltage) = (share?, rated?, voltage?);
-            Some(crate::physics::infeed::series_reactor(share, voltage, rated).positive.reactance())
-        };
-        let Some(reactance) = reactance.or_else(of_share) else {
-            if share.is_some() && rated.is_some() {
-                self.lacks(source, Off::Everything, &[&infeed::NOMINAL_VOLTAGE]);
-            } else if share.is_some() {
-                self.lacks(source, Off::Everything, &[&infeed::RATED_CURRENT]);
-            } else {
-                self.lacks(source, Off::Everything, &[&infeed::REACTANCE]);
-            }
-            self.combined_behind(source, At { busbar: false, ..at });
-            return None;
-        };
-        let resistance = source.quantity::<ElectricalResistance>(&infeed::RESISTANCE).unwrap_or_default();
-        let element = Element::of_impedance(Impedance::new(resistance, reactance).scaled(many));
-        self.part(source, at, element.positive);
-        let behind = self.combined_behind(source, At { busbar: false, ..at })?;
-        Some(behind.through(&element))
-    }
-
-    /// A plain impedance: a source by itself, or an element where others stand behind it.
-    fn impedance(&mut self, source: &Source<'a>, at: At) -> Option<Infeed> {
-        let resistance = source.quantity::<ElectricalResistance>(&infeed::RESISTANCE);
-        let reactance = source.positive::<ElectricalResistance>(&infeed::REACTANCE);
-        let (Some(resistance), Some(reactance)) = (resistance, reactance) else {
-            self.lacks(source, Off::Everything, &[&infeed::RESISTANCE, &infeed::REACTANCE]);
-            return None;
-        };
-        // It is given at the system's voltage, wherever it stands.
-        let scale = 1.0 / (f64::from(number(source.facts)) * at.ratio * at.ratio);
-        let positive = Impedance::new(resistance, reactance).scaled(scale);
-        let zero = self.stated_zero(source, positive, scale);
-        self.part(source, at, positive);
-        if self.behind(source.sheet).is_empty() {
-            return Some(Infeed::of_impedance(positive, zero));
-        }
-        let behind = self.combined_behind(source, At { busbar: false, ..at })?;
-        Some(behind.through(&Element { positive, zero: ZeroAcross::Along(zero), ratio: 1.0 }))
     }
 
     /// The zero sequence of a source as it is stated: in ohm, by ratios, or that there is none.
@@ -352,7 +285,7 @@ impl<'a> Reader<'a> {
     }
 
     /// What the recovery voltage sees of an infeed directly at the busbar.
-    fn note_busbar(&mut self, source: &Source<'a>, kind: &str, at: At) {
+    pub fn note_busbar(&mut self, source: &Source<'a>, kind: &str, at: At) {
         if !at.busbar {
             return;
         }

@@ -1,5 +1,6 @@
 //! Transformers, and the units of a power station.
 
+use super::element::Leading;
 use super::read::{At, Reader, Source};
 use super::windings::{Letter, letters, neutral};
 use super::{Off, number, same_level};
@@ -109,12 +110,27 @@ impl<'a> Reader<'a> {
         if source.facts.mentions(&infeed::MIDDLE_VOLTAGE_SIDE) {
             return self.three_windings(source, at);
         }
+        // A generator alone behind it makes it the transformer of a unit.
+        let generator = match self.behind(source.sheet).as_slice() {
+            [only] => self.source(*only).filter(|behind| is_kind(behind, "generator")),
+            _ => None,
+        };
+        let Some(generator) = generator else { return self.led(source, "transformer", at) };
+        let (transformer, side, _) = self.placed(source, at)?;
+        if side == Side::Low {
+            return self.led(source, "transformer", at);
+        }
+        if !self.enters(&generator) {
+            return None;
+        }
+        self.unit(source, &generator, transformer, at)
+    }
+
+    /// A two-winding transformer with the side that it turns to its place, and the place behind it.
+    fn placed(&mut self, source: &Source<'a>, at: At) -> Option<(TwoWindingTransformer, Side, At)> {
         let many = f64::from(number(source.facts));
         let power = source.positive::<Power>(&infeed::RATED_POWER);
-        let Some(mut transformer) = self.two_windings(source, power, many) else {
-            self.look_behind(source, at);
-            return None;
-        };
+        let mut transformer = self.two_windings(source, power, many)?;
         let side = self.side(source, transformer.high, transformer.low, at)?;
         let (own, far) = match side {
             Side::High => (transformer.high, transformer.low),
@@ -134,11 +150,12 @@ impl<'a> Reader<'a> {
             busbar: false,
             earth: at.earth && both_earthed(transformer.high_winding, transformer.low_winding),
         };
-        if let (Side::High, [only]) = (side, behind.as_slice())
-            && let Some(generator) = self.source(*only).filter(|s| is_kind(s, "generator"))
-        {
-            return self.unit(source, &generator, transformer, at);
-        }
+        Some((transformer, side, beyond))
+    }
+
+    /// The same as an element between its place and what stands behind it.
+    pub(super) fn two_winding_element(&mut self, source: &Source<'a>, at: At) -> Option<Leading> {
+        let (transformer, side, beyond) = self.placed(source, at)?;
         let c = super::c_max(beyond.nominal.filter(|_| side == Side::High).unwrap_or(transformer.low));
         let element = match side {
             Side::High => transformer.upwards(c),
@@ -146,11 +163,11 @@ impl<'a> Reader<'a> {
         };
         self.part(source, at, element.positive);
         self.note_reactance(source, at, element.positive);
-        Some(self.combined_behind(source, beyond)?.through(&element))
+        Some(Leading { element, beyond })
     }
 
     /// Looks at what stands behind a transformer that itself says too little, so that everything missing is told at once.
-    fn look_behind(&mut self, source: &Source<'a>, at: At) {
+    pub(super) fn look_behind(&mut self, source: &Source<'a>, at: At) {
         let high = source.positive::<ElectricPotential>(&infeed::HIGH_VOLTAGE_SIDE);
         let low = source.positive::<ElectricPotential>(&infeed::LOW_VOLTAGE_SIDE);
         let (Some(high), Some(low)) = (high, low) else { return };

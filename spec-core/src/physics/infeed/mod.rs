@@ -228,6 +228,27 @@ impl Infeed {
         Self { network, zero, converter: self.converter * (passes / element.ratio), machines: machines.collect() }
     }
 
+    /// As seen from the far side of several elements side by side, all fed by this. Their ratios should be one; where they differ, no
+    /// current that circulates between them is counted, and the least is taken, which gives the greatest fault current. None without
+    /// elements.
+    pub fn through_all(&self, elements: &[Element]) -> Option<Self> {
+        let positive = elements.iter().map(|element| element.positive).reduce(Impedance::parallel)?;
+        let ratio = elements.iter().map(|element| element.ratio).reduce(f64::min)?;
+        let beside = |zero: ZeroSequence, next: ZeroSequence| zero.parallel(next);
+        let along = elements.iter().map(|element| match element.zero {
+            ZeroAcross::Along(own) => own,
+            ZeroAcross::ToEarth(_) => ZeroSequence::Open,
+        });
+        let to_earth = elements.iter().map(|element| match element.zero {
+            ZeroAcross::ToEarth(own) => own,
+            ZeroAcross::Along(_) => ZeroSequence::Open,
+        });
+        let along = along.fold(ZeroSequence::Open, beside);
+        let source = self.zero.scaled(ratio * ratio).series(along);
+        let zero = to_earth.fold(source, beside);
+        Some(self.through(&Element { positive, zero: ZeroAcross::ToEarth(zero), ratio }))
+    }
+
     /// Beside another at the same point.
     #[must_use]
     pub fn parallel(&self, other: &Self) -> Self {
@@ -313,6 +334,22 @@ mod tests {
         assert_eq!(below.positive(), Some(z(0.0, 0.75)));
         assert_eq!(below.zero(), path(0.0, 0.5));
         assert_eq!(one.times(2).positive(), Some(z(0.0, 1.0)));
+    }
+
+    /// Own calculation: 1 ohm behind two of 2 ohm side by side is 2 ohm, and not the 1.5 ohm of the source counted twice; the zero
+    /// sequence passes one and ends in the other.
+    #[test]
+    fn elements_side_by_side_share_their_source() {
+        let source = Infeed::of_impedance(z(0.0, 1.0), path(0.0, 1.0));
+        let passes = Element { positive: z(0.0, 2.0), zero: ZeroAcross::Along(path(0.0, 2.0)), ratio: 1.0 };
+        let ends = Element { positive: z(0.0, 2.0), zero: ZeroAcross::ToEarth(path(0.0, 3.0)), ratio: 1.0 };
+        let both = source.through_all(&[passes, passes]).expect("elements");
+        assert_eq!((both.positive(), both.zero()), (Some(z(0.0, 2.0)), path(0.0, 2.0)));
+        let mixed = source.through_all(&[passes, ends]).expect("elements");
+        assert_eq!((mixed.positive(), mixed.zero()), (Some(z(0.0, 2.0)), path(0.0, 1.5)));
+        let one = source.through_all(&[ends]).expect("an element");
+        assert_eq!((one.positive(), one.zero()), (Some(z(0.0, 3.0)), path(0.0, 3.0)));
+        assert_eq!(source.through_all(&[]), None);
     }
 
     /// Own calculation: 100 A of a converter beside 1 ohm, through 1 ohm, leave 50 A; the fault current is the sum of magnitudes.
