@@ -3,7 +3,7 @@
 use super::{Infeeds, Off, Seen};
 use crate::duty::{Figure, Input};
 use crate::physics::first_pole::{EFFECTIVE_R0_OVER_X1, EFFECTIVE_X0_OVER_X1, first_pole_factor_of};
-use crate::physics::infeed::{Fault, PeakMethod, ZeroSequence};
+use crate::physics::infeed::{EQUIVALENT_SHARE, Fault, PeakMethod, ZeroSequence};
 use crate::quantity::{ElectricCurrent, Physical, Ratio, Time, significant};
 
 const IEC_60909: &str = "IEC 60909-0 (from memory)";
@@ -167,9 +167,9 @@ fn kappa(infeeds: &Infeeds, seen: &Seen, fault: &Fault<'_>) -> Option<Figure<Rat
         let figure = Figure::new(kappa, "kappa = 1.02 + 0.98 exp(-3 R/X), one branch feeds", IEC_60909);
         return Some(figure.given("R/X", significant(peak.r_over_x(), 3)).resting_on(infeeds.places()));
     }
-    let equivalent = seen.frequency * crate::physics::infeed::EQUIVALENT_SHARE;
-    let at_equivalent = seen.infeed.positive_for_peak(crate::physics::infeed::EQUIVALENT_SHARE)?;
-    let ratio = at_equivalent.r_over_x() * crate::physics::infeed::EQUIVALENT_SHARE;
+    let equivalent = seen.frequency * EQUIVALENT_SHARE;
+    let at_equivalent = seen.infeed.positive_for_peak(EQUIVALENT_SHARE)?;
+    let ratio = at_equivalent.r_over_x() * EQUIVALENT_SHARE;
     let figure = Figure::new(
         kappa,
         "kappa = 1.02 + 0.98 exp(-3 R/X), R/X = (Rc/Xc)(fc/f) by method C, since several branches feed",
@@ -179,21 +179,26 @@ fn kappa(infeeds: &Infeeds, seen: &Seen, fault: &Fault<'_>) -> Option<Figure<Rat
     Some(figure)
 }
 
+/// One branch has one time constant. Of several the slower ones last, so that it grows with the instant: by the equivalent frequency
+/// for contact separation, and where that is not known by the one that kappa goes by.
 fn time_constant(infeeds: &Infeeds, seen: &Seen, fault: &Fault<'_>, instant: Option<Time>) -> Option<Figure<Time>> {
-    // One branch has one time constant; of several the slower ones last, so that it grows with the instant.
-    let instant = instant.filter(|_| !seen.infeed.is_one_branch());
-    let tau = fault.time_constant(instant)?;
-    let ratio = significant(1.0 / (std::f64::consts::TAU * seen.frequency.si() * tau.si()), 3);
-    let figure = match instant {
-        Some(instant) => Figure::new(
-            tau,
-            "tau = 1/(2 pi f R/X), R/X of the infeeds by the equivalent frequency of contact separation",
-            IEC_60909,
-        )
-        .given("R/X", ratio)
-        .given("t", instant.show()),
-        None => Figure::new(tau, "tau = 1/(2 pi f R/X), R/X of the infeeds", IEC_60909).given("R/X", ratio),
+    const ONE: &str = "tau = 1/(2 pi f R/X), R/X of the infeeds, which are one branch";
+    const AT_SEPARATION: &str =
+        "tau = 1/(2 pi f R/X), R/X of the infeeds by the equivalent frequency of contact separation";
+    const BY_C: &str = "tau = 1/(2 pi f R/X), R/X = (Rc/Xc)(fc/f) by method C, since no opening time is stated";
+    let omega = std::f64::consts::TAU * seen.frequency.si();
+    let (tau, formula) = if seen.infeed.is_one_branch() {
+        (fault.time_constant(None)?, ONE)
+    } else if instant.is_some() {
+        (fault.time_constant(instant)?, AT_SEPARATION)
+    } else {
+        let ratio = seen.infeed.positive_at(EQUIVALENT_SHARE)?.r_over_x() * EQUIVALENT_SHARE;
+        (Time::from_si(1.0 / (omega * Some(ratio).filter(|ratio| *ratio > 0.0)?)), BY_C)
     };
+    let mut figure = Figure::new(tau, formula, IEC_60909).given("R/X", significant(1.0 / (omega * tau.si()), 3));
+    if let (AT_SEPARATION, Some(instant)) = (formula, instant) {
+        figure = figure.given("t", instant.show());
+    }
     Some(figure.given("f", seen.frequency.show()).resting_on(infeeds.places()))
 }
 

@@ -194,7 +194,8 @@ impl<'a> Reader<'a> {
             self.lacks(source, Off::Everything, &[&infeed::NOMINAL_VOLTAGE]);
             return None;
         };
-        let infeed = generator.infeed(nominal, super::c_max(nominal)).times(number(source.facts));
+        let c = at.c.unwrap_or_else(|| super::c_max(nominal));
+        let infeed = generator.infeed(nominal, c).times(number(source.facts));
         self.part(source, at, infeed.positive()?);
         self.note_reactance(source, at, infeed.positive()?);
         Some(infeed)

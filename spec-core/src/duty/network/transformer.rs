@@ -156,10 +156,10 @@ impl<'a> Reader<'a> {
     /// The same as an element between its place and what stands behind it.
     pub(super) fn two_winding_element(&mut self, source: &Source<'a>, at: At) -> Option<Leading> {
         let (transformer, side, beyond) = self.placed(source, at)?;
-        let c = super::c_max(beyond.nominal.filter(|_| side == Side::High).unwrap_or(transformer.low));
+        // cmax of the network at the low-voltage side; at the system's voltage its own factor.
         let element = match side {
-            Side::High => transformer.upwards(c),
-            Side::Low => transformer.downwards(c),
+            Side::High => transformer.upwards(super::c_max(beyond.nominal.unwrap_or(transformer.low))),
+            Side::Low => transformer.downwards(at.c.unwrap_or_else(|| super::c_max(transformer.low))),
         };
         self.part(source, at, element.positive);
         self.note_reactance(source, at, element.positive);
@@ -220,7 +220,7 @@ impl<'a> Reader<'a> {
             self.lacks(source, Off::Everything, &[&infeed::NOMINAL_VOLTAGE]);
             return None;
         };
-        let infeed = unit.infeed(nominal, super::c_max(nominal));
+        let infeed = unit.infeed(nominal, at.c.unwrap_or_else(|| super::c_max(nominal)));
         self.part(source, at, infeed.positive()?);
         self.note_reactance(source, at, infeed.positive()?);
         Some(infeed)

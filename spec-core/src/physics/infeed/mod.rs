@@ -174,6 +174,11 @@ impl Infeed {
         self.network.seen(View::INITIAL)
     }
 
+    /// Z1 at the point with the reactances that it has at a share of the frequency.
+    pub fn positive_at(&self, share: f64) -> Option<Impedance> {
+        self.network.seen(View { peak: false, share })
+    }
+
     /// Whether one chain of elements feeds the point, so that R/X is the same at any frequency.
     pub fn is_one_branch(&self) -> bool {
         self.network.is_one_branch()

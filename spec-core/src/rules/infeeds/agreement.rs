@@ -1,7 +1,7 @@
 //! Whether what a system states agrees with what follows from its infeeds.
 
 use super::Fed;
-use crate::duty::FromInfeeds;
+use crate::duty::{FromInfeeds, Off};
 use crate::finding::{Datum, Finding, FindingKind, Findings};
 use crate::particular::system;
 use crate::physics::short_circuit;
@@ -92,8 +92,16 @@ fn time_constant_agrees(
     first: Option<Place>,
     findings: &mut Findings,
 ) {
-    let Some(figure) = from.time_constant.as_ref() else { return };
-    let Some(frequency) = fed.frequency else { return };
+    // Of R/X at the point, as whoever states one value reckons it; by the slower branches it may be longer.
+    let (Some(ratio), Some(frequency), false) =
+        (from.r_over_x.as_ref(), fed.frequency, fed.infeeds.is_off(Off::DirectCurrent))
+    else {
+        return;
+    };
+    if ratio.value.value <= 0.0 {
+        return;
+    }
+    let of_infeeds = short_circuit::time_constant(ratio.value.value.recip(), frequency);
     let tau = fed.facts.quantity::<Time>(&system::DC_TIME_CONSTANT).map(|s| (s.value, s.statement));
     let of_x = || {
         let stated = fed.facts.quantity::<Ratio>(&system::X_OVER_R)?;
@@ -101,21 +109,22 @@ fn time_constant_agrees(
     };
     let Some((stated, statement)) = tau.or_else(of_x) else { return };
     // A longer one than the infeeds' is on the safe side.
-    if stated.si() >= figure.value.si() * (1.0 - policy.infeed_constant_tolerance) {
+    if stated.si() >= of_infeeds.si() * (1.0 - policy.infeed_constant_tolerance) {
         return;
     }
     let message = format!(
         "a time constant of {} is stated for {}, and its infeeds give {}",
         stated.show(),
         fed.sheet.title(),
-        figure.value.show()
+        of_infeeds.show()
     );
     let finding = findings.add(&NETWORK_CONSTANTS_DISAGREE, statement.value, message);
     finding
         .label("shorter than that of the infeeds")
         .stated(Datum::of(stated))
-        .needed(Datum::of(figure.value))
-        .working(figure.working.to_string())
+        .needed(Datum::of(of_infeeds))
+        .working(ratio.working.to_string())
+        .working(format!("tau = 1/(2 pi f R/X), f = {}: {}", frequency.show(), of_infeeds.show()))
         .advice("checks go by the stated value; correct it or the infeeds, or leave the value out");
     rests_on(finding, fed, first);
 }
