@@ -69,8 +69,11 @@ fn all_rules(bencher: Bencher) {
         let set = black_box(&assessment.set);
         let mut findings = Findings::new();
         for rule in assessor.rules() {
-            if let Check::Set(check) = rule.check {
+            if let Check::Set(check) | Check::Both(check, _) = rule.check {
                 check(set, &policy, &mut findings);
+            }
+            if let Check::Sheet(check) | Check::Both(_, check) = rule.check {
+                set.sheets().for_each(|sheet| check(set, sheet, &policy, &mut findings));
             }
         }
         for sheet in set.of_kind(SheetKind::Breaker) {

@@ -20,17 +20,19 @@ struct Fed<'a> {
     frequency: Option<Frequency>,
 }
 
-fn fed_systems(set: &Set) -> impl Iterator<Item = Fed<'_>> {
-    set.of_kind(SheetKind::System).filter_map(|sheet| {
-        let breakers = set.pointing_at(sheet.id, "on").filter(|other| other.kind == SheetKind::Breaker);
-        let breakers: Vec<&Facts> = breakers.map(|breaker| set.facts(breaker.id)).collect();
-        set.pointing_at(sheet.id, "into").next()?;
-        breakers.first()?;
-        let facts = set.facts(sheet.id);
-        let rated = || breakers.iter().find_map(|b| b.quantity::<Frequency>(&breaker::RATED_FREQUENCY));
-        let frequency = facts.quantity(&system::FREQUENCY).or_else(rated).map(|stated| stated.value);
-        Some(Fed { sheet, facts, infeeds: Infeeds::of(set, sheet.id, frequency), frequency })
-    })
+/// The system of a sheet, where it has infeeds and a breaker stands on it.
+fn fed_system<'a>(set: &'a Set, sheet: &'a Sheet) -> Option<Fed<'a>> {
+    if sheet.kind != SheetKind::System {
+        return None;
+    }
+    set.pointing_at(sheet.id, "into").next()?;
+    let breakers = set.pointing_at(sheet.id, "on").filter(|other| other.kind == SheetKind::Breaker);
+    let breakers: Vec<&Facts> = breakers.map(|breaker| set.facts(breaker.id)).collect();
+    breakers.first()?;
+    let facts = set.facts(sheet.id);
+    let rated = || breakers.iter().find_map(|b| b.quantity::<Frequency>(&breaker::RATED_FREQUENCY));
+    let frequency = facts.quantity(&system::FREQUENCY).or_else(rated).map(|stated| stated.value);
+    Some(Fed { sheet, facts, infeeds: Infeeds::of(set, sheet.id, frequency), frequency })
 }
 
 impl Fed<'_> {
@@ -76,11 +78,11 @@ pub static INFEED_INCOMPLETE: Rule = Rule {
                   off. Silent about the zero sequence where the neutral is not effectively earthed or the single-phase current is \
                   stated, about the armature resistance where the system states a time constant, and about surge impedances where \
                   no line has one.",
-    check: Check::Set(incomplete),
+    check: Check::Sheet(incomplete),
 };
 
-fn incomplete(set: &Set, policy: &Policy, findings: &mut Findings) {
-    for fed in fed_systems(set) {
+fn incomplete(set: &Set, sheet: &Sheet, policy: &Policy, findings: &mut Findings) {
+    if let Some(fed) = fed_system(set, sheet) {
         missing_data(&fed, findings);
         agreement::check(&fed, policy, findings);
     }
@@ -152,11 +154,11 @@ pub static INFEED_MISPLACED: Rule = Rule {
     explanation: "A transformer whose sides are 110 and 10 kV cannot feed a system of 33 kV, and a generator of 10.5 kV cannot stand at \
                   132 kV without its transformer. The currents do not follow from such infeeds. Correct the voltage, or lead the \
                   source through the element that is missing.",
-    check: Check::Set(misplaced),
+    check: Check::Sheet(misplaced),
 };
 
-fn misplaced(set: &Set, _: &Policy, findings: &mut Findings) {
-    for fed in fed_systems(set) {
+fn misplaced(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    if let Some(fed) = fed_system(set, sheet) {
         for one in &fed.infeeds.misplaced {
             let own: Vec<String> = one.own.iter().map(|voltage| voltage.show()).collect();
             let message = format!(
