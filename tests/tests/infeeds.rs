@@ -253,3 +253,35 @@ fn a_mesh_is_told() {
     let case = all.cases().first().expect("a breaker");
     assert!(case.duty.iter().all(|figure| figure.key != "short_circuit_current" || figure.value.is_none()));
 }
+
+/// What was kept of an earlier assessment rests on the infeeds too: each change of one is seen, however far behind it stands.
+#[test]
+fn a_change_of_an_infeed_is_seen() {
+    let text = |current: &str, losses: &str| -> String {
+        format!(
+            "cbspec 1\nsystem Upper\n    nominal voltage: 33 kV\n    short-circuit current: {current}\n    X/R: 11\n\n\
+             infeed T into Bus from Upper\n    kind: transformer\n    rated power: 40 MVA\n    high-voltage side: 33 kV\n    low-voltage side: 11 kV\n    \
+             impedance voltage: 10 %\n{losses}    winding connection: Dyn11\n    neutral: solidly earthed\n\n\
+             system Bus\n    nominal voltage: 11 kV\n    frequency: 50 Hz\n\nsite Yard\n    altitude: 100 m\n\n\
+             breaker B on Bus at Yard\n    rated short-circuit breaking current: 16 kA\n"
+        )
+    };
+    let assessor = Assessor::standard();
+    let mut kept = assessor.assess(&Sources::of("network.cbspec", text("18.5 kA", "    load losses: 200 kW\n")));
+    let known = "    load losses: 200 kW\n";
+    for (current, losses) in [("25 kA", known), ("4 kA", known), ("4 kA", ""), ("25 kA", ""), ("18.5 kA", known)] {
+        let now = text(current, losses);
+        kept = assessor.assess_again(&kept, [("network.cbspec".to_owned(), now.as_str().into())]);
+        let fresh = assessor.assess(&Sources::of("network.cbspec", now));
+        let told = |assessment: &Assessment| -> Vec<String> {
+            assessment.findings().iter().map(|finding| format!("{} {}", finding.rule, finding.message)).collect()
+        };
+        assert_eq!(told(&kept), told(&fresh), "{current} {losses}");
+        let value = |assessment: &Assessment| {
+            let case = assessment.cases().first().expect("a breaker");
+            case.duty.iter().find(|figure| figure.key == "short_circuit_current").and_then(|figure| figure.value)
+        };
+        assert_eq!(value(&kept), value(&fresh));
+        assert_eq!(value(&kept).is_none(), losses.is_empty());
+    }
+}
