@@ -39,7 +39,7 @@ fn clean_examples_are_clean() {
 /// Each seeded mistake is found, by the rule that is about it.
 #[test]
 fn seeded_mistakes_are_found() {
-    let seeded: [(&str, &[&str]); 4] = [
+    let seeded: [(&str, &[&str]); 5] = [
         (
             "reclosing-line-24kV",
             &["trv-class", "first-pole-factor", "sequence-without-rapid-reclosing", "decimal-comma"],
@@ -55,6 +55,15 @@ fn seeded_mistakes_are_found() {
             ],
         ),
         ("line-bay-145kV", &["dc-time-constant", "gas-liquefaction"]),
+        (
+            "station-110kV-infeeds",
+            &[
+                "breaking-current-below-duty",
+                "making-current-below-duty",
+                "dc-time-constant",
+                "transformer-limited-fault",
+            ],
+        ),
         (
             "generation-tie-550kV",
             &[

@@ -2,11 +2,14 @@
 
 mod figure;
 mod gas;
+mod network;
 mod short_circuit;
 mod trv;
 
 pub use figure::{Figure, Input, Working, percent};
 pub use gas::{Certainty, DewPoint, GasDuty, Level, LevelState, Medium, absolute, celsius, told};
+pub use network::{AtBusbar, BusbarKind, FromInfeeds, Infeeds, Lacking, Misplaced, NetworkTrv, Off, Part, Seen};
+pub(crate) use network::{limited, withstand};
 pub(crate) use short_circuit::making_factor_of;
 pub use trv::TrvDuty;
 
@@ -59,8 +62,12 @@ pub struct Duty {
     pub effectively_earthed: Option<(bool, crate::source::Place)>,
     /// The first-pole-to-clear factor that the earthing asks for.
     pub first_pole_factor: Option<Figure<Ratio>>,
+    /// What follows from the infeeds, whether the system states it or not.
+    pub infeeds: FromInfeeds,
     /// The standard envelopes.
     pub trv: TrvDuty,
+    /// The recovery voltage of the network at the busbar.
+    pub network_trv: NetworkTrv,
     /// The largest steady current of a circuit.
     pub load_current: Option<Figure<ElectricCurrent>>,
     /// The gas in the cold.
@@ -97,6 +104,7 @@ impl Duty {
         };
         short_circuit::fill(case, &mut duty);
         trv::fill(case, &mut duty);
+        duty.network_trv = NetworkTrv::of(case, &case.infeeds, &duty);
         duty.gas = GasDuty::of(case);
         duty.other_gas = GasDuty::of_others(case);
         duty
@@ -125,6 +133,11 @@ impl Duty {
             named("making_current_rated", "A", self.making_current_rated.as_ref()),
             named("first_pole_factor", "1", self.first_pole_factor.as_ref()),
             named("load_current", "A", self.load_current.as_ref()),
+            named("r_over_x", "1", self.infeeds.r_over_x.as_ref()),
+            named("x0_over_x1", "1", self.infeeds.x0_over_x1.as_ref()),
+            named("short_circuit_current_two_phase_earth", "A", self.infeeds.two_phase_earth.as_ref()),
+            named("network_trv_peak", "V", self.network_trv.peak.as_ref()),
+            named("network_trv_rate", "V/s", self.network_trv.rate.as_ref()),
         ];
         all.extend(self.trv.figures());
         all.extend(self.gas.figures());
@@ -141,8 +154,6 @@ impl Duty {
 
 /// Figures of the json that nothing computes yet.
 const LATER: &[(&str, &str)] = &[
-    ("network_trv_peak", "V"),
-    ("network_trv_rate", "V/s"),
     ("line_charging_current", "A"),
     ("cable_charging_current", "A"),
     ("bank_current", "A"),
@@ -163,7 +174,7 @@ fn named<Q: Physical>(key: &'static str, unit: &'static str, figure: Option<&Fig
         value: figure.map(|figure| figure.value.si()),
         unit,
         working: figure.map(|figure| figure.working.to_string()),
-        places: figure.map(|figure| figure.places().collect()).unwrap_or_default(),
+        places: figure.map(|f| f.places().chain(f.working.infeeds.iter().copied()).collect()).unwrap_or_default(),
     }
 }
 

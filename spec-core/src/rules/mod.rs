@@ -4,6 +4,7 @@
 //! to findings. The same texts answer `firstpole clause`, the reference page and the hover.
 
 use crate::case::Case;
+use crate::duty::Figure;
 use crate::finding::{Finding, FindingKind, Findings};
 use crate::particular::{Particular, breaker, site};
 use crate::quantity::{ElectricCurrent, Physical, Ratio, significant};
@@ -22,10 +23,12 @@ pub mod excess;
 pub mod fault_duties;
 pub mod gas;
 pub mod gas_law;
+pub mod infeeds;
 pub mod insulation_details;
 pub mod insulation_site;
 pub mod making;
 pub mod mechanical;
+pub mod network_trv;
 pub mod reading;
 pub mod sequence;
 pub mod several_breakers;
@@ -87,6 +90,8 @@ pub struct Policy {
     pub time_constant_tolerance: f64,
     /// Relative difference up to which a fault level in MVA and one in kA agree.
     pub fault_level_tolerance: f64,
+    /// Relative difference up to which a time constant or X0/X1 may be more favourable than that of the infeeds.
+    pub infeed_constant_tolerance: f64,
     /// How far a making or peak current may lie below its factor times the breaking current.
     pub making_below: f64,
     /// How far it may lie above before it is an excess.
@@ -118,6 +123,7 @@ impl Default for Policy {
             dual_temperature_tolerance: 0.5,
             time_constant_tolerance: 0.05,
             fault_level_tolerance: 0.05,
+            infeed_constant_tolerance: 0.10,
             making_below: 0.02,
             making_above: 0.05,
             trv_tolerance: 0.02,
@@ -139,6 +145,13 @@ const EQUAL: f64 = 1e-4;
 /// The rated short-circuit breaking current, on which many ratings hang.
 fn breaking_current<'a>(case: &'a Case<'_>) -> Option<Stated<'a, ElectricCurrent>> {
     case.breaker.quantity(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT)
+}
+
+/// The infeeds that a figure rests on, told by the first of them; the working has them all.
+fn rests_on_infeeds<Q>(finding: &mut Finding, figure: &Figure<Q>) {
+    if let [first, others @ ..] = figure.working.infeeds.as_slice() {
+        finding.related(*first, format!("the first of {} infeeds that it follows from", others.len() + 1));
+    }
 }
 
 /// A count as it is shown: without the blank that stands where a unit would be.
@@ -176,6 +189,7 @@ pub fn standard() -> Vec<&'static Rule> {
         insulation_details::ALL,
         continuous_current::ALL,
         bay_current::ALL,
+        infeeds::ALL,
         short_circuit::ALL,
         dc_component::ALL,
         fault_duties::ALL,
@@ -183,6 +197,7 @@ pub fn standard() -> Vec<&'static Rule> {
         thermal::ALL,
         earthing::ALL,
         trv::ALL,
+        network_trv::ALL,
         special_faults::ALL,
         switching_special::ALL,
         sequence::ALL,

@@ -11,6 +11,7 @@ mod currents;
 mod earthing;
 mod endurance;
 mod gas_law;
+mod generator_breaker;
 mod insulation;
 mod line_side;
 mod making;
@@ -33,6 +34,7 @@ pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration, usua
 pub use earthing::{first_pole_factors, out_of_phase_factor};
 pub use endurance::{class_for_operations, operations_of_class};
 pub use gas_law::{CountsFrom, ForbiddenGases, GasLaw, gas_law, is_fluorinated};
+pub use generator_breaker::{GeneratorBreakerTrv, GeneratorFault, generator_breaker_trv};
 pub use insulation::{InsulationLevel, insulation_levels};
 pub use line_side::{
     InitialTrvRow, LineSideRow, ShortLineDuty, ShortLineRow, initial_trv_row, line_side, short_line_faults_apply,

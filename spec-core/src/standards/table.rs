@@ -31,6 +31,11 @@ mod tests {
             ("superseded", include_str!("../../data/superseded_standards.csv"), super::super::cited::counts().1),
             ("vocabulary", include_str!("../../data/edition_vocabulary.csv"), super::super::cited::counts().2),
             ("rating standards", include_str!("../../data/rating_standards.csv"), super::super::cited::counts().3),
+            (
+                "generator breakers",
+                include_str!("../../data/generator_breaker_trv.csv"),
+                super::super::generator_breaker::all().len(),
+            ),
             ("endurance", include_str!("../../data/mechanical_classes.csv"), super::super::endurance::all().len()),
             (
                 "usual currents",
