@@ -3,15 +3,21 @@
 mod figure;
 mod gas;
 mod short_circuit;
+mod site;
+mod switching;
 mod trv;
 
 pub use figure::{Figure, Input, Working, percent};
 pub use gas::{Certainty, DewPoint, GasDuty, Level, LevelState, Medium, absolute, celsius, told};
 pub(crate) use short_circuit::making_factor_of;
+pub use site::{LevelOnSite, SiteDuty};
+pub(crate) use site::{stands_in_air, stated_for_site};
+pub use switching::{InrushDuty, SwitchingDuty};
+pub(crate) use switching::{equivalent_capacitance, hundreds, inrush_limit, least_inductance, microhenry};
 pub use trv::TrvDuty;
 
 use crate::case::Case;
-use crate::particular::{circuit, site, system};
+use crate::particular::{circuit, system};
 use crate::quantity::{
     ElectricCurrent, ElectricPotential, JouleIntegral, Physical, Ratio, ThermodynamicTemperature, Time,
 };
@@ -63,6 +69,10 @@ pub struct Duty {
     pub trv: TrvDuty,
     /// The largest steady current of a circuit.
     pub load_current: Option<Figure<ElectricCurrent>>,
+    /// Lines, cables, banks, reactors and operations.
+    pub switching: SwitchingDuty,
+    /// What the site makes of the ratings.
+    pub site: SiteDuty,
     /// The gas in the cold.
     pub gas: GasDuty,
     /// The second filling of other compartments, in the cold.
@@ -97,6 +107,8 @@ impl Duty {
         };
         short_circuit::fill(case, &mut duty);
         trv::fill(case, &mut duty);
+        switching::fill(case, &mut duty);
+        site::fill(case, &mut duty);
         duty.gas = GasDuty::of(case);
         duty.other_gas = GasDuty::of_others(case);
         duty
@@ -127,6 +139,8 @@ impl Duty {
             named("load_current", "A", self.load_current.as_ref()),
         ];
         all.extend(self.trv.figures());
+        all.extend(self.switching.figures());
+        all.extend(self.site.figures());
         all.extend(self.gas.figures());
         all.extend(LATER.iter().map(|(key, unit)| NamedFigure {
             key,
@@ -140,22 +154,7 @@ impl Duty {
 }
 
 /// Figures of the json that nothing computes yet.
-const LATER: &[(&str, &str)] = &[
-    ("network_trv_peak", "V"),
-    ("network_trv_rate", "V/s"),
-    ("line_charging_current", "A"),
-    ("cable_charging_current", "A"),
-    ("bank_current", "A"),
-    ("bank_continuous_current", "A"),
-    ("inrush_peak", "A"),
-    ("inrush_frequency", "Hz"),
-    ("continuous_current_at_site", "A"),
-    ("lightning_level_on_site", "V"),
-    ("switching_level_on_site", "V"),
-    ("creepage_needed", "m"),
-    ("clearing_time", "s"),
-    ("operations", "1"),
-];
+const LATER: &[(&str, &str)] = &[("network_trv_peak", "V"), ("network_trv_rate", "V/s")];
 
 fn named<Q: Physical>(key: &'static str, unit: &'static str, figure: Option<&Figure<Q>>) -> NamedFigure {
     NamedFigure {
@@ -187,6 +186,6 @@ fn load_current(case: &Case<'_>) -> Option<Figure<ElectricCurrent>> {
 
 /// The lowest air temperature of the site: of its own line, else the lower end of the range.
 pub(crate) fn lowest_ambient<'a>(case: &'a Case<'_>) -> Option<crate::sheet::Stated<'a, ThermodynamicTemperature>> {
-    let own = case.site.quantity::<ThermodynamicTemperature>(&site::LOWEST_AMBIENT);
-    own.or_else(|| case.site.side(&site::AMBIENT, crate::particular::Limit::Least))
+    let own = case.site.quantity::<ThermodynamicTemperature>(&crate::particular::site::LOWEST_AMBIENT);
+    own.or_else(|| case.site.side(&crate::particular::site::AMBIENT, crate::particular::Limit::Least))
 }
