@@ -61,7 +61,7 @@ impl<Q: Physical> Figure<Q> {
     pub fn from<I: Physical>(mut self, symbol: &'static str, figure: &Figure<I>) -> Self {
         let place =
             figure.working.inputs.first().filter(|_| figure.working.formula == "as stated").and_then(|i| i.place);
-        self.working.inputs.push(Input { symbol, text: figure.value.show(), place });
+        self.working.inputs.push(Input { symbol, text: figure.working.result.clone(), place });
         self
     }
 

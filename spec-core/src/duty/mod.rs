@@ -13,7 +13,7 @@ pub(crate) use short_circuit::making_factor_of;
 pub use site::{LevelOnSite, SiteDuty};
 pub(crate) use site::{stands_in_air, stated_for_site};
 pub use switching::{InrushDuty, SwitchingDuty};
-pub(crate) use switching::{equivalent_capacitance, hundreds, inrush_limit, least_inductance, microhenry};
+pub(crate) use switching::{hundreds, inductance_between_banks, inrush_limit};
 pub use trv::TrvDuty;
 
 use crate::case::Case;

@@ -139,7 +139,7 @@ fn creepage_needed(case: &Case<'_>) -> Option<Figure<Length>> {
     if let Some(input) = figure.working.inputs.last_mut() {
         input.place = Some(said.value);
     }
-    let figure = figure.with("Ur", &rated);
+    let figure = figure.with("Ur", &rated).shown(format!("{} mm", significant(needed.si() * 1e3, 4)));
     Some(match diameter {
         Some(diameter) => figure.with("Kad", &diameter),
         None => figure,

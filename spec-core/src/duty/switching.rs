@@ -83,6 +83,7 @@ pub(super) fn fill(case: &Case<'_>, duty: &mut Duty) {
     let mut found = SwitchingDuty::default();
     for part in &case.circuits {
         let Some((kind, _)) = part.word(&circuit::KIND) else { continue };
+        keep(&mut found.voltage_factor, voltage_factor(duty, part, kind));
         match kind {
             "overhead line" => keep(&mut found.line_charging_current, charging(case, duty, part)),
             "cable" | "cable network" => keep(&mut found.cable_charging_current, charging(case, duty, part)),
@@ -106,7 +107,6 @@ pub(super) fn fill(case: &Case<'_>, duty: &mut Duty) {
             }
             _ => {}
         }
-        keep(&mut found.voltage_factor, voltage_factor(duty, part, kind));
     }
     found.operations = operations(case);
     duty.switching = found;
@@ -118,6 +118,11 @@ fn keep<Q: Physical>(old: &mut Option<Figure<Q>>, new: Option<Figure<Q>>) {
     if old.as_ref().is_none_or(|old| new.value.si() > old.value.si()) {
         *old = Some(new);
     }
+}
+
+/// A current in the unit in which capacitive ratings are stated.
+fn amperes(current: ElectricCurrent) -> String {
+    format!("{} A", significant(current.si(), 3))
 }
 
 /// The highest voltage at which a circuit is switched: of the system, else the rated one.
@@ -138,13 +143,14 @@ fn charging(case: &Case<'_>, duty: &Duty, part: &Part<'_>) -> Option<Figure<Elec
         Figure::new(left, "|Ic - Q/(sqrt3 U)|, reactors switched with the circuit", "IEC/TR 62271-306, from memory")
             .from("Ic", &gross)
             .with("Q", &reactors)
-            .from("U", &voltage),
+            .from("U", &voltage)
+            .shown(amperes(left)),
     )
 }
 
 fn uncompensated(case: &Case<'_>, duty: &Duty, part: &Part<'_>) -> Option<Figure<ElectricCurrent>> {
     if let Some(stated) = part.quantity::<ElectricCurrent>(&circuit::CHARGING_CURRENT) {
-        return Some(Figure::stated("Ic", &stated));
+        return Some(Figure::stated("Ic", &stated).shown(amperes(stated.value)));
     }
     let capacitance = part.quantity::<CapacitancePerLength>(&circuit::CAPACITANCE_PER_LENGTH)?;
     let length = part.quantity::<Length>(&circuit::LENGTH)?;
@@ -155,7 +161,8 @@ fn uncompensated(case: &Case<'_>, duty: &Duty, part: &Part<'_>) -> Option<Figure
             .given("f", frequency.show())
             .with("C'", &capacitance)
             .with("l", &length)
-            .from("Um", &voltage),
+            .from("Um", &voltage)
+            .shown(amperes(current)),
     )
 }
 
@@ -167,12 +174,14 @@ fn charging_of_both(case: &Case<'_>, duty: &Duty, part: &Part<'_>) -> Option<Fig
         (Some(line), Some(cable)) => Some(
             Figure::new(line.value + cable.value, "line + cable section", "the two are in phase")
                 .from("line", &line)
-                .with("cable section", &cable),
+                .with("cable section", &cable)
+                .shown(amperes(line.value + cable.value)),
         ),
         (line, None) => line,
         (None, Some(cable)) => Some(
             Figure::new(cable.value, "cable section alone, the line not known", "the text")
-                .with("cable section", &cable),
+                .with("cable section", &cable)
+                .shown(amperes(cable.value)),
         ),
     }
 }
@@ -190,7 +199,12 @@ fn phase_current(case: &Case<'_>, duty: &Duty, part: &Part<'_>) -> Option<Figure
     let power = part.quantity::<Power>(&circuit::BANK_POWER)?;
     let voltage = bank_voltage(case, duty, part)?;
     let current = bank_current(power.value, voltage.value);
-    Some(Figure::new(current, "Q/(sqrt3 U)", "definition of reactive power").with("Q", &power).from("U", &voltage))
+    Some(
+        Figure::new(current, "Q/(sqrt3 U)", "definition of reactive power")
+            .with("Q", &power)
+            .from("U", &voltage)
+            .shown(amperes(current)),
+    )
 }
 
 /// The continuous current of a bank. The allowances of IEC 60871-1 hold the overvoltage that a bank bears, so that the voltage does
@@ -203,12 +217,13 @@ fn continuous(current: &Figure<ElectricCurrent>) -> Option<Figure<ElectricCurren
         Figure::new(value, "I x harmonics x tolerance", "IEC 60871-1, from memory")
             .from("I", current)
             .given("harmonics", significant(harmonics, 3))
-            .given("tolerance", significant(tolerance, 3)),
+            .given("tolerance", significant(tolerance, 3))
+            .shown(amperes(value)),
     )
 }
 
 /// Capacitances of this bank and of those already on, in series.
-pub(crate) fn equivalent_capacitance(case: &Case<'_>, duty: &Duty, part: &Part<'_>) -> Option<Figure<Capacitance>> {
+fn equivalent_capacitance(case: &Case<'_>, duty: &Duty, part: &Part<'_>) -> Option<Figure<Capacitance>> {
     let switched = part.quantity::<Power>(&circuit::BANK_POWER)?;
     let on = part.quantity::<Power>(&circuit::PARALLEL_BANK_POWER)?;
     let voltage = bank_voltage(case, duty, part)?;
@@ -225,8 +240,14 @@ pub(crate) fn equivalent_capacitance(case: &Case<'_>, duty: &Duty, part: &Part<'
     )
 }
 
+/// The least inductance between this bank and those already on that keeps the inrush within `limit`, whatever is stated of it.
+pub(crate) fn inductance_between_banks(case: &Case<'_>, part: &Part<'_>, limit: Inrush) -> Option<Figure<Inductance>> {
+    let equivalent = equivalent_capacitance(case, &case.duty, part)?;
+    least_inductance(highest(case, &case.duty)?.value, &equivalent, limit)
+}
+
 /// The least inductance between banks for a limit of the inrush.
-pub(crate) fn least_inductance(
+fn least_inductance(
     voltage: ElectricPotential,
     equivalent: &Figure<Capacitance>,
     limit: Inrush,
@@ -255,7 +276,7 @@ pub(crate) fn inrush_limit(case: &Case<'_>) -> Option<Inrush> {
 }
 
 /// An inductance between banks, in the unit of its size.
-pub(crate) fn microhenry(inductance: Inductance) -> String {
+fn microhenry(inductance: Inductance) -> String {
     format!("{} uH", significant(inductance.si() * 1e6, 3))
 }
 

@@ -12,6 +12,7 @@ use crate::source::Place;
 
 pub mod auxiliary;
 pub mod bay_current;
+pub mod capacitive;
 pub mod climate;
 pub mod completeness;
 pub mod continuous_current;
@@ -33,6 +34,7 @@ pub mod short_circuit;
 pub mod special_faults;
 pub mod standards_cited;
 pub mod statements;
+pub mod surges;
 pub mod switching_special;
 #[cfg(test)]
 pub mod testing;
@@ -101,6 +103,8 @@ pub struct Policy {
     pub extremes: usize,
     /// Least ratio of a reduced lightning impulse level to the protective level of the arresters.
     pub lightning_margin: f64,
+    /// Length from which a line of 300 kV and above asks for a study of its switching overvoltage, m.
+    pub long_line: f64,
     /// Whether the tender counts as issued whatever its status says.
     pub issued: bool,
     /// The day on which deviations are held against their expiry; without one, none expires.
@@ -123,6 +127,7 @@ impl Default for Policy {
             service_life: 30.0,
             extremes: 5,
             lightning_margin: 1.2,
+            long_line: 200e3,
             issued: false,
             today: None,
         }
@@ -182,7 +187,9 @@ pub fn standard() -> Vec<&'static Rule> {
         earthing::ALL,
         trv::ALL,
         special_faults::ALL,
+        capacitive::ALL,
         switching_special::ALL,
+        surges::ALL,
         sequence::ALL,
         times::ALL,
         timing::ALL,

@@ -2,9 +2,10 @@
 
 use super::{Check, Rule, listed, mentions_any};
 use crate::case::{Case, Part};
+use crate::duty::{Figure, SwitchingDuty};
 use crate::finding::{FindingKind, Findings};
 use crate::particular::{Particular, SheetKind, breaker, circuit};
-use crate::quantity::{ElectricCurrent, ElectricPotential, Physical, Time};
+use crate::quantity::{ElectricCurrent, ElectricPotential, Physical, Time, significant};
 use crate::sheet::{Sequence, Statement};
 
 /// Whether all that the breaker takes over could be found. Where not, a finding says so, and what seems to be missing may stand there.
@@ -80,6 +81,13 @@ struct Object {
     ratings: &'static [&'static [&'static Particular]],
     /// Whether it applies to the circuit on this breaker.
     applies: fn(&Case<'_>, &Part<'_>) -> bool,
+    /// What the circuits ask for, as far as it is computed.
+    duty: fn(&SwitchingDuty) -> Option<String>,
+}
+
+fn current(figure: Option<&Figure<ElectricCurrent>>) -> Option<String> {
+    // These ratings are stated in amperes.
+    figure.map(|figure| format!("{} A", significant(figure.value.si(), 3)))
 }
 
 static OBJECTS: &[Object] = &[
@@ -88,18 +96,21 @@ static OBJECTS: &[Object] = &[
         noun: "an overhead line",
         ratings: &[&[&breaker::RATED_LINE_CHARGING_BREAKING_CURRENT]],
         applies: |case, _| has_line_charging(case),
+        duty: |duty| current(duty.line_charging_current.as_ref()),
     },
     Object {
         kinds: &["overhead line with cable"],
         noun: "an overhead line with cable",
         ratings: &[&[&breaker::RATED_CABLE_CHARGING_BREAKING_CURRENT, &breaker::RATED_LINE_CHARGING_BREAKING_CURRENT]],
         applies: |_, _| true,
+        duty: |duty| current(duty.cable_charging_current.as_ref().or(duty.line_charging_current.as_ref())),
     },
     Object {
         kinds: &["cable", "cable network"],
         noun: "a cable",
         ratings: &[&[&breaker::RATED_CABLE_CHARGING_BREAKING_CURRENT]],
         applies: |_, _| true,
+        duty: |duty| current(duty.cable_charging_current.as_ref()),
     },
     Object {
         kinds: &["capacitor bank", "filter bank"],
@@ -109,6 +120,7 @@ static OBJECTS: &[Object] = &[
             &breaker::RATED_BACK_TO_BACK_CAPACITOR_BANK_BREAKING_CURRENT,
         ]],
         applies: |_, circuit| !circuit.mentions(&circuit::PARALLEL_BANK_POWER),
+        duty: |duty| current(duty.bank_current.as_ref()),
     },
     Object {
         kinds: &["capacitor bank", "filter bank"],
@@ -118,20 +130,32 @@ static OBJECTS: &[Object] = &[
             &[&breaker::RATED_CAPACITOR_BANK_INRUSH_MAKING_CURRENT],
         ],
         applies: |_, circuit| circuit.mentions(&circuit::PARALLEL_BANK_POWER),
+        duty: beside_another,
     },
     Object {
         kinds: &["shunt reactor"],
         noun: "a shunt reactor",
         ratings: &[&[&breaker::SHUNT_REACTOR_BREAKING_CURRENT]],
         applies: |_, _| true,
+        duty: |duty| current(duty.reactor_current.as_ref()),
     },
     Object {
         kinds: &["generator"],
         noun: "a generator",
         ratings: &[&[&breaker::GENERATOR_SOURCE_BREAKING_CURRENT]],
         applies: |case, _| case.is_generator_breaker() || voltage(case).is_some_and(|u| u.si() <= GENERATOR_VOLTAGE_TO),
+        duty: |_| None,
     },
 ];
+
+fn beside_another(duty: &SwitchingDuty) -> Option<String> {
+    let bank = current(duty.bank_current.as_ref())?;
+    let inrush = duty
+        .inrush
+        .as_ref()
+        .map(|inrush| format!(" and the inrush of {} at {}", inrush.peak.value.show(), inrush.frequency.value.show()));
+    Some(bank + &inrush.unwrap_or_default())
+}
 
 fn voltage(case: &Case<'_>) -> Option<ElectricPotential> {
     case.rated_voltage()
@@ -167,11 +191,8 @@ fn rating_for_object(case: &Case<'_>, findings: &mut Findings) {
         for (_, other) in circuits.filter_map(|circuit| circuit.word(&circuit::KIND)) {
             finding.beside(other, "the same here");
         }
-        let own = case
-            .circuits_of(object.kinds)
-            .find_map(|circuit| circuit.quantity::<ElectricCurrent>(&circuit::CHARGING_CURRENT));
-        let at_least =
-            own.map(|stated| format!(", at least the {} of the circuit", stated.measure)).unwrap_or_default();
+        let asked = (object.duty)(&case.duty.switching);
+        let at_least = asked.map(|asked| format!(", at least the {asked} of the circuit")).unwrap_or_default();
         finding.advice(format!("add {} to {} with its value{at_least}", listed(&missing, "and"), case.sheet.title()));
     }
 }
@@ -318,8 +339,8 @@ fn supply_range(case: &Case<'_>, findings: &mut Findings) {
         .stated(&supply.measure)
         .working(format!(
             "{} to {} % of {} = {} to {}",
-            crate::quantity::significant(SUPPLY_RANGE.0 * 100.0, 3),
-            crate::quantity::significant(SUPPLY_RANGE.1 * 100.0, 3),
+            significant(SUPPLY_RANGE.0 * 100.0, 3),
+            significant(SUPPLY_RANGE.1 * 100.0, 3),
             supply.measure,
             supply.like(least),
             supply.like(greatest)
