@@ -196,7 +196,9 @@ fn currents(case: &Case<'_>, found: &mut SiteDuty) {
         }
         (Some(one), None) | (None, Some(one)) => Some(one.clone()),
         (None, None) => Some(
-            Figure::new(rated.value, "Ir, up to 40 degC and 2000 m", "IEC 62271-1, from memory").with("Ir", &rated),
+            Figure::new(rated.value, "Ir, up to 40 degC and 2000 m", "IEC 62271-1, from memory")
+                .with("Ir", &rated)
+                .shown(rated.measure.to_string()),
         ),
     };
 }

@@ -13,7 +13,7 @@ use crate::quantity::{
 };
 use crate::sheet::Stated;
 use crate::standards::{
-    BankAllowance, CapacitiveCircuit, bank_allowance, capacitive_rating, capacitive_voltage_factor,
+    BankAllowance, CapacitiveCircuit, CapacitiveRating, bank_allowance, capacitive_rating, capacitive_voltage_factor,
 };
 
 /// The switching duties.
@@ -270,8 +270,8 @@ pub(crate) fn inrush_limit(case: &Case<'_>) -> Option<Inrush> {
     let frequency = case.breaker.quantity::<Frequency>(&breaker::RATED_INRUSH_FREQUENCY);
     let standard = case.rated_voltage().and_then(|rated| capacitive_rating(rated.value));
     Some(Inrush {
-        peak: rated.map(|stated| stated.value).or_else(|| standard.map(|row| row.inrush_peak()))?,
-        frequency: frequency.map(|stated| stated.value).or_else(|| standard.map(|row| row.inrush_frequency()))?,
+        peak: rated.map(|stated| stated.value).or_else(|| standard.map(CapacitiveRating::inrush_peak))?,
+        frequency: frequency.map(|stated| stated.value).or_else(|| standard.map(CapacitiveRating::inrush_frequency))?,
     })
 }
 

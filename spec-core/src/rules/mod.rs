@@ -31,6 +31,8 @@ pub mod reading;
 pub mod sequence;
 pub mod several_breakers;
 pub mod short_circuit;
+#[cfg(test)]
+mod silence;
 pub mod special_faults;
 pub mod standards_cited;
 pub mod statements;
