@@ -23,6 +23,7 @@ pub mod excess;
 pub mod fault_duties;
 pub mod gas;
 pub mod gas_law;
+pub mod inrush;
 pub mod insulation_details;
 pub mod insulation_site;
 pub mod making;
@@ -190,6 +191,7 @@ pub fn standard() -> Vec<&'static Rule> {
         trv::ALL,
         special_faults::ALL,
         capacitive::ALL,
+        inrush::ALL,
         switching_special::ALL,
         surges::ALL,
         sequence::ALL,
