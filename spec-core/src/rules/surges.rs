@@ -106,7 +106,7 @@ pub static VACUUM_SURGE_PROTECTION: Rule = Rule {
     formula: "vacuum admitted, and transformer, motor or arc furnace: surge arresters, RC snubber or another measure",
     explanation: "Chopping and repeated reignition put steep surges upon the first turns of a winding. A measure that is none is accepted \
                   as a choice. Silent where vacuum is not among the interrupters admitted, where a measure is stated for the breaker \
-                  or the circuit, and where a cable lies between the breaker and what it feeds and is the circuit stated.",
+                  or the circuit, and where the circuit stated is the cable to it.",
     check: Check::Case(vacuum),
 };
 
@@ -146,7 +146,9 @@ pub static PHASE_SPACING: Rule = Rule {
 };
 
 fn spacing(case: &Case<'_>, findings: &mut Findings) {
-    if !stands_in_air(case) {
+    // Cubicles are tested as a whole, outdoors too.
+    let cubicle = ["metal-enclosed", "metal-clad"].iter().any(|word| case.is_built(word));
+    if cubicle || !stands_in_air(case) {
         return;
     }
     let lightning = (&breaker::RATED_LIGHTNING_IMPULSE_WITHSTAND_VOLTAGE, WithstandVoltage::LightningImpulse);
@@ -282,6 +284,7 @@ mod tests {
         bay("2600 mm").silent(rule);
         bay("2590 mm").one(rule);
         bay("2.0 m").set("breaker", "construction", "gas-insulated").silent(rule);
+        bay("2.0 m").set("breaker", "construction", "metal-enclosed").silent(rule);
         bay("2.0 m").set("breaker", "reason for phase spacing", "\"tested with 2 m\"").silent(rule);
         Bay::new().silent(rule);
     }

@@ -241,8 +241,13 @@ const COMPENSATED: f64 = 0.5;
 fn charging_power(case: &Case<'_>, part: &Facts) -> Option<(Power, String)> {
     let nominal = voltage(case)?;
     if let Some(current) = part.quantity::<ElectricCurrent>(&circuit::CHARGING_CURRENT) {
-        let power: Power = nominal * current.value * 3f64.sqrt();
-        return Some((power, format!("sqrt3 x {} x {}", nominal.show(), current.measure)));
+        // In a mixed circuit it is that of the overhead part.
+        let cable = part.quantity::<ElectricCurrent>(&circuit::CABLE_SECTION_CHARGING_CURRENT);
+        let whole = cable.as_ref().map_or(current.value, |cable| current.value + cable.value);
+        let shown = cable
+            .map_or_else(|| current.measure.to_string(), |cable| format!("({} + {})", current.measure, cable.measure));
+        let power: Power = nominal * whole * 3f64.sqrt();
+        return Some((power, format!("sqrt3 x {} x {shown}", nominal.show())));
     }
     let length = part.quantity::<Length>(&circuit::LENGTH)?;
     let (capacitance, _) = part.quantity_reading(&circuit::CAPACITANCE_PER_LENGTH)?;
@@ -585,6 +590,14 @@ mod tests {
         bay("30 Mvar").set("circuit", "compensation switched with the circuit", "no").silent("compensated-cable");
         bay("30 Mvar").set("breaker", "controlled switching", "closing").silent("compensated-cable");
         bay("30 Mvar").set("breaker", "overvoltage mitigation", "staggered switching").silent("compensated-cable");
+        // Of a mixed circuit both parts count: 132 kV and 100 A are 22.9 Mvar, 200 A 45.7 Mvar.
+        let mixed = switching("overhead line with cable").set("circuit", "charging current", "100 A").set(
+            "circuit",
+            "shunt compensation",
+            "20 Mvar",
+        );
+        mixed.one("compensated-cable");
+        mixed.set("circuit", "cable section charging current", "100 A").silent("compensated-cable");
     }
 
     #[test]
