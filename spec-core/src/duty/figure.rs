@@ -66,7 +66,7 @@ impl<Q: Physical> Figure<Q> {
     pub fn from<I: Physical>(mut self, symbol: &'static str, figure: &Figure<I>) -> Self {
         let place =
             figure.working.inputs.first().filter(|_| figure.working.formula == "as stated").and_then(|i| i.place);
-        self.working.inputs.push(Input { symbol, text: figure.value.show(), place });
+        self.working.inputs.push(Input { symbol, text: figure.working.result.clone(), place });
         for place in &figure.working.infeeds {
             if !self.working.infeeds.contains(place) {
                 self.working.infeeds.push(*place);

@@ -13,6 +13,7 @@ use crate::source::Place;
 
 pub mod auxiliary;
 pub mod bay_current;
+pub mod capacitive;
 pub mod climate;
 pub mod completeness;
 pub mod continuous_current;
@@ -24,6 +25,7 @@ pub mod fault_duties;
 pub mod gas;
 pub mod gas_law;
 pub mod infeeds;
+pub mod inrush;
 pub mod insulation_details;
 pub mod insulation_site;
 pub mod making;
@@ -33,9 +35,12 @@ pub mod reading;
 pub mod sequence;
 pub mod several_breakers;
 pub mod short_circuit;
+#[cfg(test)]
+mod silence;
 pub mod special_faults;
 pub mod standards_cited;
 pub mod statements;
+pub mod surges;
 pub mod switching_special;
 #[cfg(test)]
 pub mod testing;
@@ -110,6 +115,8 @@ pub struct Policy {
     pub extremes: usize,
     /// Least ratio of a reduced lightning impulse level to the protective level of the arresters.
     pub lightning_margin: f64,
+    /// Length from which a line of 300 kV and above asks for a study of its switching overvoltage, m.
+    pub long_line: f64,
     /// Whether the tender counts as issued whatever its status says.
     pub issued: bool,
     /// The day on which deviations are held against their expiry; without one, none expires.
@@ -133,6 +140,7 @@ impl Default for Policy {
             service_life: 30.0,
             extremes: 5,
             lightning_margin: 1.2,
+            long_line: 200e3,
             issued: false,
             today: None,
         }
@@ -199,7 +207,10 @@ pub fn standard() -> Vec<&'static Rule> {
         trv::ALL,
         network_trv::ALL,
         special_faults::ALL,
+        capacitive::ALL,
+        inrush::ALL,
         switching_special::ALL,
+        surges::ALL,
         sequence::ALL,
         times::ALL,
         timing::ALL,

@@ -42,6 +42,12 @@ mod tests {
                 include_str!("../../data/usual_continuous_currents.csv"),
                 super::super::currents::usual().len(),
             ),
+            (
+                "preferred numbers",
+                include_str!("../../data/preferred_numbers.csv"),
+                super::super::currents::preferred_numbers(),
+            ),
+            ("clearances", include_str!("../../data/clearances.csv"), super::super::clearances::all().len()),
             ("cooling", include_str!("../../data/altitude_cooling.csv"), super::super::cooling::all().len()),
             ("coil ranges", include_str!("../../data/coil_ranges.csv"), super::super::supply::counts().1),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),
