@@ -2,156 +2,19 @@
 
 #![allow(clippy::expect_used, clippy::indexing_slicing, reason = "a test fails by panicking")]
 
-use std::time::Duration;
+mod wire;
 
-use firstpole::server::{serve, serve_with};
 use firstpole_core::finding::Findings;
 use firstpole_core::rules::{Check, Policy, Rule};
 use firstpole_core::sheet::Set;
 use firstpole_core::{Assessor, FindingKind};
 use serde_json::{Value, json};
-use tokio::io::{AsyncBufReadExt, AsyncReadExt, AsyncWriteExt, BufReader, DuplexStream};
-use tokio::task::JoinHandle;
+use tokio::io::AsyncWriteExt;
+use wire::Client;
 
 const URI: &str = "file:///nowhere/bay.cbspec";
 
 const BAY: &str = "cbspec 1\n\nsystem Ring132\n    highest voltage: 145 kV\n    frequency: 50 Hz\n\nbreaker LineBay on Ring132\n    rated voltage: 150 kV\n";
-
-/// How long a test waits before it calls something missing.
-const PATIENCE: Duration = Duration::from_secs(30);
-
-struct Client {
-    to: Option<DuplexStream>,
-    from: BufReader<DuplexStream>,
-    served: JoinHandle<u8>,
-    next: i64,
-    /// Notifications that came while an answer was awaited.
-    kept: Vec<Value>,
-}
-
-impl Client {
-    fn start(assessor: Option<Assessor>) -> Self {
-        let (to, input) = tokio::io::duplex(1 << 16);
-        let (output, from) = tokio::io::duplex(1 << 16);
-        let served = tokio::spawn(async move {
-            match assessor {
-                Some(assessor) => serve_with(assessor, input, output).await,
-                None => serve(input, output).await,
-            }
-        });
-        Self { to: Some(to), from: BufReader::new(from), served, next: 0, kept: Vec::new() }
-    }
-
-    /// A client that is initialised.
-    async fn new() -> Self {
-        let mut client = Self::start(None);
-        client.begin(json!({})).await;
-        client
-    }
-
-    async fn begin(&mut self, capabilities: Value) -> Value {
-        let answer =
-            self.ask("initialize", json!({"processId": null, "rootUri": null, "capabilities": capabilities})).await;
-        self.tell("initialized", json!({})).await;
-        answer["result"]["capabilities"].clone()
-    }
-
-    async fn raw(&mut self, bytes: &[u8]) {
-        self.to.as_mut().expect("open").write_all(bytes).await.expect("written");
-    }
-
-    async fn send(&mut self, message: &Value) {
-        let body = message.to_string();
-        self.raw(format!("Content-Length: {}\r\n\r\n{body}", body.len()).as_bytes()).await;
-    }
-
-    async fn tell(&mut self, method: &str, params: Value) {
-        self.send(&json!({"jsonrpc": "2.0", "method": method, "params": params})).await;
-    }
-
-    async fn request(&mut self, method: &str, params: Value) -> i64 {
-        self.next += 1;
-        let id = self.next;
-        self.send(&json!({"jsonrpc": "2.0", "id": id, "method": method, "params": params})).await;
-        id
-    }
-
-    /// The next message of the server; nothing at the end.
-    async fn read(&mut self) -> Option<Value> {
-        let read = async {
-            let mut length = 0;
-            loop {
-                let mut line = String::new();
-                if self.from.read_line(&mut line).await.ok()? == 0 {
-                    return None;
-                }
-                match line.trim_end() {
-                    "" => break,
-                    line => {
-                        length = line.strip_prefix("Content-Length: ").expect("a length").parse().expect("a number");
-                    }
-                }
-            }
-            let mut body = vec![0; length];
-            self.from.read_exact(&mut body).await.ok()?;
-            Some(serde_json::from_slice(&body).expect("json"))
-        };
-        tokio::time::timeout(PATIENCE, read).await.expect("the server is silent")
-    }
-
-    async fn answer(&mut self, id: i64) -> Value {
-        loop {
-            let message = self.read().await.expect("an answer");
-            if message["id"] == id {
-                return message;
-            }
-            self.kept.push(message);
-        }
-    }
-
-    async fn ask(&mut self, method: &str, params: Value) -> Value {
-        let id = self.request(method, params).await;
-        self.answer(id).await
-    }
-
-    async fn open(&mut self, uri: &str, text: &str) {
-        let document = json!({"uri": uri, "languageId": "cbspec", "version": 1, "text": text});
-        self.tell("textDocument/didOpen", json!({"textDocument": document})).await;
-    }
-
-    async fn change(&mut self, uri: &str, version: i32, changes: Value) {
-        let document = json!({"uri": uri, "version": version});
-        self.tell("textDocument/didChange", json!({"textDocument": document, "contentChanges": changes})).await;
-    }
-
-    async fn notice(&mut self) -> Value {
-        if self.kept.is_empty() { self.read().await.expect("a notice") } else { self.kept.remove(0) }
-    }
-
-    /// The findings of a version of a file.
-    async fn diagnostics(&mut self, uri: &str, version: Option<i32>) -> Vec<Value> {
-        loop {
-            let notice = self.notice().await;
-            let params = &notice["params"];
-            if notice["method"] == "textDocument/publishDiagnostics"
-                && params["uri"] == uri
-                && params["version"].as_i64() == version.map(i64::from)
-            {
-                return params["diagnostics"].as_array().expect("a list").clone();
-            }
-        }
-    }
-
-    async fn leave(mut self) -> u8 {
-        self.ask("shutdown", Value::Null).await;
-        self.tell("exit", Value::Null).await;
-        self.code().await
-    }
-
-    async fn code(self) -> u8 {
-        tokio::time::timeout(PATIENCE, self.served).await.expect("the server stays").expect("no panic")
-    }
-}
 
 fn rules(diagnostics: &[Value]) -> Vec<&str> {
     diagnostics.iter().filter_map(|diagnostic| diagnostic["code"].as_str()).collect()

@@ -14,6 +14,7 @@ use tower_lsp::{Client, LanguageServer, LspService, Server};
 use super::documents::Documents;
 use super::mouth;
 use super::names::name_of;
+use super::navigation;
 use super::protocol::{self, Abilities, Edge};
 use super::publish::{self, Tell};
 use super::pump::Heard;
@@ -98,6 +99,19 @@ impl Backend {
             });
             work.await.map_err(|_| Error::internal_error())
         }
+    }
+}
+
+impl Backend {
+    /// Work over the whole workspace, done beside.
+    fn everywhere<T, F>(&self, work: F) -> impl Future<Output = Result<T>> + use<T, F>
+    where
+        T: Send + 'static,
+        F: FnOnce(&Documents) -> T + Send + 'static,
+    {
+        let documents = self.documents.clone();
+        let work = tokio::task::spawn_blocking(move || work(&documents));
+        async move { work.await.map_err(|_| Error::internal_error()) }
     }
 }
 
@@ -190,8 +204,80 @@ impl LanguageServer for Backend {
 
     async fn references(&self, params: lsp::ReferenceParams) -> Result<Option<Vec<lsp::Location>>> {
         let (at, with_own) = (params.text_document_position, params.context.include_declaration);
-        let places = self.ask(&at.text_document.uri, move |edge| edge.references(at.position, with_own));
-        places.await.map(Option::flatten)
+        let places = self.ask(&at.text_document.uri, move |edge| {
+            (edge.references(at.position, with_own), edge.sheet_named(at.position))
+        });
+        let Some((mut found, named)) = places.await? else { return Ok(None) };
+        if let Some(sheet) = named {
+            // Its name may stand in files that use this one, too.
+            found = self
+                .everywhere(move |documents| {
+                    let mut found = found.unwrap_or_default();
+                    documents.everywhere(Some(&sheet.name), |checked| {
+                        navigation::places_of(checked, &sheet, with_own, &mut found);
+                    });
+                    Some(found)
+                })
+                .await?;
+        }
+        Ok(found)
+    }
+
+    async fn prepare_rename(&self, at: lsp::TextDocumentPositionParams) -> Result<Option<lsp::PrepareRenameResponse>> {
+        self.ask(&at.text_document.uri, move |edge| edge.prepare_rename(at.position)).await.map(Option::flatten)
+    }
+
+    async fn rename(&self, params: lsp::RenameParams) -> Result<Option<lsp::WorkspaceEdit>> {
+        let at = params.text_document_position;
+        let named = self.ask(&at.text_document.uri, move |edge| edge.sheet_named(at.position)).await?;
+        let Some(sheet) = named.flatten() else { return Err(Error::invalid_params("no name of a sheet stands there")) };
+        let edits = self.everywhere(move |documents| {
+            let (mut edits, mut refused) = (navigation::Edits::new(), None);
+            documents.everywhere(Some(&sheet.name), |checked| {
+                if let Err(why) = navigation::renamed(checked, &sheet, &params.new_name, &mut edits) {
+                    refused = Some(why);
+                }
+            });
+            refused.map_or(Ok(edits), Err)
+        });
+        match edits.await? {
+            Ok(edits) => Ok(Some(lsp::WorkspaceEdit::new(edits.into_iter().collect()))),
+            Err(why) => Err(Error::invalid_params(why)),
+        }
+    }
+
+    async fn symbol(&self, params: lsp::WorkspaceSymbolParams) -> Result<Option<Vec<lsp::SymbolInformation>>> {
+        let found = self.everywhere(move |documents| {
+            let mut found = Vec::new();
+            documents.everywhere(None, |checked| navigation::sheets_like(checked, &params.query, &mut found));
+            found
+        });
+        found.await.map(Some)
+    }
+
+    async fn document_highlight(
+        &self,
+        params: lsp::DocumentHighlightParams,
+    ) -> Result<Option<Vec<lsp::DocumentHighlight>>> {
+        let at = params.text_document_position_params;
+        self.ask(&at.text_document.uri, move |edge| edge.highlights(at.position)).await.map(Option::flatten)
+    }
+
+    async fn selection_range(&self, params: lsp::SelectionRangeParams) -> Result<Option<Vec<lsp::SelectionRange>>> {
+        self.ask(&params.text_document.uri, move |edge| edge.selections(&params.positions)).await.map(Option::flatten)
+    }
+
+    async fn code_lens(&self, params: lsp::CodeLensParams) -> Result<Option<Vec<lsp::CodeLens>>> {
+        self.ask(&params.text_document.uri, |edge| edge.lenses()).await
+    }
+
+    async fn formatting(&self, params: lsp::DocumentFormattingParams) -> Result<Option<Vec<lsp::TextEdit>>> {
+        self.ask(&params.text_document.uri, |edge| edge.aligned(None)).await.map(Option::flatten)
+    }
+
+    async fn range_formatting(&self, params: lsp::DocumentRangeFormattingParams) -> Result<Option<Vec<lsp::TextEdit>>> {
+        let range = params.range;
+        self.ask(&params.text_document.uri, move |edge| edge.aligned(Some(range))).await.map(Option::flatten)
     }
 
     async fn document_link(&self, params: lsp::DocumentLinkParams) -> Result<Option<Vec<lsp::DocumentLink>>> {

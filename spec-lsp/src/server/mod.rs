@@ -16,10 +16,12 @@ mod documents;
 mod findings;
 mod mouth;
 mod names;
+mod navigation;
 mod positions;
 mod protocol;
 mod publish;
 mod pump;
+mod workspace;
 
 use std::time::Duration;
 

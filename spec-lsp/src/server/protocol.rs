@@ -129,6 +129,16 @@ pub fn capabilities(abilities: Abilities) -> lsp::ServerCapabilities {
             },
         )),
         inlay_hint_provider: Some(lsp::OneOf::Left(true)),
+        document_highlight_provider: Some(lsp::OneOf::Left(true)),
+        selection_range_provider: Some(lsp::SelectionRangeProviderCapability::Simple(true)),
+        code_lens_provider: Some(lsp::CodeLensOptions { resolve_provider: Some(false) }),
+        document_formatting_provider: Some(lsp::OneOf::Left(true)),
+        document_range_formatting_provider: Some(lsp::OneOf::Left(true)),
+        workspace_symbol_provider: Some(lsp::OneOf::Left(true)),
+        rename_provider: Some(lsp::OneOf::Right(lsp::RenameOptions {
+            prepare_provider: Some(true),
+            work_done_progress_options: lsp::WorkDoneProgressOptions::default(),
+        })),
         ..lsp::ServerCapabilities::default()
     }
 }
@@ -212,7 +222,7 @@ impl Edge<'_> {
         Some(lsp::Range::new(to(start), to(end)))
     }
 
-    fn own(&self, span: Span) -> Option<lsp::Range> {
+    pub(super) fn own(&self, span: Span) -> Option<lsp::Range> {
         self.range_at(FilePlace { file: OWN, span })
     }
 
@@ -220,11 +230,11 @@ impl Edge<'_> {
         self.url(self.checked.assessment.at(place).file)
     }
 
-    fn offset(&self, position: lsp::Position) -> Option<u32> {
+    pub(super) fn offset(&self, position: lsp::Position) -> Option<u32> {
         Some(self.view(OWN)?.offset(from(position), self.checked.snapshot.encoding))
     }
 
-    fn span(&self, range: lsp::Range) -> Option<Span> {
+    pub(super) fn span(&self, range: lsp::Range) -> Option<Span> {
         let (start, end) = (self.offset(range.start)?, self.offset(range.end)?);
         Some(Span::new(start, end.max(start)))
     }
@@ -234,7 +244,7 @@ impl Edge<'_> {
         lsp::Url::parse(&self.checked.snapshot.uri(name)).ok()
     }
 
-    fn location(&self, place: Place) -> Option<lsp::Location> {
+    pub(super) fn location(&self, place: Place) -> Option<lsp::Location> {
         Some(lsp::Location::new(self.url_of(place)?, self.range(place)?))
     }
 
