@@ -8,6 +8,7 @@ pub mod folding;
 pub mod hints;
 pub mod hover;
 pub mod links;
+pub mod preferred;
 pub mod spot;
 pub mod symbols;
 #[cfg(test)]

@@ -94,7 +94,10 @@ impl Backend {
 #[tower_lsp::async_trait]
 impl LanguageServer for Backend {
     async fn initialize(&self, params: lsp::InitializeParams) -> Result<lsp::InitializeResult> {
-        let abilities = *self.abilities.get_or_init(|| Abilities::of(&params.capabilities));
+        let abilities = *self.abilities.get_or_init(|| Abilities {
+            hints: protocol::wanted_hints(params.initialization_options.as_ref()),
+            ..Abilities::of(&params.capabilities)
+        });
         self.documents.begin(roots(&params), abilities.encoding);
         Ok(lsp::InitializeResult {
             capabilities: protocol::capabilities(abilities),
