@@ -220,7 +220,7 @@ impl At<'_> {
     /// The labels that the sheet does not have yet: those that a finding asks for first, what is only carried last.
     fn labels(&self, replaces: Span) -> Vec<Proposal> {
         let Some(sheet) = self.sheet() else { return Vec::new() };
-        let stated = self.assessment.set.resolved(sheet.id);
+        let stated = self.assessment.set.facts(sheet.id).statements();
         let line = Span::new(self.start, self.offset() + self.after.len() as u32);
         let missing = |particular: &&&Particular| {
             !stated.iter().any(|statement| {

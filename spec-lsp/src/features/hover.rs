@@ -151,7 +151,7 @@ fn chosen(assessment: &Assessment, sheet: &Sheet, statement: &Statement) -> Text
     let takers = assessment.set.of_kind(SheetKind::Breaker).filter(|breaker| {
         breaker.id == sheet.id
             || sheet.kind != SheetKind::Offer
-                && assessment.set.resolved(breaker.id).iter().any(|taken| taken.value == statement.value)
+                && assessment.set.facts(breaker.id).statements().iter().any(|taken| taken.value == statement.value)
     });
     for breaker in takers {
         let case = Case::new(&assessment.set, breaker, &policy);

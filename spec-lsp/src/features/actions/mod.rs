@@ -239,6 +239,8 @@ mod tests {
             let finding = assessment.findings().iter().find(|f| f.rule == "rated-voltage-not-preferred").expect("one");
             let actions = actions(&assessment, FileId(0), finding.place.span);
             let action = actions.iter().find(|a| a.title.starts_with("add a deviation from rated-v")).expect("offered");
+            let unfilled = assessed(&applied(&text, &action.edits));
+            assert!(unfilled.findings().iter().any(|f| f.rule == "deviation-incomplete"));
             let after = applied(&text, &action.edits)
                 .replacen("\"\"", "\"as before\"", 2)
                 .replace("until:", "until: 2099-12-31");
