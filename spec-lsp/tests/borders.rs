@@ -10,12 +10,21 @@ fn code(path: &Path) -> String {
     text.lines().filter(|line| !line.trim_start().starts_with("//")).collect::<Vec<_>>().join("\n")
 }
 
+/// The files of a folder and of those in it.
 fn sources(folder: &str) -> Vec<(String, String)> {
-    let folder = Path::new(env!("CARGO_MANIFEST_DIR")).join("src").join(folder);
-    std::fs::read_dir(folder)
-        .expect("a folder")
-        .flatten()
-        .map(|entry| (entry.file_name().to_string_lossy().into_owned(), code(&entry.path())))
+    within(&Path::new(env!("CARGO_MANIFEST_DIR")).join("src").join(folder))
+}
+
+fn within(folder: &Path) -> Vec<(String, String)> {
+    let entries = std::fs::read_dir(folder).expect("a folder").flatten().map(|entry| entry.path());
+    entries
+        .flat_map(|path| {
+            if path.is_dir() {
+                return within(&path);
+            }
+            let name = path.file_name().map(|name| name.to_string_lossy().into_owned());
+            vec![(name.unwrap_or_default(), code(&path))]
+        })
         .collect()
 }
 

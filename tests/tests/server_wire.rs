@@ -424,3 +424,65 @@ async fn a_panic_in_a_rule_is_told_and_survived() {
     assert_eq!(client.diagnostics(URI, Some(3)).await, found);
     assert_eq!(client.leave().await, 0);
 }
+
+/// The text with the cursor, opened; the answer to a question there.
+async fn asked_at(client: &mut Client, method: &str, line: u32, character: u32) -> Value {
+    let position = json!({"line": line, "character": character});
+    client.ask(method, json!({"textDocument": {"uri": URI}, "position": position})).await["result"].clone()
+}
+
+#[tokio::test]
+async fn a_family_and_other_units_are_offered_as_changes_of_the_text() {
+    let mut client = Client::start(None);
+    client
+        .begin(
+            json!({"textDocument": {"codeAction": {"codeActionLiteralSupport": {"codeActionKind": {"valueSet": []}}}}}),
+        )
+        .await;
+    let lines = "    rated voltage: 145 kV\n    Isc: 40 kA\n    opening time: 30 ms\n";
+    client
+        .open(URI, &format!("cbspec 1\nsystem S\n    frequency: 50 Hz\nbreaker A on S\n{lines}breaker B on S\n{lines}"))
+        .await;
+    let ask = |line: u32, character: u32| {
+        let at = json!({"line": line, "character": character});
+        json!({"textDocument": {"uri": URI}, "range": {"start": at, "end": at}, "context": {"diagnostics": []}})
+    };
+    let answer = client.ask("textDocument/codeAction", ask(3, 2)).await;
+    let actions = answer["result"].as_array().expect("a list").clone();
+    let family = actions.iter().find(|action| action["kind"] == "refactor.extract").expect("a family");
+    assert_eq!(family["edit"]["changes"][URI].as_array().expect("edits").len(), 1 + 2 * 4, "{family}");
+    let answer = client.ask("textDocument/codeAction", ask(6, 20)).await;
+    let titles: Vec<&str> =
+        answer["result"].as_array().expect("a list").iter().filter_map(|action| action["title"].as_str()).collect();
+    assert!(titles.contains(&"write 1.5 cycles"), "{titles:?}");
+}
+
+#[tokio::test]
+async fn preferred_values_are_proposed_and_stand_beside_a_rating() {
+    let mut client = Client::new().await;
+    let system = "system S\n    highest voltage: 145 kV\n    frequency: 50 Hz\n    short-circuit current: 28.4 kA\n    X/R: 21\n";
+    client.open(URI, &format!("cbspec 1\n{system}breaker A on S\n    Isc: \n    rated voltage: 145 kV\n")).await;
+    let items = asked_at(&mut client, "textDocument/completion", 7, 9).await;
+    let items = items.as_array().expect("a list");
+    let first = items.iter().find(|item| item["label"] != "from duty").expect("a value");
+    assert_eq!((first["label"].as_str(), first["detail"].as_str()), (Some("31.5 kA"), Some("meets 28.4 kA")));
+    let hover = asked_at(&mut client, "textDocument/hover", 8, 20).await;
+    assert!(hover["contents"]["value"].as_str().expect("a text").contains("preferred value above: 170 kV"), "{hover}");
+}
+
+#[tokio::test]
+async fn hints_are_switched_off_by_the_options_of_the_client() {
+    let text =
+        "cbspec 1\nsystem S\n    frequency: 50 Hz\n    short-circuit current: 28.4 kA\n    X/R: 21\nbreaker A on S\n";
+    for (options, count) in [(json!({}), 1), (json!({"hints": {"time-constant": false}}), 0)] {
+        let mut client = Client::start(None);
+        let begin = json!({"processId": null, "rootUri": null, "capabilities": {}, "initializationOptions": options});
+        client.ask("initialize", begin).await;
+        client.tell("initialized", json!({})).await;
+        client.open(URI, text).await;
+        let range = json!({"start": {"line": 0, "character": 0}, "end": {"line": 9, "character": 0}});
+        let hints = client.ask("textDocument/inlayHint", json!({"textDocument": {"uri": URI}, "range": range})).await;
+        let hints = hints["result"].as_array().expect("a list").clone();
+        assert_eq!(hints.iter().filter(|hint| hint["label"] == "tau 66.8 ms").count(), count, "{hints:?}");
+    }
+}

@@ -62,6 +62,17 @@ impl Place {
         Self { block: self.block, within: Span::new(self.within.start, other.within.end) }
     }
 
+    /// A part of it, counted from its start.
+    #[must_use]
+    pub const fn part(self, span: Span) -> Self {
+        Self { block: self.block, within: span.shifted(self.within.start) }
+    }
+
+    /// Whether two places of one block share bytes.
+    pub fn overlaps(self, other: Self) -> bool {
+        self.block == other.block && self.within.start < other.within.end && other.within.start < self.within.end
+    }
+
     /// Whether nothing stands there.
     pub const fn is_empty(self) -> bool {
         self.within.is_empty()

@@ -6,8 +6,9 @@ use firstpole_core::sheet::Sheet;
 use firstpole_core::source::SourceFile;
 use firstpole_core::{Assessment, FileId, Span};
 
-use super::actions::written as name_written;
+use super::actions::{missing_labels, written as name_written};
 use super::hover::{of_particular, written};
+use super::preferred::preferred;
 use super::spot::{line_at, particular_of, sheet_at, text_of};
 use super::text::Text;
 
@@ -218,7 +219,7 @@ impl At<'_> {
     /// The labels that the sheet does not have yet: those that a finding asks for first, what is only carried last.
     fn labels(&self, replaces: Span) -> Vec<Proposal> {
         let Some(sheet) = self.sheet() else { return Vec::new() };
-        let stated = self.assessment.set.resolved(sheet.id);
+        let stated = self.assessment.set.facts(sheet.id).statements();
         let line = Span::new(self.start, self.offset() + self.after.len() as u32);
         let missing = |particular: &&&Particular| {
             !stated.iter().any(|statement| {
@@ -232,13 +233,17 @@ impl At<'_> {
             .findings()
             .iter()
             .filter(|finding| self.assessment.at(finding.place).file == self.file)
-            .flat_map(|finding| finding.edits.iter().map(|edit| edit.text.as_str()))
+            .flat_map(|finding| finding.edits.iter())
+            .filter(|edit| edit.place.block() == sheet.heading.block())
+            .map(|edit| edit.text.as_str())
             .collect();
+        let missed = missing_labels(self.assessment, sheet);
         let mut proposals: Vec<(u8, Proposal)> = declared(sheet.kind)
             .iter()
             .filter(missing)
             .map(|particular| {
-                let is_asked = asked.iter().any(|text| text.contains(&format!("{}:", particular.label)));
+                let is_asked = missed.contains(&particular.label)
+                    || asked.iter().any(|text| text.contains(&format!("{}:", particular.label)));
                 let rank = if is_asked { 0 } else { 1 + u8::from(particular.carried) };
                 (rank, self.label(sheet, particular, replaces))
             })
@@ -288,6 +293,7 @@ impl At<'_> {
         let mut proposals = self.of_kind(particular, said, begin);
         let replaces = self.from(begin);
         if !said.contains(|c: char| c.is_ascii_digit()) {
+            proposals.splice(0..0, self.preferred(particular, replaces));
             if particular.from_duty {
                 proposals.insert(0, plain("from duty", ProposalKind::Keyword, "the checker chooses it", replaces));
             }
@@ -304,6 +310,23 @@ impl At<'_> {
             }
         }
         proposals
+    }
+
+    /// The values that the standards prefer, those that meet the duty first, the least of them at the top.
+    fn preferred(&self, particular: &'static Particular, replaces: Span) -> Vec<Proposal> {
+        let found = self.sheet().and_then(|sheet| preferred(self.assessment, sheet, particular));
+        let Some(found) = found else { return Vec::new() };
+        let needed = found.needed_text().unwrap_or_default();
+        let proposal = |si: f64| {
+            let detail = match found.meets(si) {
+                Some(true) => format!("meets {needed}"),
+                Some(false) => format!("below {needed}"),
+                None => "preferred value".to_owned(),
+            };
+            plain(&found.written(si), ProposalKind::Value, &detail, replaces)
+        };
+        let (met, below): (Vec<f64>, Vec<f64>) = found.values.iter().partition(|si| found.meets(**si) != Some(false));
+        met.into_iter().chain(below.into_iter().rev()).map(proposal).collect()
     }
 
     fn of_kind(&self, particular: &Particular, said: &str, begin: usize) -> Vec<Proposal> {
@@ -540,6 +563,29 @@ mod tests {
         assert_eq!(told.first().map(String::as_str), Some("from duty"));
         assert_eq!(told.last().map(String::as_str), Some("open point"));
         assert!(!labels("cbspec 1\nbreaker A\n    opening time: |\n").contains(&"from duty".to_owned()));
+    }
+
+    #[test]
+    fn preferred_values_that_meet_the_duty_come_first() {
+        let text = BAY.replace("31.5 kA", "|");
+        let told: Vec<(String, String)> = at(&text).into_iter().map(|p| (p.label, p.detail)).collect();
+        let pair = |label: &str, detail: &str| (label.to_owned(), detail.to_owned());
+        assert_eq!(told.first().map(|(label, _)| label.as_str()), Some("from duty"));
+        assert_eq!(told.get(1), Some(&pair("31.5 kA", "meets 28.4 kA")));
+        let place = |wanted: &(String, String)| told.iter().position(|found| found == wanted).expect("proposed");
+        assert!(place(&pair("50 kA", "meets 28.4 kA")) < place(&pair("25 kA", "below 28.4 kA")));
+        assert!(place(&pair("25 kA", "below 28.4 kA")) < place(&pair("20 kA", "below 28.4 kA")));
+        assert!(taken(&text, "40 kA").contains("Isc:                40 kA\n"));
+        let unknown = text.replace("    short-circuit current: 28.4 kA\n", "");
+        assert!(at(&unknown).iter().any(|p| p.label == "25 kA" && p.detail == "preferred value"));
+    }
+
+    #[test]
+    fn labels_that_omissions_ask_for_come_first() {
+        let text = BAY.replace("    lowest ambient:     -25 degC\n", "    lowest ambient:     -25 degC\n    |\n");
+        let told = labels(&text);
+        let first = told.get(..3).unwrap_or(&[]);
+        assert!(first.contains(&"altitude".to_owned()) && first.contains(&"pollution".to_owned()), "{told:?}");
     }
 
     #[test]

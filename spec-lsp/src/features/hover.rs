@@ -8,6 +8,7 @@ use firstpole_core::sheet::{About, LinkTarget, QuantityReading, Reading, Sheet, 
 use firstpole_core::standards::GAUGE_REFERENCE;
 use firstpole_core::{Assessment, FileId, Place, Span};
 
+use super::preferred::preferred;
 use super::spot::{label_and_value, line_at, name_at, particular_of, sheet_at, statement_at};
 use super::text::Text;
 
@@ -136,7 +137,8 @@ fn of_value(assessment: &Assessment, sheet: &Sheet, statement: &Statement) -> Te
         | Reading::Sequence(_)
         | Reading::Gas(_) => {}
     }
-    text.and(needed(assessment, statement.value))
+    text.and(beside(assessment, sheet, statement))
+        .and(needed(assessment, statement.value))
         .and(figures(assessment, statement.value))
         .sentence(statement.particular.meaning)
 }
@@ -149,7 +151,7 @@ fn chosen(assessment: &Assessment, sheet: &Sheet, statement: &Statement) -> Text
     let takers = assessment.set.of_kind(SheetKind::Breaker).filter(|breaker| {
         breaker.id == sheet.id
             || sheet.kind != SheetKind::Offer
-                && assessment.set.resolved(breaker.id).iter().any(|taken| taken.value == statement.value)
+                && assessment.set.facts(breaker.id).statements().iter().any(|taken| taken.value == statement.value)
     });
     for breaker in takers {
         let case = Case::new(&assessment.set, breaker, &policy);
@@ -196,6 +198,23 @@ fn in_other_units(particular: &Particular, quantity: &QuantityReading) -> Vec<(S
         }
     }
     rows
+}
+
+/// The preferred values next to the one stated, and what the duty asks for.
+fn beside(assessment: &Assessment, sheet: &Sheet, statement: &Statement) -> Text {
+    let found = preferred(assessment, sheet, statement.particular).filter(|_| statement.about == About::Value);
+    let value = statement.quantity().and_then(|quantity| quantity.measure.si);
+    let Some((found, value)) = found.zip(value) else { return Text::new() };
+    let (below, above) = found.neighbours(value);
+    let mut rows = Vec::new();
+    rows.extend(below.map(|si| ("preferred value below".to_owned(), found.written(si))));
+    rows.extend(above.map(|si| ("preferred value above".to_owned(), found.written(si))));
+    if let (Some(needed), Some(meets)) = (found.needed_text(), found.meets(value)) {
+        let word = if meets { "the duty asks for, and it is met" } else { "the duty asks for, and it is not met" };
+        rows.push((word.to_owned(), needed));
+        rows.extend(found.working.clone().map(|working| ("by".to_owned(), working)));
+    }
+    Text::new().table(rows)
 }
 
 /// What open findings on the value ask for.
@@ -278,6 +297,19 @@ mod tests {
     fn plain(before: &str) -> String {
         let (assessment, at) = bay_after(before);
         hover(&assessment, FileId(0), at).expect("a hover").text.plain()
+    }
+
+    #[test]
+    fn a_rating_stands_between_its_neighbours_and_against_the_duty() {
+        let (assessment, at) = bay_after("31.");
+        let text = hover(&assessment, FileId(0), at).expect("a hover").text.plain();
+        for part in ["value below: 25 kA", "value above: 40 kA", "it is met: 28.4 kA"] {
+            assert!(text.contains(part), "{part}: {text}");
+        }
+        let text = BAY.replace("31.5 kA", "2|5 kA");
+        let (assessment, at) = at_cursor(&text);
+        let text = hover(&assessment, FileId(0), at).expect("a hover").text.plain();
+        assert!(text.contains("it is not met: 28.4 kA"), "{text}");
     }
 
     #[test]

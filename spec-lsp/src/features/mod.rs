@@ -9,6 +9,7 @@ pub mod hints;
 pub mod hover;
 pub mod lens;
 pub mod links;
+pub mod preferred;
 pub mod rename;
 pub mod selection;
 pub mod spot;

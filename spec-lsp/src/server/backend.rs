@@ -2,7 +2,7 @@
 //! handlers interleave wherever they wait.
 
 use std::path::PathBuf;
-use std::sync::{Arc, OnceLock};
+use std::sync::{Arc, Mutex, OnceLock, PoisonError};
 
 use firstpole_core::Assessor;
 use lsp_types as lsp;
@@ -18,6 +18,7 @@ use super::navigation;
 use super::protocol::{self, Abilities, Edge};
 use super::publish::{self, Tell};
 use super::pump::Heard;
+use crate::features::hints::Wanted;
 
 /// Requests that are answered at one time.
 const AT_ONCE: usize = 32;
@@ -66,7 +67,7 @@ where
                 logger.log_message(lsp::MessageType::WARNING, line).await;
             }
         });
-        Backend { client, documents, abilities: OnceLock::new() }
+        Backend { client, documents, abilities: OnceLock::new(), hints: Mutex::default() }
     });
     Server::new(input, library, socket).concurrency_level(AT_ONCE).serve(service).await;
     checker.abort();
@@ -79,6 +80,8 @@ struct Backend {
     client: Client,
     documents: Arc<Documents>,
     abilities: OnceLock<Abilities>,
+    /// Which hints are wanted; the client may change it at any time.
+    hints: Mutex<Wanted>,
 }
 
 impl Backend {
@@ -90,7 +93,8 @@ impl Backend {
         F: FnOnce(Edge<'_>) -> T + Send + 'static,
     {
         let documents = self.documents.clone();
-        let abilities = self.abilities.get().copied().unwrap_or_default();
+        let hints = *self.hints.lock().unwrap_or_else(PoisonError::into_inner);
+        let abilities = Abilities { hints, ..self.abilities.get().copied().unwrap_or_default() };
         let now = documents.now(&name_of(uri.as_str()));
         async move {
             let Some(now) = now else { return Ok(None) };
@@ -103,6 +107,10 @@ impl Backend {
 }
 
 impl Backend {
+    fn set_hints(&self, settings: Option<&serde_json::Value>) {
+        *self.hints.lock().unwrap_or_else(PoisonError::into_inner) = protocol::wanted_hints(settings);
+    }
+
     /// Work over the whole workspace, done beside.
     fn everywhere<T, F>(&self, work: F) -> impl Future<Output = Result<T>> + use<T, F>
     where
@@ -119,6 +127,7 @@ impl Backend {
 impl LanguageServer for Backend {
     async fn initialize(&self, params: lsp::InitializeParams) -> Result<lsp::InitializeResult> {
         let abilities = *self.abilities.get_or_init(|| Abilities::of(&params.capabilities));
+        self.set_hints(params.initialization_options.as_ref());
         self.documents.begin(roots(&params), abilities.encoding, abilities.takes);
         Ok(lsp::InitializeResult {
             capabilities: protocol::capabilities(abilities),
@@ -139,6 +148,17 @@ impl LanguageServer for Backend {
 
     async fn shutdown(&self) -> Result<()> {
         Ok(())
+    }
+
+    async fn did_change_configuration(&self, params: lsp::DidChangeConfigurationParams) {
+        // Clients send either what stands under our name or the whole.
+        let settings = params.settings.get("firstpole").unwrap_or(&params.settings);
+        self.set_hints(Some(settings).filter(|settings| settings.is_object()));
+        if self.abilities.get().is_some_and(|abilities| abilities.refreshes_hints) {
+            let client = self.client.clone();
+            // A client that cannot will ask at the next change.
+            tokio::spawn(async move { drop(client.inlay_hint_refresh().await) });
+        }
     }
 
     async fn did_open(&self, params: lsp::DidOpenTextDocumentParams) {

@@ -11,7 +11,7 @@ use super::checker::{Checked, OWN};
 use super::documents::Change;
 use super::findings::{self, Takes};
 use super::positions::{Encoding, Position, View};
-use crate::features::actions::Action;
+use crate::features::actions::{Action, ActionKind};
 use crate::features::completion::{Proposal, ProposalKind, Subject};
 use crate::features::hover::Hover;
 use crate::features::symbols::Symbol;
@@ -38,6 +38,10 @@ pub struct Abilities {
     pub literal_actions: bool,
     /// Whether it watches files for the server.
     pub watches: bool,
+    /// Whether it asks for hints anew when it is told to.
+    pub refreshes_hints: bool,
+    /// Which hints it wants.
+    pub hints: hints::Wanted,
 }
 
 impl Abilities {
@@ -66,6 +70,13 @@ impl Abilities {
             literal_actions: text
                 .and_then(|text| text.code_action.as_ref())
                 .is_some_and(|actions| actions.code_action_literal_support.is_some()),
+            hints: hints::Wanted::default(),
+            refreshes_hints: client
+                .workspace
+                .as_ref()
+                .and_then(|workspace| workspace.inlay_hint.as_ref())
+                .and_then(|hints| hints.refresh_support)
+                .unwrap_or(false),
             watches: client
                 .workspace
                 .as_ref()
@@ -82,6 +93,22 @@ fn takes(text: Option<&lsp::TextDocumentClientCapabilities>) -> Takes {
         related: findings.related_information.unwrap_or(false),
         marks: findings.tag_support.is_some(),
         data: findings.data_support.unwrap_or(false),
+    }
+}
+
+/// Which hints the client's options ask for: `{"hints": {"dew-point": false}}`. What is not named, or is no yes or no, stays on.
+pub fn wanted_hints(options: Option<&Value>) -> hints::Wanted {
+    let on = |name: &str| {
+        options.and_then(|o| o.get("hints")).and_then(|h| h.get(name)).and_then(Value::as_bool).unwrap_or(true)
+    };
+    hints::Wanted {
+        chosen: on("chosen"),
+        time_constant: on("time-constant"),
+        peak: on("peak"),
+        dc_share: on("dc-share"),
+        trv: on("trv"),
+        dew_point: on("dew-point"),
+        charging_current: on("charging-current"),
     }
 }
 
@@ -109,7 +136,11 @@ pub fn capabilities(abilities: Abilities) -> lsp::ServerCapabilities {
         document_symbol_provider: Some(lsp::OneOf::Left(true)),
         code_action_provider: abilities.literal_actions.then(|| {
             lsp::CodeActionProviderCapability::Options(lsp::CodeActionOptions {
-                code_action_kinds: Some(vec![lsp::CodeActionKind::QUICKFIX, lsp::CodeActionKind::REFACTOR_REWRITE]),
+                code_action_kinds: Some(vec![
+                    lsp::CodeActionKind::QUICKFIX,
+                    lsp::CodeActionKind::REFACTOR_REWRITE,
+                    lsp::CodeActionKind::REFACTOR_EXTRACT,
+                ]),
                 ..lsp::CodeActionOptions::default()
             })
         }),
@@ -312,18 +343,22 @@ impl Edge<'_> {
     }
 
     fn action(&self, action: Action<'_>) -> Option<lsp::CodeAction> {
-        let edit = lsp::TextEdit { range: self.range(action.edit.place)?, new_text: action.edit.text };
+        let mut changes: HashMap<lsp::Url, Vec<lsp::TextEdit>> = HashMap::new();
+        for edit in action.edits {
+            let range = self.range(edit.place)?;
+            changes.entry(self.url_of(edit.place)?).or_default().push(lsp::TextEdit { range, new_text: edit.text });
+        }
         let finding = action.finding.and_then(|finding| findings::told_of(self.checked, finding)?.typed());
-        let kind =
-            if finding.is_some() { lsp::CodeActionKind::QUICKFIX } else { lsp::CodeActionKind::REFACTOR_REWRITE };
+        let kind = match action.kind {
+            ActionKind::Repair => lsp::CodeActionKind::QUICKFIX,
+            ActionKind::Rewrite => lsp::CodeActionKind::REFACTOR_REWRITE,
+            ActionKind::Extract => lsp::CodeActionKind::REFACTOR_EXTRACT,
+        };
         Some(lsp::CodeAction {
             title: action.title,
             kind: Some(kind),
             diagnostics: finding.map(|finding| vec![finding]),
-            edit: Some(lsp::WorkspaceEdit {
-                changes: Some(HashMap::from([(self.url_of(action.edit.place)?, vec![edit])])),
-                ..lsp::WorkspaceEdit::default()
-            }),
+            edit: Some(lsp::WorkspaceEdit { changes: Some(changes), ..lsp::WorkspaceEdit::default() }),
             is_preferred: action.preferred.then_some(true),
             ..lsp::CodeAction::default()
         })
@@ -420,7 +455,7 @@ impl Edge<'_> {
 
     /// Answers a request for hints.
     pub fn hints(&self, range: lsp::Range) -> Option<Vec<lsp::InlayHint>> {
-        let hints = hints::hints(&self.checked.assessment, OWN, self.span(range)?);
+        let hints = hints::hints(&self.checked.assessment, OWN, self.span(range)?, self.abilities.hints);
         let hint = |hint: hints::Hint| {
             Some(lsp::InlayHint {
                 position: self.own(Span::new(hint.at, hint.at))?.start,
