@@ -66,7 +66,7 @@ static LEVELS: &[Levels] = &[
 ];
 
 /// Whether insulation stands in the air of the site: by the line of its own, else by the construction.
-fn stands_in_air(case: &Case<'_>) -> bool {
+pub(crate) fn stands_in_air(case: &Case<'_>) -> bool {
     match case.breaker.word(&breaker::EXTERNAL_INSULATION) {
         Some(("none", _)) => return false,
         Some(_) => return true,

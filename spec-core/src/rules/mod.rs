@@ -95,6 +95,8 @@ pub struct Policy {
     pub supervision_share: f64,
     /// Reserve between relay plus break time and the critical clearing time, s.
     pub clearing_margin: f64,
+    /// Reserve of the breaking current over the duty where the tender states none, as a share of the rating.
+    pub short_circuit_margin: f64,
     /// Years over which operations are counted where the tender states no service life.
     pub service_life: f64,
     /// Extreme demands upon one breaker from which they are told together.
@@ -120,6 +122,7 @@ impl Default for Policy {
             excess_steps: 2,
             supervision_share: 0.1,
             clearing_margin: 0.020,
+            short_circuit_margin: 0.0,
             service_life: 30.0,
             extremes: 5,
             lightning_margin: 1.2,

@@ -229,7 +229,7 @@ fn recharge(case: &Case<'_>, findings: &mut Findings) {
 }
 
 /// The operations of a breaker over its life.
-pub(super) struct Operations<'a> {
+pub(crate) struct Operations<'a> {
     /// How many.
     pub count: f64,
     /// What says how often.
@@ -239,7 +239,7 @@ pub(super) struct Operations<'a> {
 }
 
 /// The operations of the circuit that is switched most often, over the service life.
-pub(super) fn operations<'a>(case: &'a Case<'_>) -> Option<Operations<'a>> {
+pub(crate) fn operations<'a>(case: &'a Case<'_>) -> Option<Operations<'a>> {
     let (measure, statement) = case
         .circuits
         .iter()
@@ -259,7 +259,7 @@ const DAYS: f64 = 365.0;
 const YEAR: f64 = 365.25 * DAY;
 
 /// To hundreds: the count is no better known.
-pub(super) fn hundreds(count: f64) -> String {
+pub(crate) fn hundreds(count: f64) -> String {
     significant((count / 100.0).round() * 100.0, 3)
 }
 

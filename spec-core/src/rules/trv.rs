@@ -28,14 +28,17 @@ pub static TRV_CLASS: Rule = Rule {
     check: Check::Case(class),
 };
 
+/// What kind of network leaves the busbar.
 #[derive(Clone, Copy, PartialEq)]
-enum Network {
+pub(crate) enum Network {
+    /// Overhead lines.
     Lines,
+    /// Cables.
     Cables,
 }
 
 /// What leaves the busbar, and where that is said.
-fn network<'a>(case: &'a Case<'_>) -> Option<(Network, &'a Statement)> {
+pub(crate) fn network<'a>(case: &'a Case<'_>) -> Option<(Network, &'a Statement)> {
     if let Some((word, statement)) = case.system.word(&system::CONNECTION) {
         return match word {
             "overhead lines" | "overhead lines and cables" => Some((Network::Lines, statement)),

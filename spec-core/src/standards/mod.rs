@@ -15,6 +15,7 @@ mod insulation;
 mod line_side;
 mod making;
 mod mechanical;
+mod operation;
 mod pressure;
 mod short_circuit;
 mod supply;
@@ -40,6 +41,7 @@ pub use line_side::{
 };
 pub use making::{MakingCase, making_factor};
 pub use mechanical::{TerminalLoads, seismic_level, seismic_level_for, terminal_loads, zinc_coating};
+pub use operation::{OperatingSequence, break_times, operating_sequences};
 pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE};
 pub(crate) use short_circuit::{AtTime, asynchronous_decay, synchronous_decay};
 pub use short_circuit::{
@@ -47,8 +49,8 @@ pub use short_circuit::{
 };
 pub use supply::{Device, Supply, coil_range, is_supply_voltage, supply_voltages};
 pub use surroundings::{
-    PollutionClass, TemperatureLimit, WithstandVoltage, altitude_exponent, pollution_class, pollution_classes,
-    temperature_limit, temperature_limits,
+    PollutionClass, TemperatureLimit, WithstandVoltage, altitude_exponent, ice_classes, pollution_class,
+    pollution_classes, temperature_limit, temperature_limits,
 };
 pub use time_constants::{TimeConstantCase, TimeConstants};
 pub use trv_duties::{Duty, DutyRow, SystemClass, VoltageRange, duty_row, s1_time};

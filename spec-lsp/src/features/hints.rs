@@ -1,6 +1,6 @@
 //! Hints in the text: what `from duty` chose.
 
-use firstpole_core::case::Case;
+use firstpole_core::case::{Case, written};
 use firstpole_core::particular::SheetKind;
 use firstpole_core::rules::Policy;
 use firstpole_core::{Assessment, FileId, Span};
@@ -35,7 +35,7 @@ pub fn hints(assessment: &Assessment, file: FileId, within: Span) -> Vec<Hint> {
         }
         let case = Case::new(&assessment.set, sheet, &policy);
         for statement in case.breaker.statements() {
-            let (Some(working), Some(quantity)) = (&statement.chosen, statement.quantity()) else { continue };
+            let (Some(working), Some(value)) = (&statement.chosen, written(&statement.reading)) else { continue };
             let here = statement.value.file == file && within.touches(statement.value.span.end);
             if !here {
                 continue;
@@ -43,7 +43,6 @@ pub fn hints(assessment: &Assessment, file: FileId, within: Span) -> Vec<Hint> {
             let own = sheet.file() == file
                 && sheet.heading.span.start <= statement.value.span.start
                 && statement.value.span.start <= sheet.end.span.end;
-            let value = quantity.shown();
             let text = if own { value.clone() } else { format!("{value} in {}", sheet.name) };
             let hint = Hint { at: statement.value.span.end, text, value, working: working.clone() };
             if !hints.contains(&hint) {

@@ -1,6 +1,6 @@
 //! Hover: what a label means, what a value is in other units and which figures of the duty rest on it, what a name names.
 
-use firstpole_core::case::Case;
+use firstpole_core::case::{Case, written};
 use firstpole_core::particular::{Kind, Particular, SheetKind};
 use firstpole_core::quantity::{Physical, Pressure, look_up, significant};
 use firstpole_core::rules::{self, Policy};
@@ -154,11 +154,11 @@ fn chosen(assessment: &Assessment, sheet: &Sheet, statement: &Statement) -> Text
     for breaker in takers {
         let case = Case::new(&assessment.set, breaker, &policy);
         let found = case.breaker.statements().iter().find(|taken| taken.value == statement.value);
-        let Some((quantity, working)) = found.and_then(|taken| taken.quantity().zip(taken.chosen.as_ref())) else {
+        let Some((value, working)) = found.and_then(|taken| written(&taken.reading).zip(taken.chosen.as_ref())) else {
             continue;
         };
         known = true;
-        text = text.sentence(format!("The duty of {} asks for {}.", breaker.name, quantity.shown())).formula(working);
+        text = text.sentence(format!("The duty of {} asks for {}.", breaker.name, value)).formula(working);
     }
     if known { text } else { text.sentence("The text does not say enough for the checker to choose it.") }
 }
