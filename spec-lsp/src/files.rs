@@ -6,7 +6,7 @@ use std::path::{Component, Path, PathBuf};
 use std::sync::Arc;
 
 use firstpole_core::rules::reading::FILE_UNREADABLE;
-use firstpole_core::{Finding, LoadFault, Loader, Place, Sources, Span};
+use firstpole_core::{Finding, LoadFault, Loader, Sources, Span};
 use ignore::WalkBuilder;
 
 /// The largest file that is read.
@@ -75,7 +75,8 @@ fn add(gathered: &mut Gathered, path: &Path) {
         Err(sentence) => {
             let file = gathered.sources.add(name.clone(), "");
             let message = format!("{name} was not checked: {sentence}");
-            let mut finding = Finding::new(&FILE_UNREADABLE, Place::new(file, Span::new(0, 0)), message);
+            let Some(place) = gathered.sources.place(file, Span::new(0, 0)) else { return };
+            let mut finding = Finding::new(&FILE_UNREADABLE, place, message);
             finding.advice("the other files were checked");
             gathered.faults.push(finding);
         }

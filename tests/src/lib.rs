@@ -1,6 +1,10 @@
 //! What the acceptance tests share: the example specifications, and how they are assessed.
 
+mod large;
+
 use std::path::{Path, PathBuf};
+
+pub use large::large;
 
 /// The root of the workspace.
 pub fn root() -> PathBuf {

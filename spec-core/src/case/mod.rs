@@ -4,7 +4,7 @@
 mod choose;
 mod regime;
 
-pub use choose::written;
+pub use choose::as_written;
 pub(crate) use choose::{NotChosen, why_open};
 
 pub use regime::Regimes;

@@ -84,7 +84,7 @@ impl Datum {
 }
 
 /// Another statement that a finding rests on.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct Related {
     /// Where it stands.
     pub place: Place,
@@ -93,7 +93,7 @@ pub struct Related {
 }
 
 /// A change of the text that mends a finding.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct Edit {
     /// What it does.
     pub title: String,
@@ -115,7 +115,7 @@ pub struct Acceptance {
 }
 
 /// What is wrong, where, by what measure, and how it is mended.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct Finding {
     /// The name of the rule.
     pub rule: &'static str,
@@ -124,7 +124,6 @@ pub struct Finding {
     /// The breaker that it concerns.
     pub breaker: Option<String>,
     /// The sheet of that breaker.
-    #[serde(skip)]
     pub sheet: Option<SheetId>,
     /// The very value that it is about.
     pub place: Place,

@@ -66,8 +66,12 @@ pub struct Rule {
 pub enum Check {
     /// While the text is read, or by another rule of its subject.
     Elsewhere,
-    /// On the sheets of the whole set.
+    /// On the whole set. It is done anew with every change of the text, so that nothing belongs here that can be said sheet by sheet.
     Set(fn(&Set, &Policy, &mut Findings)),
+    /// On each sheet, with those that it is linked to.
+    Sheet(fn(&Set, &Sheet, &Policy, &mut Findings)),
+    /// On the whole set, and on each sheet.
+    Both(fn(&Set, &Policy, &mut Findings), fn(&Set, &Sheet, &Policy, &mut Findings)),
     /// On each breaker with its duty.
     Case(fn(&Case<'_>, &mut Findings)),
 }
@@ -155,10 +159,8 @@ fn add_line(finding: &mut Finding, sheet: &Sheet, particular: &Particular, value
 }
 
 /// The place just behind, to insert at.
-fn after(place: Place) -> Place {
-    let mut after = place;
-    after.span.start = after.span.end;
-    after
+const fn after(place: Place) -> Place {
+    place.end()
 }
 
 /// Whether the site lies in the open, with the line that says so.

@@ -29,8 +29,8 @@ mod tests {
     fn a_link_leads_to_the_heading() {
         let (assessment, at) = bay_after("LineBay on Ring");
         let place = definition(&assessment, FileId(0), at).expect("a place");
-        assert_eq!(text_of(&assessment, place.span), "Ring132");
-        assert_eq!(place.span.start as usize, BAY.find("Ring132").expect("the heading"));
+        assert_eq!(text_of(&assessment, assessment.span(place)), "Ring132");
+        assert_eq!(assessment.span(place).start as usize, BAY.find("Ring132").expect("the heading"));
     }
 
     #[test]
@@ -48,7 +48,7 @@ mod tests {
         let family = sources.add("family.cbspec", "cbspec 1\nfamily Big\n");
         let assessment = Assessor::standard().assess(&sources);
         let place = definition(&assessment, FileId(0), 49).expect("a place");
-        assert_eq!(place.file, family);
+        assert_eq!(assessment.at(place).file, family);
         assert!(definition(&assessment, FileId(0), 0).is_none());
     }
 }

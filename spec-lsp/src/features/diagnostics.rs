@@ -37,7 +37,7 @@ pub struct Diagnostic<'a> {
 
 /// The findings in one file, in the order of the text.
 pub fn diagnostics(assessment: &Assessment, file: FileId) -> Vec<Diagnostic<'_>> {
-    assessment.findings().iter().filter(|finding| finding.place.file == file).map(diagnostic).collect()
+    assessment.findings().iter().filter(|f| assessment.at(f.place).file == file).map(|f| diagnostic(f)).collect()
 }
 
 fn diagnostic(finding: &Finding) -> Diagnostic<'_> {

@@ -3,7 +3,7 @@
 use std::collections::HashMap;
 
 use firstpole_core::particular::SheetKind;
-use firstpole_core::{Edit, FileId, Place, Span};
+use firstpole_core::{Edit, FileId, FilePlace, Place, Span};
 use lsp_types as lsp;
 use serde_json::{Value, json};
 
@@ -209,12 +209,20 @@ impl Edge<'_> {
     }
 
     fn range(&self, place: Place) -> Option<lsp::Range> {
+        self.range_at(self.checked.assessment.at(place))
+    }
+
+    fn range_at(&self, place: FilePlace) -> Option<lsp::Range> {
         let (start, end) = self.view(place.file)?.range(place.span, self.checked.snapshot.encoding);
         Some(lsp::Range::new(to(start), to(end)))
     }
 
     fn own(&self, span: Span) -> Option<lsp::Range> {
-        self.range(Place::new(OWN, span))
+        self.range_at(FilePlace { file: OWN, span })
+    }
+
+    fn url_of(&self, place: Place) -> Option<lsp::Url> {
+        self.url(self.checked.assessment.at(place).file)
     }
 
     fn offset(&self, position: lsp::Position) -> Option<u32> {
@@ -232,7 +240,7 @@ impl Edge<'_> {
     }
 
     fn location(&self, place: Place) -> Option<lsp::Location> {
-        Some(lsp::Location::new(self.url(place.file)?, self.range(place)?))
+        Some(lsp::Location::new(self.url_of(place)?, self.range(place)?))
     }
 
     fn diagnostic(&self, diagnostic: &diagnostics::Diagnostic<'_>) -> Option<lsp::Diagnostic> {
@@ -264,7 +272,7 @@ impl Edge<'_> {
     }
 
     fn edit_data(&self, edit: &Edit) -> Option<Value> {
-        let (uri, range) = (self.url(edit.place.file)?, self.range(edit.place)?);
+        let (uri, range) = (self.url_of(edit.place)?, self.range(edit.place)?);
         Some(json!({ "title": edit.title, "uri": uri, "range": range, "newText": edit.text }))
     }
 
@@ -335,7 +343,7 @@ impl Edge<'_> {
         let edit = lsp::TextEdit { range: self.range(action.edit.place)?, new_text: action.edit.text };
         let finding = action.finding.and_then(|wanted| {
             let place = wanted.place;
-            let all = diagnostics::diagnostics(&self.checked.assessment, place.file);
+            let all = diagnostics::diagnostics(&self.checked.assessment, self.checked.assessment.at(place).file);
             let found = all.iter().find(|d| d.place == place && d.rule == wanted.rule)?;
             self.diagnostic(found)
         });
@@ -346,7 +354,7 @@ impl Edge<'_> {
             kind: Some(kind),
             diagnostics: finding.map(|finding| vec![finding]),
             edit: Some(lsp::WorkspaceEdit {
-                changes: Some(HashMap::from([(self.url(action.edit.place.file)?, vec![edit])])),
+                changes: Some(HashMap::from([(self.url_of(action.edit.place)?, vec![edit])])),
                 ..lsp::WorkspaceEdit::default()
             }),
             is_preferred: action.preferred.then_some(true),
@@ -366,7 +374,8 @@ impl Edge<'_> {
         for symbol in symbols {
             let children = symbol.children.iter().map(|child| (child, lsp::SymbolKind::PROPERTY, Some(&symbol.name)));
             for (symbol, kind, container) in [(&symbol, lsp::SymbolKind::CLASS, None)].into_iter().chain(children) {
-                let Some(location) = self.location(Place::new(OWN, symbol.span)) else { continue };
+                let (Some(uri), Some(range)) = (self.url(OWN), self.own(symbol.span)) else { continue };
+                let location = lsp::Location::new(uri, range);
                 #[allow(deprecated, reason = "the type has no other way to be made")]
                 flat.push(lsp::SymbolInformation {
                     name: symbol.name.clone(),

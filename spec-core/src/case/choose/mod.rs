@@ -9,7 +9,7 @@ mod trv;
 use super::Case;
 use crate::particular::Particular;
 use crate::quantity::{Dimension, Measure, canonical, look_up, significant};
-use crate::sheet::{About, Class, Pause, QuantityReading, Reading, Sequence, SequenceStep};
+use crate::sheet::{Class, Pause, QuantityReading, Reading, Sequence, SequenceStep, Statement};
 use crate::source::Place;
 use crate::standards::Regime;
 
@@ -84,24 +84,18 @@ pub(crate) fn why_open(case: &Case<'_>, particular: &Particular) -> Option<NotCh
 
 /// Puts a value wherever the text says `from duty` and the duty is known; tells whether any was put in.
 pub(super) fn fill(case: &mut Case<'_>) -> bool {
-    let open = |case: &Case<'_>, particular: &Particular| {
-        case.breaker.all(particular).any(|s| s.about == About::Value && s.reading == Reading::FromDuty)
-    };
     let mut any = false;
     for choice in choices() {
-        if !open(case, choice.particular) {
+        if !case.breaker.all(choice.particular).any(|s| s.reading == Reading::FromDuty) {
             continue;
         }
         let Ok(chosen) = (choice.choose)(case) else { continue };
-        for statement in case.breaker.facts.statements_mut() {
-            if statement.about == About::Value
-                && statement.particular.is(choice.particular)
-                && statement.reading == Reading::FromDuty
-            {
-                statement.reading = chosen.value.reading(statement.value);
-                statement.chosen = Some(chosen.working.clone());
-                any = true;
-            }
+        let open =
+            |statement: &Statement| statement.states(choice.particular) && statement.reading == Reading::FromDuty;
+        for statement in case.breaker.facts.statements_mut(open) {
+            statement.reading = chosen.value.reading(statement.value);
+            statement.chosen = Some(chosen.working.clone());
+            any = true;
         }
         if choice.hangs {
             case.duty = crate::duty::Duty::of(case);
@@ -111,7 +105,7 @@ pub(super) fn fill(case: &mut Case<'_>) -> bool {
 }
 
 /// A value that was chosen, as an author would write it; none for readings that nothing chooses.
-pub fn written(reading: &Reading) -> Option<String> {
+pub fn as_written(reading: &Reading) -> Option<String> {
     match reading {
         Reading::Quantity(quantity) => Some(quantity.shown()),
         Reading::Words(words) => Some(words.join(" or ")),
@@ -194,7 +188,7 @@ fn regimes(case: &Case<'_>) -> Vec<Regime> {
 #[cfg(test)]
 mod testing {
     use super::why_open;
-    use crate::case::{Case, written};
+    use crate::case::{Case, as_written};
     use crate::particular::SheetKind;
     use crate::rules::Policy;
     use crate::rules::testing::Bay;
@@ -220,7 +214,7 @@ mod testing {
             .expect("the line");
         match (&statement.reading, &statement.chosen) {
             (Reading::FromDuty, _) => Err(format!("{:?}", why_open(&case, statement.particular))),
-            (reading, Some(working)) => Ok((written(reading).expect("a value"), working.clone())),
+            (reading, Some(working)) => Ok((as_written(reading).expect("a value"), working.clone())),
             (reading, None) => panic!("{label}: {reading:?}"),
         }
     }

@@ -36,9 +36,11 @@ pub static CIRCUIT_MISSING: Rule = Rule {
 };
 
 fn circuit_missing(case: &Case<'_>, findings: &mut Findings) {
-    let reach = || case.set.in_reach(case.sheet.file(), SheetKind::Circuit);
-    let astray = reach().any(|circuit| circuit.target("for").is_none());
-    if !case.circuits.is_empty() || astray || case.breaker.mentions(&breaker::SPARE_FOR) {
+    if !case.circuits.is_empty() || case.breaker.mentions(&breaker::SPARE_FOR) {
+        return;
+    }
+    let mut reach = case.set.in_reach(case.sheet.file(), SheetKind::Circuit);
+    if reach.any(|circuit| circuit.target("for").is_none()) {
         return;
     }
     let message = format!(
