@@ -84,7 +84,7 @@ fn add(gathered: &mut Gathered, path: &Path) {
 }
 
 /// The text of a file, or a sentence that says why it cannot be had.
-fn read(path: &Path) -> Result<Arc<str>, String> {
+pub(crate) fn read(path: &Path) -> Result<Arc<str>, String> {
     let file = File::open(path).map_err(|fault| sentence(&fault))?;
     let mut bytes = Vec::new();
     file.take(LARGEST_FILE + 1).read_to_end(&mut bytes).map_err(|fault| sentence(&fault))?;
