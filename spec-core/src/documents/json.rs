@@ -129,7 +129,7 @@ impl Document {
                 at: {
                     let place = assessment.at(sheet.heading);
                     let file = assessment.sources.file(place.file);
-                    (file.map(|file| file.name.to_string()).unwrap_or_default(), place.span.start)
+                    (file.map(|file| file.name.clone()).unwrap_or_default(), place.span.start)
                 },
                 breaker: case.breaker.clone(),
                 duty: case

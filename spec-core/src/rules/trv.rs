@@ -288,6 +288,29 @@ mod tests {
         Bay::new().set("breaker", "uc", "249 kV").one("trv-values-disagree");
     }
 
+    /// Out of phase the tables have 1.54 and 1.67 kV/us, whatever the first-pole-to-clear factor.
+    #[test]
+    fn out_of_phase_of_the_other_earthing() {
+        let bay = |rate: &str| {
+            Bay::new().set("breaker", "out-of-phase voltage factor", "2.5").set("breaker", "OP rate of rise", rate)
+        };
+        bay("1.67 kV/us").silent("trv-values-disagree");
+        bay("1.54 kV/us").one("trv-values-disagree");
+        Bay::new().set("breaker", "OP rate of rise", "1.54 kV/us").silent("trv-values-disagree");
+    }
+
+    /// Below 100 kV the times of the tables are those of 1.5; with 1.3, and beyond the tables, nothing is told.
+    #[test]
+    fn silent_where_the_tables_are() {
+        let bay = at_36_kv("overhead lines", "S2").set("breaker", "T100 time t3", "90 us");
+        bay.one("trv-values-disagree");
+        bay.set("breaker", "first-pole-to-clear factor", "1.3").silent("trv-values-disagree");
+        let high =
+            |kv: &str| Bay::new().set("breaker", "rated voltage", kv).set("breaker", "T100 rate of rise", "1 kV/us");
+        high("800 kV").one("trv-values-disagree");
+        high("900 kV").silent("trv-values-disagree");
+    }
+
     #[test]
     fn rounding_agrees_and_severer_values_are_left_to_the_buyer() {
         Bay::new().set("breaker", "uc", "212 kV").silent("trv-values-disagree");

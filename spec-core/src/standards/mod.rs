@@ -31,7 +31,7 @@ pub use capacitive::{
 pub use cited::{Citation, OldWording, StandardScope, old_wordings, rating_structure, replacement_of};
 pub use cooling::altitude_cooling;
 pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration, usual_continuous_current};
-pub use earthing::{first_pole_factors, out_of_phase_factor};
+pub use earthing::{first_pole_factors, out_of_phase_factor, out_of_phase_first_pole};
 pub use endurance::{class_for_operations, operations_of_class};
 pub use gas_law::{CountsFrom, ForbiddenGases, GasLaw, gas_law, is_fluorinated};
 pub use insulation::{InsulationLevel, insulation_levels};
@@ -42,7 +42,7 @@ pub use line_side::{
 pub use making::{MakingCase, making_factor};
 pub use mechanical::{TerminalLoads, seismic_level, seismic_level_for, terminal_loads, zinc_coating};
 pub use operation::{OperatingSequence, break_times, operating_sequences};
-pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE};
+pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE, ReferenceTemperature};
 pub(crate) use short_circuit::{AtTime, asynchronous_decay, synchronous_decay};
 pub use short_circuit::{
     VoltageFactor, equivalent_frequency_share, generator_r_over_x, motor_r_over_x, voltage_factor,
@@ -54,9 +54,7 @@ pub use surroundings::{
 };
 pub use time_constants::{TimeConstantCase, TimeConstants};
 pub use trv_duties::{Duty, DutyRow, SystemClass, VoltageRange, duty_row, s1_time};
-pub use voltages::{
-    is_rated_voltage, nominal_as_rated, rated_at_or_above, rated_voltages, steps_between_voltages, usual_rated,
-};
+pub use voltages::{is_rated_voltage, rated_at_or_above, rated_voltages, steps_between_voltages, usual_rated};
 
 use serde::Deserialize;
 

@@ -175,7 +175,7 @@ fn told_once(assessments: &[Assessment]) -> Vec<(&Assessment, &Finding)> {
         let before = seen.clone();
         for finding in assessment.findings() {
             let place = assessment.at(finding.place);
-            let file = assessment.sources.file(place.file).map(|file| file.name.to_string());
+            let file = assessment.sources.file(place.file).map(|file| file.name.clone());
             let key = (file, place.span.start, place.span.end, finding.rule, finding.message.clone());
             if !before.contains(&key) {
                 told.push((assessment, finding.as_ref()));
@@ -198,7 +198,7 @@ fn summary(
 ) -> io::Result<()> {
     let counted = |count: usize, one: &str, many: &str| format!("{count} {}", if count == 1 { one } else { many });
     let names: BTreeSet<String> =
-        assessments.iter().flat_map(|a| a.sources.files()).map(|(_, file)| file.name.to_string()).collect();
+        assessments.iter().flat_map(|a| a.sources.files()).map(|(_, file)| file.name.clone()).collect();
     // A file that several assessments use counts once, and so do its breakers.
     let breakers: BTreeSet<(String, &str)> = assessments.iter().flat_map(breakers).collect();
     let open = |kind: FindingKind| told.iter().filter(|(_, f)| f.kind == kind && f.accepted.is_none()).count();
@@ -235,7 +235,7 @@ fn breakers(assessment: &Assessment) -> Vec<(String, &str)> {
         .of_kind(SheetKind::Breaker)
         .map(|sheet| {
             let place = assessment.at(sheet.heading);
-            let file = assessment.sources.file(place.file).map_or_else(String::new, |file| file.name.to_string());
+            let file = assessment.sources.file(place.file).map_or_else(String::new, |file| file.name.clone());
             (format!("{file}:{}", place.span.start), sheet.name.as_str())
         })
         .collect()

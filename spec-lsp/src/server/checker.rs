@@ -172,10 +172,10 @@ impl Documents {
         };
         let policy = Policy { today: crate::today(), ..settings };
         let mut result = assess(&self.assessor, policy, snapshot, name, before.as_deref())?;
-        if let (Ok(checked), Some(fault)) = (&mut result, fault) {
-            if let Some(finding) = unreadable(&checked.assessment, &fault) {
-                checked.assessment.add(finding);
-            }
+        if let (Ok(checked), Some(fault)) = (&mut result, fault)
+            && let Some(finding) = unreadable(&checked.assessment, &fault)
+        {
+            checked.assessment.add(finding);
         }
         let result = result.map(Arc::new);
         let mut state = self.lock();

@@ -149,14 +149,17 @@ impl Value {
     }
 }
 
+#[expect(clippy::unnecessary_wraps, reason = "what a choice ends with")]
 fn chosen(measure: Measure, working: impl Into<String>) -> Outcome {
     Ok(Chosen { value: Value::Measure(measure), working: working.into() })
 }
 
+#[expect(clippy::unnecessary_wraps, reason = "what a choice ends with")]
 fn word(word: &'static str, working: impl Into<String>) -> Outcome {
     Ok(Chosen { value: Value::Word(word), working: working.into() })
 }
 
+#[expect(clippy::unnecessary_wraps, reason = "what a choice ends with")]
 fn yes_no(yes: bool, working: impl Into<String>) -> Outcome {
     Ok(Chosen { value: Value::YesNo(yes), working: working.into() })
 }

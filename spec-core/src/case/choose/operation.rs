@@ -7,7 +7,7 @@ use crate::quantity::{Dimension, Measure, Physical, Time, significant};
 use crate::rules::timing::{hundreds, operations};
 use crate::rules::trv::{Network, network};
 use crate::sheet::Stated;
-use crate::standards::{VoltageRange, break_times, class_for_operations, operating_sequences};
+use crate::standards::{OperatingSequence, VoltageRange, break_times, class_for_operations, operating_sequences};
 
 pub(super) static CHOICES: &[Choice] = &[
     Choice::base(&breaker::RATED_OPERATING_SEQUENCE, sequence),
@@ -59,7 +59,7 @@ fn sequence(case: &Case<'_>) -> Outcome {
         .filter_map(|part| part.quantity::<Time>(&circuit::SECOND_RECLOSING_AFTER))
         .min_by(|a, b| a.value.si().total_cmp(&b.value.si()));
     // A scheme that recloses without a stated dead time is one of the usual rapid ones.
-    let rapid = operating_sequences().iter().map(|row| row.first()).reduce(|a, b| if b < a { b } else { a });
+    let rapid = operating_sequences().iter().map(OperatingSequence::first).reduce(|a, b| if b < a { b } else { a });
     let dead = if reclosing.any { reclosing.dead.map(|(time, _)| time).or(rapid) } else { None };
     let within = |pause: Time, limit: Option<Time>| limit.is_none_or(|limit| pause.si() <= limit.si() * (1.0 + 1e-4));
     let row = operating_sequences().iter().find(|row| {
