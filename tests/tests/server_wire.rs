@@ -163,7 +163,8 @@ fn edit(line: u32, from: u32, to: u32, text: &str) -> Value {
 
 #[tokio::test(flavor = "multi_thread")]
 async fn findings_come_with_severity_rule_place_and_repair() {
-    let mut client = Client::new().await;
+    let mut client = Client::start(None);
+    client.begin(json!({"textDocument": {"publishDiagnostics": {"dataSupport": true}}})).await;
     client.open(URI, BAY).await;
     let found = client.diagnostics(URI, Some(1)).await;
     let voltage = found.iter().find(|d| d["code"] == "rated-voltage-not-preferred").expect("the finding");

@@ -42,6 +42,16 @@ impl FindingKind {
         }
     }
 
+    /// So many of it, in words: `2 cautions`.
+    pub fn counted(self, count: usize) -> String {
+        let ending = match (count, self) {
+            (1, _) => "",
+            (_, Self::Excess) => "es",
+            _ => "s",
+        };
+        format!("{count} {}{ending}", self.word())
+    }
+
     /// Whether it blocks the gate where nothing else is said.
     pub const fn blocks(self) -> bool {
         matches!(self, Self::Contradiction | Self::Shortfall)

@@ -4,6 +4,7 @@
 //! to findings. The same texts answer `firstpole clause`, the reference page and the hover.
 
 use crate::case::Case;
+use crate::duty::Figure;
 use crate::finding::{Finding, FindingKind, Findings};
 use crate::particular::{Particular, breaker, site};
 use crate::quantity::{ElectricCurrent, Physical, Ratio, significant};
@@ -12,6 +13,7 @@ use crate::source::Place;
 
 pub mod auxiliary;
 pub mod bay_current;
+pub mod capacitive;
 pub mod climate;
 pub mod completeness;
 pub mod continuous_current;
@@ -22,18 +24,24 @@ pub mod excess;
 pub mod fault_duties;
 pub mod gas;
 pub mod gas_law;
+pub mod infeeds;
+pub mod inrush;
 pub mod insulation_details;
 pub mod insulation_site;
 pub mod making;
 pub mod mechanical;
+pub mod network_trv;
 pub mod policy;
 pub mod reading;
 pub mod sequence;
 pub mod several_breakers;
 pub mod short_circuit;
+#[cfg(test)]
+mod silence;
 pub mod special_faults;
 pub mod standards_cited;
 pub mod statements;
+pub mod surges;
 pub mod switching_special;
 #[cfg(test)]
 pub mod testing;
@@ -87,6 +95,13 @@ fn breaking_current<'a>(case: &'a Case<'_>) -> Option<Stated<'a, ElectricCurrent
     case.breaker.quantity(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT)
 }
 
+/// The infeeds that a figure rests on, told by the first of them; the working has them all.
+fn rests_on_infeeds<Q>(finding: &mut Finding, figure: &Figure<Q>) {
+    if let [first, others @ ..] = figure.working.infeeds.as_slice() {
+        finding.related(*first, format!("the first of {} infeeds that it follows from", others.len() + 1));
+    }
+}
+
 /// A count as it is shown: without the blank that stands where a unit would be.
 fn number(stated: &Stated<'_, Ratio>) -> String {
     significant(stated.value.si(), 6)
@@ -122,6 +137,7 @@ pub fn standard() -> Vec<&'static Rule> {
         insulation_details::ALL,
         continuous_current::ALL,
         bay_current::ALL,
+        infeeds::ALL,
         short_circuit::ALL,
         dc_component::ALL,
         fault_duties::ALL,
@@ -129,8 +145,12 @@ pub fn standard() -> Vec<&'static Rule> {
         thermal::ALL,
         earthing::ALL,
         trv::ALL,
+        network_trv::ALL,
         special_faults::ALL,
+        capacitive::ALL,
+        inrush::ALL,
         switching_special::ALL,
+        surges::ALL,
         sequence::ALL,
         times::ALL,
         timing::ALL,

@@ -19,6 +19,8 @@ pub struct Policy {
     pub time_constant_tolerance: f64,
     /// Relative difference up to which a fault level in MVA and one in kA agree.
     pub fault_level_tolerance: f64,
+    /// Relative difference up to which a time constant or X0/X1 may be more favourable than that of the infeeds.
+    pub infeed_constant_tolerance: f64,
     /// How far a making or peak current may lie below its factor times the breaking current.
     pub making_below: f64,
     /// How far it may lie above before it is an excess.
@@ -39,6 +41,8 @@ pub struct Policy {
     pub extremes: usize,
     /// Least ratio of a reduced lightning impulse level to the protective level of the arresters.
     pub lightning_margin: f64,
+    /// Length from which a line of 300 kV and above asks for a study of its switching overvoltage, m.
+    pub long_line: f64,
     /// Whether the tender counts as issued whatever its status says.
     pub issued: bool,
     /// The day on which deviations are held against their expiry; without one, none expires.
@@ -52,6 +56,7 @@ impl Default for Policy {
             dual_temperature_tolerance: 0.5,
             time_constant_tolerance: 0.05,
             fault_level_tolerance: 0.05,
+            infeed_constant_tolerance: 0.10,
             making_below: 0.02,
             making_above: 0.05,
             trv_tolerance: 0.02,
@@ -62,6 +67,7 @@ impl Default for Policy {
             service_life: 30.0,
             extremes: 5,
             lightning_margin: 1.2,
+            long_line: 200e3,
             issued: false,
             today: None,
         }
@@ -79,6 +85,8 @@ pub enum SettingForm {
     Time,
     /// A text with a time in years: `"30 years"`.
     Years,
+    /// A text with a length: `"200 km"`.
+    Length,
     /// A plain number.
     Ratio,
     /// A whole number.
@@ -146,6 +154,10 @@ settings! {
         "Difference up to which time constant, X/R and peak current of one network agree.";
     "fault-levels-agree-within" = fault_level_tolerance, Share, 0.0 to 0.2,
         "Difference up to which a fault level in MVA and one in kA agree.";
+    "infeeds-agree-within" = infeed_constant_tolerance, Share, 0.0 to 0.3,
+        "Difference up to which a time constant or X0/X1 may be more favourable than that of the infeeds.";
+    "long-line" = long_line, Length, 10e3 to 1000e3,
+        "Length from which a line of 300 kV and above asks for a study of its switching overvoltage.";
     "supervision-share" = supervision_share, Share, 0.01 to 0.5,
         "Share of the current at which a coil moves up to which it may carry a supervision current.";
 }
@@ -161,6 +173,7 @@ impl SettingForm {
             Self::Kelvin => "a difference in K in quotes, such as \"0.5 K\"",
             Self::Time => "a time with its unit in quotes, such as \"20 ms\"",
             Self::Years => "a time with its unit in quotes, such as \"30 years\"",
+            Self::Length => "a length with its unit in quotes, such as \"200 km\"",
             Self::Ratio => "a number, such as 1.2",
             Self::Count => "a whole number, such as 2",
         }
@@ -173,6 +186,7 @@ impl SettingForm {
             Self::Kelvin => format!("\"{} K\"", significant(value, 4)),
             Self::Time => format!("\"{} ms\"", significant(value * 1e3, 4)),
             Self::Years => format!("\"{} years\"", significant(value, 4)),
+            Self::Length => format!("\"{} km\"", significant(value * 1e-3, 4)),
             Self::Ratio | Self::Count => significant(value, 4),
         }
     }
@@ -182,6 +196,7 @@ impl SettingForm {
             Self::Share => Some(Dimension::Share),
             Self::Kelvin => Some(Dimension::TemperatureDifference),
             Self::Time | Self::Years => Some(Dimension::Time),
+            Self::Length => Some(Dimension::Length),
             Self::Ratio | Self::Count => None,
         }
     }

@@ -206,10 +206,7 @@ fn summary(
         .into_iter()
         .map(|kind| (open(kind), kind))
         .filter(|(count, _)| *count > 0)
-        .map(|(count, kind)| match kind {
-            FindingKind::Excess => counted(count, "excess", "excesses"),
-            _ => counted(count, kind.word(), &format!("{}s", kind.word())),
-        })
+        .map(|(count, kind)| kind.counted(count))
         .collect();
     if parts.is_empty() {
         parts.push("nothing found".to_owned());

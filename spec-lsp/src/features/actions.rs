@@ -16,7 +16,7 @@ pub struct Action<'a> {
     /// What it does.
     pub title: String,
     /// The finding that it mends.
-    pub finding: Option<&'a Finding>,
+    pub finding: Option<&'a Arc<Finding>>,
     /// The one thing to do about it.
     pub preferred: bool,
     /// The change.
@@ -26,11 +26,11 @@ pub struct Action<'a> {
 /// What can be done within a part of a file.
 pub fn actions(assessment: &Assessment, file: FileId, within: Span) -> Vec<Action<'_>> {
     let mut actions = Vec::new();
-    let here = |finding: &&Finding| {
+    let here = |finding: &&Arc<Finding>| {
         let at = assessment.at(finding.place);
         at.file == file && at.span.start <= within.end && within.start <= at.span.end
     };
-    let findings = || assessment.findings().iter().map(Arc::as_ref).filter(here);
+    let findings = || assessment.findings().iter().filter(here);
     for finding in findings() {
         for edit in &finding.edits {
             actions.push(Action {

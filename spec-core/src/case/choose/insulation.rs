@@ -2,10 +2,10 @@
 
 use super::{Choice, NotChosen, Outcome, chosen, known, measure, needs, no_value, regimes};
 use crate::case::Case;
+use crate::duty::stands_in_air;
 use crate::particular::{Particular, breaker, site, system};
 use crate::physics::insulation_site::{altitude_factor, creepage, needed_level};
 use crate::quantity::{Dimension, ElectricPotential, Length, Physical, Ratio, significant};
-use crate::rules::insulation_site::stands_in_air;
 use crate::standards::{
     InsulationLevel, PollutionClass, WithstandVoltage, altitude_exponent, insulation_levels, pollution_class,
 };

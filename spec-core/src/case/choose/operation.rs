@@ -2,9 +2,9 @@
 
 use super::{Choice, Chosen, Outcome, Value, chosen, known, measure, needs, no_value, word};
 use crate::case::Case;
+use crate::duty::hundreds;
 use crate::particular::{breaker, circuit, system};
 use crate::quantity::{Dimension, Measure, Physical, Time, significant};
-use crate::rules::timing::{hundreds, operations};
 use crate::rules::trv::{Network, network};
 use crate::sheet::Stated;
 use crate::standards::{OperatingSequence, VoltageRange, break_times, class_for_operations, operating_sequences};
@@ -92,7 +92,7 @@ const ENDURANCE_CLASSES_TO: f64 = 52e3;
 pub(super) fn classes(case: &Case<'_>) -> Outcome {
     const OFTEN: &str = "the operations per day of the circuits";
     let rated = known(case.rated_voltage(), "the rated voltage")?;
-    let operations = known(operations(case), OFTEN)?;
+    let operations = known(case.duty.switching.operations.as_ref(), OFTEN)?;
     let kinds: Option<Vec<&str>> =
         case.circuits.iter().map(|part| part.word(&circuit::KIND).map(|(kind, _)| kind)).collect();
     let kinds = known(kinds, "the kind of every circuit")?;
@@ -118,10 +118,10 @@ pub(super) fn classes(case: &Case<'_>) -> Outcome {
         let why = if any { "a circuit recloses" } else { "no circuit recloses" };
         classes.push(('E', if any { 2 } else { 1 }, why.to_owned()));
     }
-    let Some(grade) = class_for_operations(operations.count) else {
-        return no_value(format!("no class M covers {} operations over the life", hundreds(operations.count)));
+    let Some(grade) = class_for_operations(operations.value.value) else {
+        return no_value(format!("no class M covers {} operations over the life", hundreds(operations.value.value)));
     };
-    classes.push(('M', grade, operations.working));
+    classes.push(('M', grade, operations.working.to_string()));
     if VoltageRange::of(rated.value) == VoltageRange::Below100 && !case.is_generator_breaker() {
         let (network, _) = known(network(case), "the connection of the system (overhead lines or cables)")?;
         let (grade, why) = if network == Network::Lines { (2, "overhead lines") } else { (1, "cables") };

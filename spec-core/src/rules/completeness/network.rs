@@ -5,10 +5,12 @@ use super::{
     mentions_any,
 };
 use crate::case::Case;
+use crate::duty::{Infeeds, Off};
 use crate::finding::{Datum, Finding, FindingKind, Findings};
 use crate::particular::{Particular, SheetKind, breaker, circuit, system};
+use crate::physics::infeed::ZeroSequence;
 use crate::physics::short_circuit;
-use crate::quantity::{ElectricCurrent, ElectricPotential, Physical, Power, Ratio, significant};
+use crate::quantity::{ElectricCurrent, ElectricPotential, Frequency, Physical, Power, Ratio, significant};
 use crate::sheet::{Facts, Reading, Set, Sheet, Stated};
 
 /// A system with what it states and the breakers that stand on it.
@@ -16,8 +18,7 @@ struct Network<'a> {
     sheet: &'a Sheet,
     facts: &'a Facts,
     breakers: Vec<Apparatus<'a>>,
-    /// Whether infeeds are described, from which its currents follow.
-    has_infeeds: bool,
+    set: &'a Set,
 }
 
 /// The network of a sheet, where it is a system.
@@ -26,7 +27,7 @@ fn network_of<'a>(set: &'a Set, sheet: &'a Sheet) -> Option<Network<'a>> {
         sheet,
         facts: set.facts(sheet.id),
         breakers: breakers_of(set, "on", sheet.id),
-        has_infeeds: set.pointing_at(sheet.id, "into").next().is_some(),
+        set,
     })
 }
 
@@ -37,6 +38,18 @@ impl Network<'_> {
         let rated =
             || self.breakers.iter().find_map(|b| b.facts.quantity(&breaker::RATED_VOLTAGE)).map(|stated| stated.value);
         own(&system::HIGHEST_VOLTAGE).or_else(rated).or_else(|| own(&system::NOMINAL_VOLTAGE))
+    }
+
+    /// Its infeeds.
+    fn infeeds(&self) -> Infeeds {
+        let rated = || self.breakers.iter().find_map(|b| b.facts.quantity::<Frequency>(&breaker::RATED_FREQUENCY));
+        let frequency = self.facts.quantity(&system::FREQUENCY).or_else(rated).map(|stated| stated.value);
+        Infeeds::of(self.set, self.sheet.id, frequency)
+    }
+
+    /// Whether its currents follow from infeeds, or would if they said enough; of that another rule speaks.
+    fn has_infeeds(&self) -> bool {
+        self.set.pointing_at(self.sheet.id, "into").next().is_some() && self.infeeds().feeds()
     }
 
     /// Whether the three-phase level is stated, in amperes or as power.
@@ -91,7 +104,7 @@ fn duty(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
     let documented = |b: &Apparatus<'_>| b.facts.mentions(&breaker::SHORT_CIRCUIT_CURRENT_THROUGH_THE_BREAKER);
     if network.breakers.is_empty()
         || network.has_level()
-        || network.has_infeeds
+        || network.has_infeeds()
         || network.breakers.iter().all(documented)
     {
         return;
@@ -244,7 +257,7 @@ fn time_constant(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) 
     let level =
         [&system::SHORT_CIRCUIT_CURRENT, &system::FAULT_LEVEL].into_iter().find_map(|p| network.facts.statement(p));
     let Some(level) = level else { return };
-    if network.breakers.is_empty() || network.has_infeeds || mentions_any(network.facts, TIME_CONSTANT_BY) {
+    if network.breakers.is_empty() || mentions_any(network.facts, TIME_CONSTANT_BY) || network.has_infeeds() {
         return;
     }
     let message = format!(
@@ -280,7 +293,7 @@ const DISTRIBUTION_TO: f64 = 52e3;
 
 fn single_phase(set: &Set, sheet: &Sheet, policy: &Policy, findings: &mut Findings) {
     let Some(network) = network_of(set, sheet) else { return };
-    if network.has_infeeds || network.facts.mentions(&system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT) {
+    if network.facts.mentions(&system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT) || network.has_infeeds() {
         return;
     }
     // One that leaves its current to the duty gets what any other such one on the system gets.
@@ -367,6 +380,12 @@ fn neutral(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
     let currents = [&system::SHORT_CIRCUIT_CURRENT, &system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT];
     let by_currents = currents.iter().all(|current| network.facts.mentions(current));
     if by_currents || mentions_any(network.facts, EARTHING_BY) {
+        return;
+    }
+    // The infeeds tell the earthing, or infeed-incomplete tells what they lack for it.
+    let infeeds = network.infeeds();
+    let off = infeeds.is_off(Off::Earth) || infeeds.is_off(Off::Everything);
+    if off || infeeds.seen.as_ref().is_some_and(|seen| seen.infeed.zero() != ZeroSequence::Unknown) {
         return;
     }
     let asks: Vec<_> = network
