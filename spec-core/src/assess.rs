@@ -205,6 +205,11 @@ pub struct CaseSummary {
 }
 
 impl Assessment {
+    /// The thresholds that it was held against.
+    pub fn policy(&self) -> &Policy {
+        &self.memory.policy
+    }
+
     /// The findings, in the order of the text.
     pub fn findings(&self) -> &[Arc<Finding>] {
         &self.findings

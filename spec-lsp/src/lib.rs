@@ -4,6 +4,7 @@ mod commands;
 pub mod features;
 mod files;
 pub mod server;
+pub mod settings;
 mod show;
 
 use std::ffi::OsString;

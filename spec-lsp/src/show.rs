@@ -40,12 +40,16 @@ impl Look {
     }
 }
 
-/// Shows every finding of an assessment.
-pub fn findings(assessment: &Assessment, look: Look, out: &mut dyn Write) -> io::Result<()> {
+/// Shows findings, each of its assessment.
+pub fn findings<'a>(
+    findings: impl IntoIterator<Item = (&'a Assessment, &'a Finding)>,
+    look: Look,
+    out: &mut dyn Write,
+) -> io::Result<()> {
     let theme = if look.coloured { GraphicalTheme::unicode() } else { GraphicalTheme::unicode_nocolor() };
     let graphical = GraphicalReportHandler::new_themed(theme).with_width(WIDTH).with_links(false).without_cause_chain();
     let narrated = NarratableReportHandler::new();
-    for finding in assessment.findings() {
+    for (assessment, finding) in findings {
         let diagnostic = FindingDiagnostic::new(finding, assessment);
         let mut text = String::new();
         let rendered = if look.narrated {

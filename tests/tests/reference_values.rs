@@ -74,6 +74,12 @@ fn trv_from_100_kv() {
                 tally.printed(&row, column, value);
             }
         }
+        let (td, reached) = (found.td, found.delay_time());
+        tally.printed(&row, "td_min_us", td.0.si() * 1e6);
+        tally.printed(&row, "td_max_us", td.1.si() * 1e6);
+        tally.printed(&row, "u_prime_kV", found.delay_voltage().si() / 1e3);
+        tally.printed(&row, "t_prime_min_us", reached.0.si() * 1e6);
+        tally.printed(&row, "t_prime_max_us", reached.1.si() * 1e6);
         tally.printed(&row, "kpp", found.kpp);
         tally.printed(&row, "kaf", found.kaf);
         tally.printed(&row, "RRRV_kV_per_us", found.rate.si() / 1e9);
@@ -108,6 +114,9 @@ fn trv_below_100_kv_class_s1() {
         tally.printed(&row, "uc_kV", found.uc.si() / 1e3);
         tally.printed(&row, "t3_us", found.t3.expect("t3").si() * 1e6);
         tally.printed(&row, "RRRV_kV_per_us", found.rate.si() / 1e9);
+        tally.printed(&row, "td_us", found.td.0.si() * 1e6);
+        tally.printed(&row, "u_prime_kV", found.delay_voltage().si() / 1e3);
+        tally.printed(&row, "t_prime_us", found.delay_time().0.si() * 1e6);
         if row.maybe("t3_us_IEC56_1987").is_some() {
             // The old table had even values, 1 us from the present ones.
             let (got, expected) = (found.t3.expect("t3").si() * 1e6, row.number("t3_us_IEC56_1987"));
@@ -152,6 +161,12 @@ fn trv_below_100_kv_class_s2() {
         tally.near(&row, column, t3, row.number(column), tolerance, row.number(column));
         let (column, rate) = ("RRRV_unrounded_t3", found.rate.si() / 1e9);
         tally.near(&row, column, rate, row.number(column), rate * tolerance / t3 + row.rounding(column), rate);
+        tally.printed(&row, "u_prime_kV", found.delay_voltage().si() / 1e3);
+        // The delay and its end go with t3, and so does what rounding makes of them.
+        for (column, got) in [("td_us", found.td.0), ("t_prime_us", found.delay_time().0)] {
+            let (got, expected) = (got.si() * 1e6, row.number(column));
+            tally.near(&row, column, got, expected, got * tolerance / t3 + row.rounding(column), expected);
+        }
         for column in ["RRRV_t3_rounded_1us", "RRRV_memory"] {
             if let Some(expected) = row.maybe(column) {
                 let tolerance = row.rounding(column).max(0.005 * expected);

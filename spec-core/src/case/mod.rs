@@ -4,7 +4,8 @@
 mod choose;
 mod regime;
 
-pub(crate) use choose::needed_for;
+pub use choose::as_written;
+pub(crate) use choose::{NotChosen, why_open};
 
 pub use regime::Regimes;
 

@@ -7,6 +7,7 @@ use serde::Serialize;
 
 use crate::assess::Assessment;
 use crate::finding::{Acceptance, FindingKind};
+use crate::particular::SheetKind;
 use crate::source::{Place, Position};
 
 /// The whole document.
@@ -18,7 +19,7 @@ pub struct Document {
     summary: BTreeMap<&'static str, usize>,
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, PartialEq, Serialize)]
 struct JsonFinding {
     rule: &'static str,
     kind: FindingKind,
@@ -43,7 +44,7 @@ struct JsonFinding {
     edits: Vec<JsonEdit>,
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, PartialEq, Serialize)]
 struct JsonRelated {
     file: String,
     start: Position,
@@ -51,7 +52,7 @@ struct JsonRelated {
     message: String,
 }
 
-#[derive(Debug, Serialize)]
+#[derive(Debug, PartialEq, Serialize)]
 struct JsonEdit {
     title: String,
     file: String,
@@ -62,6 +63,9 @@ struct JsonEdit {
 
 #[derive(Debug, Serialize)]
 struct JsonCase {
+    /// Where the breaker stands, to tell one from another of the same name.
+    #[serde(skip)]
+    at: (String, u32),
     breaker: String,
     duty: BTreeMap<&'static str, Option<JsonFigure>>,
 }
@@ -120,7 +124,13 @@ impl Document {
         let cases = assessment
             .cases()
             .iter()
-            .map(|case| JsonCase {
+            .zip(assessment.set.of_kind(SheetKind::Breaker))
+            .map(|(case, sheet)| JsonCase {
+                at: {
+                    let place = assessment.at(sheet.heading);
+                    let file = assessment.sources.file(place.file);
+                    (file.map(|file| file.name.clone()).unwrap_or_default(), place.span.start)
+                },
                 breaker: case.breaker.clone(),
                 duty: case
                     .duty
@@ -136,10 +146,34 @@ impl Document {
                     .collect(),
             })
             .collect();
+        let mut document = Self { schema: 1, findings, cases, summary: BTreeMap::new() };
+        document.count();
+        document
+    }
+
+    /// Together with what another assessment found; what both tell, of a file that both use, stands once.
+    #[must_use]
+    pub fn and(mut self, other: Self) -> Self {
+        for finding in other.findings {
+            if !self.findings.contains(&finding) {
+                self.findings.push(finding);
+            }
+        }
+        for case in other.cases {
+            if !self.cases.iter().any(|known| known.at == case.at) {
+                self.cases.push(case);
+            }
+        }
+        self.count();
+        self
+    }
+
+    fn count(&mut self) {
+        let of = |kind| self.findings.iter().filter(|f| f.kind == kind && !f.accepted).count();
         let mut summary: BTreeMap<&'static str, usize> =
-            FindingKind::ALL.into_iter().map(|kind| (kind.word(), assessment.count(kind))).collect();
-        summary.insert("accepted", assessment.accepted());
-        Self { schema: 1, findings, cases, summary }
+            FindingKind::ALL.into_iter().map(|kind| (kind.word(), of(kind))).collect();
+        summary.insert("accepted", self.findings.iter().filter(|f| f.accepted).count());
+        self.summary = summary;
     }
 }
 

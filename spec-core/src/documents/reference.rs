@@ -4,7 +4,7 @@ use std::fmt::Write;
 
 use crate::particular::{self, Kind, Particular, SheetKind};
 use crate::quantity::{Dimension, units_of};
-use crate::rules;
+use crate::rules::{self, policy::SETTINGS};
 
 /// The page, as Markdown.
 pub fn page() -> String {
@@ -25,6 +25,7 @@ fn write_page(out: &mut String) -> std::fmt::Result {
         sheet(out, kind)?;
     }
     units(out)?;
+    settings(out)?;
     writeln!(out, "## Rules\n")?;
     writeln!(out, "| rule | kind | what must hold | compares | basis |")?;
     writeln!(out, "| --- | --- | --- | --- | --- |")?;
@@ -126,6 +127,27 @@ fn units(out: &mut String) -> std::fmt::Result {
     for dimension in Dimension::ALL {
         let units: Vec<&str> = units_of(dimension).map(|unit| unit.name).collect();
         writeln!(out, "| {} | {} |", dimension.word(), cell(&units.join(", ")))?;
+    }
+    writeln!(out)
+}
+
+fn settings(out: &mut String) -> std::fmt::Result {
+    writeln!(out, "## Settings\n")?;
+    writeln!(
+        out,
+        "Thresholds of the buyer, in the table `[policy]` of a file `firstpole.toml` beside the specification or in a folder above; \
+         the nearest file counts, alone. What it does not set keeps its default.\n"
+    )?;
+    writeln!(out, "| key | default | within | meaning |\n| --- | --- | --- | --- |")?;
+    for setting in SETTINGS {
+        writeln!(
+            out,
+            "| `{}` | `{}` | `{}` | {} |",
+            setting.key,
+            setting.default_written(),
+            setting.range_written().replace(" to ", "` to `"),
+            cell(setting.meaning)
+        )?;
     }
     writeln!(out)
 }

@@ -200,7 +200,7 @@ impl GasDuty {
                 );
             }
             Medium::Mixture(mixture) => {
-                let reference = ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE);
+                let reference = REFERENCE_TEMPERATURE.value();
                 let Ok(volume) = mixture.molar_volume(filling.pressure, reference) else { return };
                 self.mixture_state = mixture.flash(volume, t);
                 let share = self.mixture_state.as_ref().map_or(0.0, |state| 1.0 - state.vapour_fraction);
@@ -375,7 +375,7 @@ impl Medium {
         match self {
             Self::Pure(gas) => gas.pressure(density, t).ok(),
             Self::Mixture(mixture) => {
-                let reference = ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE);
+                let reference = REFERENCE_TEMPERATURE.value();
                 let two_phase = mixture.molar_volume(state.pressure, reference).ok().and_then(|v| mixture.flash(v, t));
                 two_phase.map(|state| state.pressure).or_else(|| mixture.pressure(density, t).ok())
             }
@@ -432,7 +432,7 @@ fn level_state(case: &Case<'_>, medium: &Medium, level: Level, particular: &Part
     let (reading, statement): (_, &Statement) = case.breaker.quantity_reading(particular)?;
     let pressure = reading.absolute()?.pressure;
     let reference = reading.at.and_then(|at| at.to::<ThermodynamicTemperature>());
-    let at = reference.unwrap_or_else(|| ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE));
+    let at = reference.unwrap_or_else(|| REFERENCE_TEMPERATURE.value());
     let density = medium.density(pressure, at).map(|density| {
         Figure::new(density, "p = rho R T (1 + B rho + C rho^2), solved for rho", medium.basis())
             .given("p", format!("{} MPa abs", significant(pressure.si() / 1e6, 4)))

@@ -81,15 +81,12 @@ fn grown(case: &Case<'_>, initial: Figure<ElectricCurrent>) -> Figure<ElectricCu
     let life: Option<Stated<'_, Time>> = case.tender.quantity(&tender::SERVICE_LIFE);
     let year =
         crate::quantity::canonical(crate::quantity::Dimension::SharePerYear).to_si(100.0).map_or(1.0, f64::recip);
-    let years = life.map_or(SERVICE_LIFE_YEARS, |l| l.value.si() / year);
+    let years = life.map_or(case.policy.service_life, |l| l.value.si() / year);
     let factor = (1.0 + a_second * year).powf(years);
     let figure =
         Figure::new(initial.value * factor, "Ik3 (1 + growth)^years", "buyer's growth, common practice, no source");
     figure.from("Ik3", &initial).given("growth", growth.measure.to_string()).given("years", significant(years, 3))
 }
-
-/// Years over which operations and growth are counted, unless the tender says otherwise (common practice, no source).
-const SERVICE_LIFE_YEARS: f64 = 30.0;
 
 fn largest(figures: &[(&'static str, Option<&Figure<ElectricCurrent>>)]) -> Option<Figure<ElectricCurrent>> {
     let known: Vec<_> = figures.iter().filter_map(|(symbol, figure)| figure.map(|f| (*symbol, f))).collect();

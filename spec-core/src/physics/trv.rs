@@ -1,7 +1,7 @@
 //! Prospective transient recovery voltage by the standard (IEC 62271-100, rules from memory; factors by the table of duties).
 
 use crate::quantity::{ElectricPotential, Physical, Time, VoltageRate};
-use crate::standards::{Duty, DutyRow, SystemClass, VoltageRange, duty_row, s1_time};
+use crate::standards::{Duty, DutyRow, SystemClass, VoltageRange, duty_row, out_of_phase_first_pole, s1_time};
 
 /// The envelope of a standard TRV.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -57,13 +57,33 @@ pub fn envelope(
     class: Option<SystemClass>,
 ) -> Option<Envelope> {
     let range = VoltageRange::of(rated);
+    if !is_tabulated(rated) {
+        return None;
+    }
+    // t3 below 100 kV is that of 1.5: what it is with another factor is in doubt.
+    if range == VoltageRange::Below100 && duty != Duty::OutOfPhase && (kpp - BELOW_100_FACTOR).abs() > 0.005 {
+        return None;
+    }
     let row = duty_row(range, class, duty)?;
     let factor = if duty == Duty::OutOfPhase { out_of_phase } else { row.own_kpp.unwrap_or(kpp) };
     let uc = crest(rated) * (row.kaf * factor);
     match range {
         VoltageRange::Below100 => two_parameters_below_100(rated, row, duty, class?, factor, uc),
+        // Out of phase the rate goes with the factor of the tables (1.54 or 1.67 kV/us), whatever the rating's own is.
+        VoltageRange::From100 if duty == Duty::OutOfPhase => {
+            from_100(rated, row, duty, out_of_phase_first_pole(out_of_phase)?, factor, uc, range)
+        }
         _ => from_100(rated, row, duty, kpp, factor, uc, range),
     }
+}
+
+/// The first-pole-to-clear factor of the tables below 100 kV (IEC 62271-100, from memory).
+const BELOW_100_FACTOR: f64 = 1.5;
+
+/// Whether a rated voltage is among those that the tables are for: up to 800 kV, and 1100 to 1200 kV (IEC 62271-100, from memory).
+fn is_tabulated(rated: ElectricPotential) -> bool {
+    let kv = rated.si() / 1e3 * (1.0 - 1e-6);
+    kv <= 800.0 || (1100.0 * (1.0 - 1e-5)..=1200.0).contains(&kv)
 }
 
 /// 100 kV and above: four parameters for T100, T60 and out of phase (u1 = 0.75 kpp E1, t1 = u1/rate), two for T30 and T10.
@@ -186,6 +206,16 @@ mod tests {
         assert!((op.rate.si() / 1e9 - 1.667).abs() < 0.001);
     }
 
+    /// The tables have 1.54 and 1.67 kV/us, whatever the first-pole-to-clear factor of the rating; other factors have no row.
+    #[test]
+    fn out_of_phase_with_a_factor_of_the_other_earthing() {
+        let rated = ElectricPotential::from_si(145e3);
+        let rate = |kpp: f64, op: f64| envelope(rated, kpp, op, Duty::OutOfPhase, None).map(|e| e.rate.si() / 1e9);
+        assert!((rate(1.3, 2.5).expect("a rate") - 1.667).abs() < 0.001);
+        assert!((rate(1.5, 2.0).expect("a rate") - 1.538).abs() < 0.001);
+        assert_eq!(rate(1.3, 2.2), None);
+    }
+
     /// td and t' in us, u' in kV, as in `tests/reference/standards/trv_*.csv` (rules from memory).
     #[test]
     fn delays() {
@@ -207,6 +237,20 @@ mod tests {
             assert!((found.delay_voltage().si() / 1e3 - voltage).abs() < 0.006, "{kv} {duty:?}");
             assert!(near(us(found.delay_time()), time), "{kv} {duty:?}: t' {:?}", us(found.delay_time()));
         }
+    }
+
+    #[test]
+    fn silent_beyond_the_tables() {
+        let t100 =
+            |kv: f64, kpp: f64, class| envelope(ElectricPotential::from_si(kv * 1e3), kpp, 2.0, Duty::T100, class);
+        for kv in [800.0, 1100.0, 1200.0] {
+            assert!(t100(kv, 1.3, None).is_some(), "{kv}");
+        }
+        for kv in [801.0, 1050.0, 1201.0] {
+            assert!(t100(kv, 1.3, None).is_none(), "{kv}");
+        }
+        assert!(t100(72.5, 1.5, Some(SystemClass::S2)).is_some());
+        assert!(t100(72.5, 1.3, Some(SystemClass::S2)).is_none());
     }
 
     #[test]

@@ -29,7 +29,7 @@ const ZERO_CELSIUS: f64 = 273.15;
 const DEGREE_SLACK: f64 = 1e-6;
 
 /// The temperature of a class such as `minus 25 outdoor`, K.
-fn class_temperature(class: &str) -> Option<f64> {
+pub(crate) fn class_temperature(class: &str) -> Option<f64> {
     class.split_whitespace().nth(1)?.parse::<f64>().ok().map(|n| ZERO_CELSIUS - n)
 }
 

@@ -242,7 +242,7 @@ fn thinner_mixture(gas: &GasDuty) -> Option<String> {
     if gas.name != "SF6" {
         return None;
     }
-    let reference = ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE);
+    let reference = REFERENCE_TEMPERATURE.value();
     (1..20).rev().map(|twentieths| 5 * twentieths).find_map(|percent| {
         let share = f64::from(percent) / 100.0;
         let mixture = GasMixture::of(&[("SF6", share), ("N2", 1.0 - share)])?;
@@ -376,7 +376,7 @@ fn dew_of(case: &Case<'_>, pressure: Pressure) -> Option<String> {
     let Some(Medium::Pure(_)) = &case.duty.gas.medium.as_ref().filter(|_| case.duty.gas.name == "SF6") else {
         return None;
     };
-    let density = sf6().density(pressure, ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE)).ok()?;
+    let density = sf6().density(pressure, REFERENCE_TEMPERATURE.value()).ok()?;
     sf6().dew_point(density).ok().map(|dew| celsius(dew.temperature))
 }
 

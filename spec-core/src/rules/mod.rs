@@ -31,6 +31,7 @@ pub mod insulation_site;
 pub mod making;
 pub mod mechanical;
 pub mod network_trv;
+pub mod policy;
 pub mod reading;
 pub mod sequence;
 pub mod several_breakers;
@@ -49,6 +50,8 @@ pub mod times;
 pub mod timing;
 pub mod trv;
 pub mod voltage;
+
+pub use policy::Policy;
 
 /// What one rule is.
 #[derive(Debug)]
@@ -82,69 +85,6 @@ pub enum Check {
     Both(fn(&Set, &Policy, &mut Findings), fn(&Set, &Sheet, &Policy, &mut Findings)),
     /// On each breaker with its duty.
     Case(fn(&Case<'_>, &mut Findings)),
-}
-
-/// Thresholds of policy. They belong to the buyer, so none of them is a literal in a rule.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Policy {
-    /// Relative difference up to which two units of one statement agree.
-    pub dual_tolerance: f64,
-    /// Difference up to which two statements of one temperature agree, K.
-    pub dual_temperature_tolerance: f64,
-    /// Relative difference up to which time constant, X/R and peak current of one network agree.
-    pub time_constant_tolerance: f64,
-    /// Relative difference up to which a fault level in MVA and one in kA agree.
-    pub fault_level_tolerance: f64,
-    /// Relative difference up to which a time constant or X0/X1 may be more favourable than that of the infeeds.
-    pub infeed_constant_tolerance: f64,
-    /// How far a making or peak current may lie below its factor times the breaking current.
-    pub making_below: f64,
-    /// How far it may lie above before it is an excess.
-    pub making_above: f64,
-    /// How far a stated TRV value may lie off the standard's.
-    pub trv_tolerance: f64,
-    /// Steps of the preferred series above the duty from which a rating is an excess.
-    pub excess_steps: usize,
-    /// Share of the current at which a coil moves up to which it may carry a supervision current.
-    pub supervision_share: f64,
-    /// Reserve between relay plus break time and the critical clearing time, s.
-    pub clearing_margin: f64,
-    /// Years over which operations are counted where the tender states no service life.
-    pub service_life: f64,
-    /// Extreme demands upon one breaker from which they are told together.
-    pub extremes: usize,
-    /// Least ratio of a reduced lightning impulse level to the protective level of the arresters.
-    pub lightning_margin: f64,
-    /// Length from which a line of 300 kV and above asks for a study of its switching overvoltage, m.
-    pub long_line: f64,
-    /// Whether the tender counts as issued whatever its status says.
-    pub issued: bool,
-    /// The day on which deviations are held against their expiry; without one, none expires.
-    pub today: Option<crate::sheet::Date>,
-}
-
-impl Default for Policy {
-    fn default() -> Self {
-        Self {
-            dual_tolerance: 0.01,
-            dual_temperature_tolerance: 0.5,
-            time_constant_tolerance: 0.05,
-            fault_level_tolerance: 0.05,
-            infeed_constant_tolerance: 0.10,
-            making_below: 0.02,
-            making_above: 0.05,
-            trv_tolerance: 0.02,
-            excess_steps: 2,
-            supervision_share: 0.1,
-            clearing_margin: 0.020,
-            service_life: 30.0,
-            extremes: 5,
-            lightning_margin: 1.2,
-            long_line: 200e3,
-            issued: false,
-            today: None,
-        }
-    }
 }
 
 /// Relative slack below which two values count as equal: printed digits, not physics.

@@ -25,6 +25,9 @@ macro_rules! reading_rules {
 reading_rules! {
     FILE_UNREADABLE = "file-unreadable", Contradiction, "A file can be read, is UTF-8, and is not too large.",
         "The file is left out and the others are still checked. Write it as UTF-8, under 8 MiB, with rights to read it.";
+    SETTINGS_UNREADABLE = "settings-unreadable", Contradiction, "The file of settings can be read, and each setting makes sense.",
+        "firstpole.toml is looked for beside the specification and in the folders above; the nearest one counts. An editor goes on \
+         with the defaults; the command line checks nothing with thresholds that nobody meant, and ends with 2.";
     UNREADABLE_LINE = "unreadable-line", Contradiction, "A line is a heading, a particular, or a comment.",
         "Only this line is left out; everything else is still read and checked. A particular is written LABEL: VALUE.";
     UNREADABLE_VALUE = "unreadable-value", Contradiction, "A value is written in the form that its label asks for.",

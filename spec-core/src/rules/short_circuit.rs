@@ -120,42 +120,45 @@ fn decayed_basis(case: &Case<'_>, findings: &mut Findings) {
         .beside(delay.statement, "its delay");
 }
 
-/// The reserve that the tender's own policy asks for is there.
+/// The reserve that the buyer's policy asks for is there.
 pub static SHORT_CIRCUIT_MARGIN: Rule = Rule {
     name: "short-circuit-margin",
     title: "The reserve between duty and rated breaking current is what the buyer's policy asks for.",
     kind: FindingKind::Caution,
-    basis: "the buyer's policy, as the tender states it",
+    basis: "the buyer's policy, as the tender or the settings state it",
     formula: "(Isc - Ik'')/Isc >= margin",
-    explanation: "Only where the tender states a short-circuit margin. A rating below the duty is a shortfall of its own and is not \
-                  told again.",
+    explanation: "Only where the tender states a short-circuit margin, or the settings do; the tender's own counts first. A rating \
+                  below the duty is a shortfall of its own and is not told again.",
     check: Check::Case(margin),
 };
 
 fn margin(case: &Case<'_>, findings: &mut Findings) {
-    let (Some(rated), Some(duty), Some(policy)) = (
-        breaking_current(case),
-        case.duty.breaking_duty.as_ref(),
-        case.tender.quantity::<Ratio>(&tender::SHORT_CIRCUIT_MARGIN),
-    ) else {
-        return;
-    };
-    let reserve = 1.0 - duty.value.si() / rated.value.si();
-    if reserve < 0.0 || reserve >= policy.value.value - EQUAL {
+    let (Some(rated), Some(duty)) = (breaking_current(case), case.duty.breaking_duty.as_ref()) else { return };
+    let stated = case.tender.quantity::<Ratio>(&tender::SHORT_CIRCUIT_MARGIN);
+    // A margin of the tender that could not be read is no margin of the settings.
+    if stated.is_none() && case.tender.mentions(&tender::SHORT_CIRCUIT_MARGIN) {
         return;
     }
-    let needed = ElectricCurrent::from_si(duty.value.si() / (1.0 - policy.value.value));
+    let share = stated.map_or(case.policy.short_circuit_margin, |margin| margin.value.value);
+    let reserve = 1.0 - duty.value.si() / rated.value.si();
+    if reserve < 0.0 || reserve >= share - EQUAL {
+        return;
+    }
+    let needed = ElectricCurrent::from_si(duty.value.si() / (1.0 - share));
+    let (who, asked) =
+        stated.map_or_else(|| ("the settings ask", percent(share)), |m| ("the tender asks", m.measure.to_string()));
     let message = format!(
-        "the reserve of {} over {} is {}, and the tender asks for {}",
+        "the reserve of {} over {} is {}, and {who} for {asked}",
         rated.measure,
         rated.like(duty.value),
-        percent(reserve),
-        policy.measure
+        percent(reserve)
     );
     let finding = findings.add(&SHORT_CIRCUIT_MARGIN, rated.place(), message);
-    finding.label("less reserve than asked for").stated(percent(reserve)).needed(&policy.measure);
+    finding.label("less reserve than asked for").stated(percent(reserve)).needed(asked);
     finding.working(format!("(Isc - Ik'')/Isc = ({} - {})/{}", rated.measure, rated.like(duty.value), rated.measure));
-    finding.beside(policy.statement, "the buyer's policy");
+    if let Some(stated) = stated {
+        finding.beside(stated.statement, "the buyer's policy");
+    }
     if let Some(value) = series(case).at_or_above(needed) {
         finding.replace_by(rated.like(value));
     }
@@ -257,6 +260,7 @@ fn fault_level(case: &Case<'_>, findings: &mut Findings) {
 #[cfg(test)]
 mod tests {
     use crate::finding::FindingKind;
+    use crate::rules::Policy;
     use crate::rules::testing::Bay;
 
     const ISC: &str = "rated short-circuit breaking current";
@@ -313,6 +317,22 @@ mod tests {
         // Without its time the decayed current does not count.
         bay.clone().without("system", "minimum time delay").one("breaking-current-below-duty");
         Bay::new().silent("decayed-current-basis");
+    }
+
+    #[test]
+    fn the_margin_of_the_settings() {
+        let policy = Policy { short_circuit_margin: 0.1, ..Policy::default() };
+        let found = |bay: Bay| {
+            let findings = bay.findings_with(policy.clone()).into_iter();
+            findings.filter(|f| f.rule == "short-circuit-margin").map(|f| f.message).collect::<Vec<_>>()
+        };
+        let told = found(Bay::new());
+        assert!(told.len() == 1 && told[0].contains("the settings ask for 10 %"), "{told:?}");
+        assert!(found(Bay::new().set("system", "short-circuit current", "28.35 kA")).is_empty());
+        // The tender's own counts, and one that is left open is not replaced.
+        for own in ["5 %", "later"] {
+            assert!(found(Bay::new().set("tender", "short-circuit margin", own)).is_empty(), "{own}");
+        }
     }
 
     #[test]

@@ -1,7 +1,7 @@
 //! Rules on single statements: said twice, in two units, without a basis, left open, out of order or of size.
 
 use super::{Check, EQUAL, Policy, Rule};
-use crate::case::{Case, needed_for};
+use crate::case::{Case, NotChosen, why_open};
 use crate::finding::{FindingKind, Findings};
 use crate::particular::{Kind, Limit, Particular, SheetKind, Tail, breaker, site, tender};
 use crate::quantity::{Dimension, Measure, Physical, Qualifier, ThermodynamicTemperature};
@@ -439,11 +439,14 @@ pub static FROM_DUTY_OPEN: Rule = Rule {
 fn from_duty_open(case: &Case<'_>, findings: &mut Findings) {
     for statement in case.breaker.statements().iter().filter(|s| s.reading == Reading::FromDuty) {
         let label = statement.particular.label;
-        let (message, advice) = match needed_for(statement.particular) {
-            Some(needed) => (
+        let (message, advice) = match why_open(case, statement.particular) {
+            Some(NotChosen::Needs(what)) => (
                 format!("{label} cannot be chosen: the duty does not say enough"),
-                format!("it needs {needed}; or state the value"),
+                format!("it needs {what}; or state the value"),
             ),
+            Some(NotChosen::NoValue(why)) => {
+                (format!("{label} cannot be chosen: {why}"), "state the value, or leave the line out".to_owned())
+            }
             None => (format!("{label} is not chosen from the duty yet"), "state the value".to_owned()),
         };
         findings.add(&FROM_DUTY_OPEN, statement.value, message).label("no value").advice(advice);
@@ -559,7 +562,8 @@ mod tests {
         let open = Bay::new().set("breaker", ISC, "from duty").without("system", "short-circuit current");
         let open = open.without("system", "single-phase short-circuit current");
         assert!(open.one("from-duty-open").advice.expect("advice").contains("short-circuit current of the system"));
-        Bay::new().set("breaker", "T100 TRV peak", "from duty").one("from-duty-open");
+        Bay::new().set("breaker", "rated filling pressure", "from duty").one("from-duty-open");
+        Bay::new().set("breaker", "T100 TRV peak", "from duty").silent("from-duty-open");
         Bay::new().silent("from-duty-open");
     }
 

@@ -28,14 +28,17 @@ pub static TRV_CLASS: Rule = Rule {
     check: Check::Case(class),
 };
 
+/// What kind of network leaves the busbar.
 #[derive(Clone, Copy, PartialEq)]
-enum Network {
+pub(crate) enum Network {
+    /// Overhead lines.
     Lines,
+    /// Cables.
     Cables,
 }
 
 /// What leaves the busbar, and where that is said.
-fn network<'a>(case: &'a Case<'_>) -> Option<(Network, &'a Statement)> {
+pub(crate) fn network<'a>(case: &'a Case<'_>) -> Option<(Network, &'a Statement)> {
     if let Some((word, statement)) = case.system.word(&system::CONNECTION) {
         return match word {
             "overhead lines" | "overhead lines and cables" => Some((Network::Lines, statement)),
@@ -283,6 +286,29 @@ mod tests {
         assert_eq!(finding.edits[0].text, "249 kV");
         Bay::new().set("breaker", "uc", "215 kV").silent("trv-values-disagree");
         Bay::new().set("breaker", "uc", "249 kV").one("trv-values-disagree");
+    }
+
+    /// Out of phase the tables have 1.54 and 1.67 kV/us, whatever the first-pole-to-clear factor.
+    #[test]
+    fn out_of_phase_of_the_other_earthing() {
+        let bay = |rate: &str| {
+            Bay::new().set("breaker", "out-of-phase voltage factor", "2.5").set("breaker", "OP rate of rise", rate)
+        };
+        bay("1.67 kV/us").silent("trv-values-disagree");
+        bay("1.54 kV/us").one("trv-values-disagree");
+        Bay::new().set("breaker", "OP rate of rise", "1.54 kV/us").silent("trv-values-disagree");
+    }
+
+    /// Below 100 kV the times of the tables are those of 1.5; with 1.3, and beyond the tables, nothing is told.
+    #[test]
+    fn silent_where_the_tables_are() {
+        let bay = at_36_kv("overhead lines", "S2").set("breaker", "T100 time t3", "90 us");
+        bay.one("trv-values-disagree");
+        bay.set("breaker", "first-pole-to-clear factor", "1.3").silent("trv-values-disagree");
+        let high =
+            |kv: &str| Bay::new().set("breaker", "rated voltage", kv).set("breaker", "T100 rate of rise", "1 kV/us");
+        high("800 kV").one("trv-values-disagree");
+        high("900 kV").silent("trv-values-disagree");
     }
 
     #[test]

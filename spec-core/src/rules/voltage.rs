@@ -8,7 +8,7 @@ use crate::particular::{Particular, breaker, site, system};
 use crate::quantity::{ElectricPotential, Frequency, Length, Physical};
 use crate::sheet::Stated;
 use crate::standards::{
-    InsulationLevel, insulation_levels, is_rated_voltage, nominal_as_rated, rated_at_or_above, steps_between_voltages,
+    InsulationLevel, insulation_levels, is_rated_voltage, rated_at_or_above, steps_between_voltages, usual_rated,
 };
 
 /// The rules of this subject.
@@ -130,7 +130,7 @@ fn not_preferred(case: &Case<'_>, findings: &mut Findings) {
     if is_rated_voltage(rated.value, &families) {
         return;
     }
-    let meant = nominal_as_rated(rated.value);
+    let meant = usual_rated(rated.value);
     let needed = meant.or_else(|| rated_at_or_above(rated.value, &families));
     let message = match meant {
         Some(meant) => {

@@ -17,6 +17,7 @@ mod insulation;
 mod line_side;
 mod making;
 mod mechanical;
+mod operation;
 mod pressure;
 mod short_circuit;
 mod supply;
@@ -35,7 +36,7 @@ pub use cooling::altitude_cooling;
 pub use currents::{
     PreferredCurrents, RatingSeries, durations, is_duration, preferred_number, usual_continuous_current,
 };
-pub use earthing::{first_pole_factors, out_of_phase_factor};
+pub use earthing::{first_pole_factors, out_of_phase_factor, out_of_phase_first_pole};
 pub use endurance::{class_for_operations, operations_of_class};
 pub use gas_law::{CountsFrom, ForbiddenGases, GasLaw, gas_law, is_fluorinated};
 pub use generator_breaker::{GeneratorBreakerTrv, GeneratorFault, generator_breaker_trv};
@@ -46,21 +47,20 @@ pub use line_side::{
 };
 pub use making::{MakingCase, making_factor};
 pub use mechanical::{TerminalLoads, seismic_level, seismic_level_for, terminal_loads, zinc_coating};
-pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE};
+pub use operation::{OperatingSequence, break_times, operating_sequences};
+pub use pressure::{GAUGE_REFERENCE, GaugeReference, REFERENCE_TEMPERATURE, ReferenceTemperature};
 pub(crate) use short_circuit::{AtTime, asynchronous_decay, synchronous_decay};
 pub use short_circuit::{
     VoltageFactor, equivalent_frequency_share, generator_r_over_x, motor_r_over_x, voltage_factor,
 };
 pub use supply::{Device, Supply, coil_range, is_supply_voltage, supply_voltages};
 pub use surroundings::{
-    PollutionClass, TemperatureLimit, WithstandVoltage, altitude_exponent, pollution_class, pollution_classes,
-    temperature_limit, temperature_limits,
+    PollutionClass, TemperatureLimit, WithstandVoltage, altitude_exponent, ice_classes, pollution_class,
+    pollution_classes, temperature_limit, temperature_limits,
 };
 pub use time_constants::{TimeConstantCase, TimeConstants};
 pub use trv_duties::{Duty, DutyRow, SystemClass, VoltageRange, duty_row, s1_time};
-pub use voltages::{
-    is_rated_voltage, nominal_as_rated, rated_at_or_above, rated_voltages, steps_between_voltages, usual_rated,
-};
+pub use voltages::{is_rated_voltage, rated_at_or_above, rated_voltages, steps_between_voltages, usual_rated};
 
 use serde::Deserialize;
 

@@ -5,7 +5,7 @@ use std::sync::LazyLock;
 use serde::Deserialize;
 
 use super::{same, table};
-use crate::quantity::{LengthPerVoltage, Physical, TemperatureInterval, ThermodynamicTemperature};
+use crate::quantity::{Length, LengthPerVoltage, Physical, TemperatureInterval, ThermodynamicTemperature};
 
 /// A withstand voltage, for the altitude.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Deserialize)]
@@ -85,6 +85,11 @@ impl TemperatureLimit {
     }
 }
 
+#[derive(Clone, Debug, Deserialize)]
+struct IceRow {
+    mm: f64,
+}
+
 /// 0 degC in kelvin.
 const CELSIUS: f64 = 273.15;
 
@@ -94,6 +99,7 @@ static POLLUTION: LazyLock<Vec<PollutionClass>> =
     LazyLock::new(|| table::rows(include_str!("../../data/pollution.csv")));
 static LIMITS: LazyLock<Vec<TemperatureLimit>> =
     LazyLock::new(|| table::rows(include_str!("../../data/temperature_limits.csv")));
+static ICE: LazyLock<Vec<IceRow>> = LazyLock::new(|| table::rows(include_str!("../../data/ice_classes.csv")));
 
 /// The exponent m of the altitude factor. IEC 62271-1:2011 2.3.2.
 pub fn altitude_exponent(voltage: WithstandVoltage) -> Option<f64> {
@@ -110,6 +116,11 @@ pub fn pollution_class(letter: &str) -> Option<&'static PollutionClass> {
     POLLUTION.iter().find(|row| row.class.eq_ignore_ascii_case(letter.trim()))
 }
 
+/// The classes of ice coating, thinnest first. IEC 62271-1 4.1.
+pub fn ice_classes() -> impl Iterator<Item = Length> {
+    ICE.iter().map(|row| Length::from_si(row.mm * 1e-3))
+}
+
 /// The limits of temperature.
 pub fn temperature_limits() -> &'static [TemperatureLimit] {
     &LIMITS
@@ -124,10 +135,11 @@ pub fn temperature_limit(
 }
 
 #[cfg(test)]
-pub(super) fn lengths() -> [(&'static str, &'static str, usize); 3] {
+pub(super) fn lengths() -> [(&'static str, &'static str, usize); 4] {
     [
         ("altitude exponents", include_str!("../../data/altitude_exponents.csv"), EXPONENTS.len()),
         ("pollution", include_str!("../../data/pollution.csv"), POLLUTION.len()),
+        ("ice classes", include_str!("../../data/ice_classes.csv"), ICE.len()),
         ("temperature limits", include_str!("../../data/temperature_limits.csv"), LIMITS.len()),
     ]
 }

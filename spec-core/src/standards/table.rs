@@ -62,6 +62,7 @@ mod tests {
             .chain(super::super::capacitive::lengths())
             .chain(super::super::surroundings::lengths())
             .chain(super::super::earthing::lengths())
+            .chain(super::super::operation::lengths())
         {
             let mut reader = csv::Reader::from_reader(text.as_bytes());
             let head = reader.headers().expect(name).clone();

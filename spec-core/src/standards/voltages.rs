@@ -72,17 +72,12 @@ pub fn steps_between_voltages(from: ElectricPotential, to: ElectricPotential, re
     at(to.si()) - at(from.si())
 }
 
-/// The rated voltage that usually goes with a nominal voltage (110 kV: 123 kV).
+/// The rated voltage that usually goes with a nominal voltage (110 kV: 123 kV), and is meant where somebody wrote the nominal one.
 pub fn usual_rated(nominal: ElectricPotential) -> Option<ElectricPotential> {
     NOMINAL
         .iter()
         .find(|row| same(row.nominal_kv * 1e3, nominal.si()))
         .map(|row| ElectricPotential::from_si(row.rated_kv * 1e3))
-}
-
-/// The rated voltage that is meant, where somebody wrote a nominal voltage for it.
-pub fn nominal_as_rated(voltage: ElectricPotential) -> Option<ElectricPotential> {
-    usual_rated(voltage)
 }
 
 #[cfg(test)]

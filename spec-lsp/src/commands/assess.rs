@@ -1,13 +1,16 @@
 //! `firstpole assess PATH...`: checks files and folders, and prints the findings.
 
+use std::collections::BTreeSet;
 use std::io::{self, Write};
 use std::path::PathBuf;
 
 use firstpole_core::documents::json;
+use firstpole_core::particular::SheetKind;
 use firstpole_core::rules::Policy;
-use firstpole_core::{Assessment, Assessor, Date, FindingKind};
+use firstpole_core::{Assessment, Assessor, Date, Finding, FindingKind};
 
-use crate::files::{self, Gathered};
+use crate::files::{self, FolderLoader, Gathered};
+use crate::settings::{self, SettingsFault};
 use crate::show::{Colour, Look, findings};
 use crate::{BLOCKED, NOT_RUN, PASSED, today};
 
@@ -88,57 +91,149 @@ pub fn run(arguments: &Arguments, out: &mut dyn Write, err: &mut dyn Write) -> i
         writeln!(err, "firstpole: no specification (*.cbspec) was found")?;
         return Ok(NOT_RUN);
     }
-    let Gathered { sources, loader, faults, missing } = gathered;
-    let policy = Policy { issued: arguments.issued, today: arguments.on.or_else(today), ..Policy::default() };
-    let mut assessment = Assessor::standard().with_policy(policy).with_loader(loader).assess(&sources);
-    for fault in faults {
-        assessment.add(fault);
-    }
+    let missing = gathered.missing.clone();
+    let assessments = match assessed(gathered, arguments) {
+        Ok(assessments) => assessments,
+        Err(faults) => {
+            // Thresholds that nobody meant would give verdicts that nobody can rely on.
+            for fault in faults {
+                writeln!(err, "firstpole: {fault}")?;
+            }
+            writeln!(err, "firstpole: nothing was checked, since the settings cannot be read")?;
+            return Ok(NOT_RUN);
+        }
+    };
     let gate: Vec<FindingKind> = if arguments.block_on.is_empty() {
         FindingKind::ALL.into_iter().filter(|kind| kind.blocks()).collect()
     } else {
         arguments.block_on.iter().filter_map(|gate| gate.kind()).collect()
     };
+    let told = told_once(&assessments);
     match arguments.form {
         Form::Text => {
-            findings(&assessment, Look::new(arguments.colour, arguments.narrated), out)?;
-            summary(&assessment, &gate, out)?;
+            findings(told.iter().copied(), Look::new(arguments.colour, arguments.narrated), out)?;
+            summary(&assessments, &told, &gate, out)?;
         }
         Form::Json => {
-            serde_json::to_writer_pretty(&mut *out, &json::Document::of(&assessment))?;
+            let documents = assessments.iter().map(json::Document::of);
+            if let Some(document) = documents.reduce(json::Document::and) {
+                serde_json::to_writer_pretty(&mut *out, &document)?;
+            }
             writeln!(out)?;
         }
     }
     Ok(if !missing.is_empty() {
         NOT_RUN
-    } else if assessment.blocks(&gate) {
+    } else if blocks(&told, &gate) {
         BLOCKED
     } else {
         PASSED
     })
 }
 
-fn summary(assessment: &Assessment, gate: &[FindingKind], out: &mut dyn Write) -> io::Result<()> {
+/// Assesses what was gathered: together what has the same settings, each specification by its nearest file of settings.
+fn assessed(gathered: Gathered, arguments: &Arguments) -> Result<Vec<Assessment>, Vec<SettingsFault>> {
+    let mut groups: Vec<(Policy, Vec<PathBuf>)> = Vec::new();
+    let mut wrong: Vec<SettingsFault> = Vec::new();
+    for (_, file) in gathered.sources.files() {
+        let path = PathBuf::from(file.name.as_str());
+        match settings::policy_for(&path) {
+            Ok(policy) => match groups.iter_mut().find(|(known, _)| *known == policy) {
+                Some((_, paths)) => paths.push(path),
+                None => groups.push((policy, vec![path])),
+            },
+            Err(fault) if wrong.contains(&fault) => {}
+            Err(fault) => wrong.push(fault),
+        }
+    }
+    if !wrong.is_empty() {
+        return Err(wrong);
+    }
+    let assess = |policy: Policy, gathered: Gathered, loader: FolderLoader| {
+        let policy = Policy { issued: arguments.issued, today: arguments.on.or_else(today), ..policy };
+        let mut assessment = Assessor::standard().with_policy(policy).with_loader(loader).assess(&gathered.sources);
+        for fault in gathered.faults {
+            assessment.add(fault);
+        }
+        assessment
+    };
+    let loader = gathered.loader.clone();
+    match <[_; 1]>::try_from(groups) {
+        Ok([(policy, _)]) => Ok(vec![assess(policy, gathered, loader)]),
+        Err(groups) => Ok(groups
+            .into_iter()
+            .map(|(policy, paths)| assess(policy, files::gather(&paths, arguments.below.as_deref()), loader.clone()))
+            .collect()),
+    }
+}
+
+/// Every finding; what several assessments tell of a file that they all use stands once.
+fn told_once(assessments: &[Assessment]) -> Vec<(&Assessment, &Finding)> {
+    let mut seen = BTreeSet::new();
+    let mut told = Vec::new();
+    for assessment in assessments {
+        let before = seen.clone();
+        for finding in assessment.findings() {
+            let place = assessment.at(finding.place);
+            let file = assessment.sources.file(place.file).map(|file| file.name.clone());
+            let key = (file, place.span.start, place.span.end, finding.rule, finding.message.clone());
+            if !before.contains(&key) {
+                told.push((assessment, finding.as_ref()));
+            }
+            seen.insert(key);
+        }
+    }
+    told
+}
+
+fn blocks(told: &[(&Assessment, &Finding)], gate: &[FindingKind]) -> bool {
+    told.iter().any(|(_, finding)| finding.blocks(gate))
+}
+
+fn summary(
+    assessments: &[Assessment],
+    told: &[(&Assessment, &Finding)],
+    gate: &[FindingKind],
+    out: &mut dyn Write,
+) -> io::Result<()> {
     let counted = |count: usize, one: &str, many: &str| format!("{count} {}", if count == 1 { one } else { many });
-    let files = assessment.sources.files().count();
+    let names: BTreeSet<String> =
+        assessments.iter().flat_map(|a| a.sources.files()).map(|(_, file)| file.name.clone()).collect();
+    // A file that several assessments use counts once, and so do its breakers.
+    let breakers: BTreeSet<(String, &str)> = assessments.iter().flat_map(breakers).collect();
+    let open = |kind: FindingKind| told.iter().filter(|(_, f)| f.kind == kind && f.accepted.is_none()).count();
     let mut parts: Vec<String> = FindingKind::ALL
         .into_iter()
-        .map(|kind| (assessment.count(kind), kind))
+        .map(|kind| (open(kind), kind))
         .filter(|(count, _)| *count > 0)
         .map(|(count, kind)| kind.counted(count))
         .collect();
     if parts.is_empty() {
         parts.push("nothing found".to_owned());
     }
-    if assessment.accepted() > 0 {
-        parts.push(format!("{} accepted", assessment.accepted()));
+    let accepted = told.iter().filter(|(_, finding)| finding.accepted.is_some()).count();
+    if accepted > 0 {
+        parts.push(format!("{accepted} accepted"));
     }
-    let verdict = if assessment.blocks(gate) { "blocked" } else { "passed" };
+    let verdict = if blocks(told, gate) { "blocked" } else { "passed" };
     writeln!(
         out,
         "{}, {}: {}: {verdict}",
-        counted(files, "file", "files"),
-        counted(assessment.cases().len(), "breaker", "breakers"),
+        counted(names.len(), "file", "files"),
+        counted(breakers.len(), "breaker", "breakers"),
         parts.join(", ")
     )
+}
+
+/// The breakers of an assessment, each with its place in its file.
+fn breakers(assessment: &Assessment) -> Vec<(String, &str)> {
+    assessment
+        .set
+        .of_kind(SheetKind::Breaker)
+        .map(|sheet| {
+            let place = assessment.at(sheet.heading);
+            let file = assessment.sources.file(place.file).map_or_else(String::new, |file| file.name.clone());
+            (format!("{file}:{}", place.span.start), sheet.name.as_str())
+        })
+        .collect()
 }

@@ -1,12 +1,11 @@
 //! Hints in the text: what `from duty` chose, and values that follow from a line.
 
-use firstpole_core::case::Case;
+use firstpole_core::case::{Case, as_written};
 use firstpole_core::duty::{NamedFigure, celsius, percent};
 use firstpole_core::particular::{Particular, SheetKind, breaker, circuit, system};
 use firstpole_core::quantity::{
     ElectricCurrent, ElectricPotential, Physical, ThermodynamicTemperature, Time, VoltageRate,
 };
-use firstpole_core::rules::Policy;
 use firstpole_core::sheet::{Sheet, Statement};
 use firstpole_core::{Assessment, FileId, Place, Span};
 
@@ -86,7 +85,6 @@ pub fn hints(assessment: &Assessment, file: FileId, within: Span, wanted: Wanted
 
 /// What `from duty` chose. A value that several breakers take over gets one for each that chose otherwise.
 pub fn chosen(assessment: &Assessment, file: FileId, within: Span) -> Vec<Hint> {
-    let policy = Policy::default();
     let Some(source) = assessment.sources.file(file) else { return Vec::new() };
     let mut hints: Vec<Hint> = Vec::new();
     let here = |place: Place| {
@@ -101,14 +99,13 @@ pub fn chosen(assessment: &Assessment, file: FileId, within: Span) -> Vec<Hint> 
         if !asks {
             continue;
         }
-        let case = Case::new(&assessment.set, sheet, &policy);
+        let case = Case::new(&assessment.set, sheet, assessment.policy());
         for statement in case.breaker.statements() {
-            let (Some(working), Some(quantity)) = (&statement.chosen, statement.quantity()) else { continue };
+            let (Some(working), Some(value)) = (&statement.chosen, as_written(&statement.reading)) else { continue };
             if !here(statement.value) {
                 continue;
             }
             let own = statement.value.block() == sheet.heading.block();
-            let value = quantity.shown();
             let text = if own { value.clone() } else { format!("{value} in {}", sheet.name) };
             let hint =
                 Hint { at: assessment.span(statement.value).end, text, value: Some(value), working: working.clone() };

@@ -1,9 +1,9 @@
 //! Hover: what a label means, what a value is in other units and which figures of the duty rest on it, what a name names.
 
-use firstpole_core::case::Case;
+use firstpole_core::case::{Case, as_written};
 use firstpole_core::particular::{Kind, Particular, SheetKind};
 use firstpole_core::quantity::{Physical, Pressure, look_up, significant};
-use firstpole_core::rules::{self, Policy};
+use firstpole_core::rules;
 use firstpole_core::sheet::{About, LinkTarget, QuantityReading, Reading, Sheet, Statement};
 use firstpole_core::standards::GAUGE_REFERENCE;
 use firstpole_core::{Assessment, FileId, Place, Span};
@@ -145,7 +145,6 @@ fn of_value(assessment: &Assessment, sheet: &Sheet, statement: &Statement) -> Te
 
 /// What the checker chose, for each breaker that takes the line over.
 fn chosen(assessment: &Assessment, sheet: &Sheet, statement: &Statement) -> Text {
-    let policy = Policy::default();
     let mut text = Text::new();
     let mut known = false;
     let takers = assessment.set.of_kind(SheetKind::Breaker).filter(|breaker| {
@@ -154,13 +153,14 @@ fn chosen(assessment: &Assessment, sheet: &Sheet, statement: &Statement) -> Text
                 && assessment.set.facts(breaker.id).statements().iter().any(|taken| taken.value == statement.value)
     });
     for breaker in takers {
-        let case = Case::new(&assessment.set, breaker, &policy);
+        let case = Case::new(&assessment.set, breaker, assessment.policy());
         let found = case.breaker.statements().iter().find(|taken| taken.value == statement.value);
-        let Some((quantity, working)) = found.and_then(|taken| taken.quantity().zip(taken.chosen.as_ref())) else {
+        let Some((value, working)) = found.and_then(|taken| as_written(&taken.reading).zip(taken.chosen.as_ref()))
+        else {
             continue;
         };
         known = true;
-        text = text.sentence(format!("The duty of {} asks for {}.", breaker.name, quantity.shown())).formula(working);
+        text = text.sentence(format!("The duty of {} asks for {}.", breaker.name, value)).formula(working);
     }
     if known { text } else { text.sentence("The text does not say enough for the checker to choose it.") }
 }

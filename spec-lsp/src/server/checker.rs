@@ -1,14 +1,16 @@
 //! Assessing: one document of a snapshot, with what it uses.
 
 use std::panic::{AssertUnwindSafe, catch_unwind};
-use std::path::PathBuf;
+use std::path::{Path, PathBuf};
 use std::sync::{Arc, Mutex, PoisonError};
 
 use firstpole_core::rules::Policy;
-use firstpole_core::{Assessment, Assessor, FileId, LoadFault, Loader, Sources};
+use firstpole_core::rules::reading::SETTINGS_UNREADABLE;
+use firstpole_core::{Assessment, Assessor, FileId, Finding, LoadFault, Loader, Sources, Span};
 
 use super::documents::{Documents, Snapshot};
 use crate::files::{self, FolderLoader, shown};
+use crate::settings::{self, SettingsFault};
 
 /// An assessment of one document, with what it rests on.
 #[derive(Debug)]
@@ -106,6 +108,29 @@ pub fn assess(
     Some(Ok(Checked { name: name.to_owned(), assessment, read, disk: snapshot.disk, snapshot }))
 }
 
+/// The same by the settings of the folder. With settings that cannot be read the defaults count, and a finding says so.
+pub fn assess_by_settings(
+    assessor: &Assessor,
+    snapshot: Snapshot,
+    name: &str,
+    before: Option<&Checked>,
+) -> Option<Result<Checked, String>> {
+    let (settings, fault) = match settings::policy_for(Path::new(name)) {
+        Ok(policy) => (policy, None),
+        Err(fault) => (Policy::default(), Some(fault)),
+    };
+    let policy = Policy { today: crate::today(), ..settings };
+    let mut result = assess(assessor, policy, snapshot, name, before)?;
+    if let Ok(checked) = &mut result {
+        if let Some(finding) = fault.and_then(|fault| unreadable(&checked.assessment, &fault)) {
+            checked.assessment.add(finding);
+        }
+        // It rests on the settings too, which are never open as a document of ours.
+        checked.read.push(Read { name: settings::FILE_NAME.to_owned(), stamp: None });
+    }
+    Some(result)
+}
+
 /// What came of assessing a document.
 #[derive(Debug)]
 pub struct Outcome {
@@ -163,8 +188,7 @@ impl Documents {
     fn check(&self, name: &str, snapshot: Snapshot) -> Option<Outcome> {
         let stamp = snapshot.open.get(name)?.stamp;
         let before = self.lock().document(name).and_then(|open| open.checked.clone());
-        let policy = Policy { today: crate::today(), ..Policy::default() };
-        let result = assess(&self.assessor, policy, snapshot, name, before.as_deref())?.map(Arc::new);
+        let result = assess_by_settings(&self.assessor, snapshot, name, before.as_deref())?.map(Arc::new);
         let mut state = self.lock();
         if let Some(open) = state.document_mut(name) {
             match &result {
@@ -182,6 +206,14 @@ impl Documents {
         self.changed.notify_one();
         Some(Outcome { name: name.to_owned(), result: result.map_err(|said| (said, stamp)) })
     }
+}
+
+/// The finding on settings that cannot be read, at the start of the document: the file of settings is not open as one.
+fn unreadable(assessment: &Assessment, fault: &SettingsFault) -> Option<Finding> {
+    let place = assessment.sources.place(OWN, Span::new(0, 0))?;
+    let mut finding = Finding::new(&SETTINGS_UNREADABLE, place, fault.to_string());
+    finding.advice("until it is mended the default settings count");
+    Some(finding)
 }
 
 impl Checked {
@@ -208,10 +240,45 @@ mod tests {
         documents.open("file:///nowhere/bay.cbspec", 1, BAY.to_owned());
         let checked = documents.now("/nowhere/bay.cbspec").and_then(|now| documents.settle(now)).expect("assessed");
         assert!(has(&checked, "use-unreadable"), "{:?}", checked.assessment.findings());
-        assert_eq!(checked.read.len(), 2);
+        assert_eq!(checked.read.len(), 3, "the settings are looked for, too");
         documents.open("file:///nowhere/family.cbspec", 1, FAMILY.to_owned());
         let checked = documents.now("/nowhere/bay.cbspec").and_then(|now| documents.settle(now)).expect("assessed");
         assert!(!has(&checked, "use-unreadable"));
+    }
+
+    #[test]
+    fn the_settings_beside_a_document_count() {
+        let folder = tempfile::tempdir().expect("a folder");
+        let file = folder.path().join(settings::FILE_NAME);
+        let bay = folder.path().join("bay.cbspec");
+        let uri = crate::server::names::uri_of(&shown(&bay));
+        let check = |toml: &str| {
+            std::fs::write(&file, toml).expect("a file");
+            let documents = Documents::new(Assessor::standard());
+            documents.open(&uri, 1, "cbspec 1\nbreaker Bay\n".to_owned());
+            documents.now(&shown(&bay)).and_then(|now| documents.settle(now)).expect("assessed")
+        };
+        let checked = check("[policy]\nexcess-steps = 4\n");
+        assert_eq!(checked.assessment.policy().excess_steps, 4);
+        assert!(!has(&checked, "settings-unreadable"));
+        let checked = check("[policy]\nexcess-steps = 400\n");
+        assert_eq!(checked.assessment.policy().excess_steps, 2);
+        assert!(has(&checked, "settings-unreadable"));
+    }
+
+    #[test]
+    fn changed_settings_make_all_due_again() {
+        let folder = tempfile::tempdir().expect("a folder");
+        let bay = shown(&folder.path().join("bay.cbspec"));
+        let documents = Documents::new(Assessor::standard());
+        documents.open(&crate::server::names::uri_of(&bay), 1, "cbspec 1\nbreaker Bay\n".to_owned());
+        while documents.check_next().is_some() {}
+        std::fs::write(folder.path().join(settings::FILE_NAME), "[policy]\nexcess-steps = 4\n").expect("written");
+        assert!(documents.check_next().is_none(), "nobody has told of it yet");
+        documents.disk_changed();
+        assert!(documents.check_next().is_some());
+        let checked = documents.now(&bay).and_then(|now| documents.settle(now)).expect("assessed");
+        assert_eq!(checked.assessment.policy().excess_steps, 4);
     }
 
     #[test]

@@ -179,7 +179,9 @@ pub fn watch() -> Vec<lsp::Registration> {
     vec![lsp::Registration {
         id: "watch-specifications".to_owned(),
         method: "workspace/didChangeWatchedFiles".to_owned(),
-        register_options: Some(json!({ "watchers": [{ "globPattern": "**/*.cbspec" }] })),
+        register_options: Some(
+            json!({ "watchers": [{ "globPattern": "**/*.cbspec" }, { "globPattern": "**/firstpole.toml" }] }),
+        ),
     }]
 }
 

@@ -3,9 +3,7 @@
 use std::path::Path;
 use std::sync::Arc;
 
-use firstpole_core::rules::Policy;
-
-use super::checker::{Checked, assess};
+use super::checker::{Checked, assess_by_settings};
 use super::documents::{Documents, Known};
 use crate::files::{below_folder, read, shown};
 
@@ -29,8 +27,7 @@ impl Documents {
             let mut snapshot = snapshot.clone();
             let known = Known { uri: super::names::uri_of(&name), stamp: 0, text };
             snapshot.open.insert(name.clone(), known);
-            let policy = Policy { today: crate::today(), ..Policy::default() };
-            if let Some(Ok(checked)) = assess(&self.assessor, policy, snapshot, &name, None) {
+            if let Some(Ok(checked)) = assess_by_settings(&self.assessor, snapshot, &name, None) {
                 each(&checked);
             }
         }

@@ -150,7 +150,8 @@ fn read(formula: &'static str, rows: &[Row]) -> Gas {
         highest_density: f64::NAN,
     });
     if let Some(pure) = &mut pure {
-        pure.highest_density = pure.density_of_gas(pure.highest_filling, REFERENCE_TEMPERATURE).unwrap_or(f64::NAN);
+        pure.highest_density =
+            pure.density_of_gas(pure.highest_filling, REFERENCE_TEMPERATURE.kelvin()).unwrap_or(f64::NAN);
         let (low, _) = pure.temperatures;
         let kelvins = (pure.critical_temperature - low).max(0.0) as u32;
         pure.saturation_floor = (0..kelvins).map(|n| pure.saturation(low + f64::from(n))).collect();
@@ -177,17 +178,20 @@ fn exponent(meaning: &str) -> f64 {
 mod tests {
     use super::*;
 
-    /// No row is lost in reading, each has a source, and each is of a gas of the table.
+    /// No row is lost in reading, each has a source and a status, and each is of a gas of the table.
     #[test]
     fn every_row_has_a_source() {
         let coefficients = include_str!("../../../data/gas_coefficients.csv");
         let interactions = include_str!("../../../data/gas_interactions.csv");
         for text in [coefficients, interactions] {
             let mut reader = csv::Reader::from_reader(text.as_bytes());
-            let at = reader.headers().expect("a head").iter().position(|name| name == "source").expect("a source");
+            let head = reader.headers().expect("a head").clone();
+            let column = |wanted: &str| head.iter().position(|name| name == wanted).expect("a column");
+            let (source, status) = (column("source"), column("status"));
             for row in reader.records() {
                 let row = row.expect("a row");
-                assert!(row[at].len() >= 5, "{row:?}");
+                assert!(row[source].len() >= 5, "{row:?}");
+                assert!(["V", "F", "M", "MF", "D"].contains(&&row[status]), "{row:?}");
             }
         }
         for row in csv::Reader::from_reader(coefficients.as_bytes()).into_deserialize::<Row>() {

@@ -103,7 +103,7 @@ impl GasMixture {
         }
         let too_high = GasFault::FillingTooHigh { bound: HIGHEST_FILLING };
         let rho = molar_density(p, t, self.virial(t)).ok_or(too_high)?;
-        if virial_pressure(rho, REFERENCE_TEMPERATURE, self.virial(REFERENCE_TEMPERATURE))
+        if virial_pressure(rho, REFERENCE_TEMPERATURE.kelvin(), self.virial(REFERENCE_TEMPERATURE.kelvin()))
             > HIGHEST_FILLING * (1.0 + 1e-6)
         {
             return Err(too_high);
@@ -138,7 +138,7 @@ impl GasMixture {
     /// Where a filling of this molar volume begins to condense: the highest temperature at which a liquid is more stable. None
     /// where nothing condenses above -120 degC.
     pub fn dew_point(&self, molar_volume: f64) -> Option<ThermodynamicTemperature> {
-        let mut high = REFERENCE_TEMPERATURE;
+        let mut high = REFERENCE_TEMPERATURE.kelvin();
         if self.condenses(molar_volume, high) {
             return Some(ThermodynamicTemperature::from_si(high));
         }
@@ -167,7 +167,7 @@ impl GasMixture {
     /// The highest filling at 20 degC that does not condense at a temperature, Pa absolute.
     pub fn highest_filling(&self, lowest: ThermodynamicTemperature) -> Result<Pressure, GasFault> {
         let t = within(lowest)?;
-        let reference = ThermodynamicTemperature::from_si(REFERENCE_TEMPERATURE);
+        let reference = REFERENCE_TEMPERATURE.value();
         let condenses = |p: f64| self.molar_volume(Pressure::from_si(p), reference).is_ok_and(|v| self.condenses(v, t));
         if !condenses(HIGHEST_FILLING) {
             return Err(GasFault::FillingTooHigh { bound: HIGHEST_FILLING });
@@ -243,10 +243,10 @@ impl GasMixture {
         let (gas, y) = self.gases.iter().zip(&self.fractions).find(|(gas, _)| gas.ambrose_walton.is_some())?;
         let omega = gas.ambrose_walton?;
         let (tc, pc, _) = gas.cubic;
-        let partial = |t: f64| y * filling.si() * t / REFERENCE_TEMPERATURE;
+        let partial = |t: f64| y * filling.si() * t / REFERENCE_TEMPERATURE.kelvin();
         let off = |t: f64| (partial(t) / (pc * ambrose_walton(t / tc, omega).exp())).ln();
-        (off(COLDEST) > 0.0 && off(REFERENCE_TEMPERATURE) < 0.0)
-            .then(|| ThermodynamicTemperature::from_si(root(off, COLDEST, REFERENCE_TEMPERATURE)))
+        (off(COLDEST) > 0.0 && off(REFERENCE_TEMPERATURE.kelvin()) < 0.0)
+            .then(|| ThermodynamicTemperature::from_si(root(off, COLDEST, REFERENCE_TEMPERATURE.kelvin())))
     }
 
     /// The same mixture without interaction between its gases, for the far end of a band.

@@ -100,7 +100,7 @@ impl PureGas {
             }
         }
         let density = MassDensity::from_si(self.density_of_gas(p, t)?);
-        if self.pressure_of_gas(density.si(), REFERENCE_TEMPERATURE) > self.highest_filling * (1.0 + 1e-9) {
+        if self.pressure_of_gas(density.si(), REFERENCE_TEMPERATURE.kelvin()) > self.highest_filling * (1.0 + 1e-9) {
             return Err(GasFault::FillingTooHigh { bound: self.highest_filling });
         }
         Ok(density)
@@ -144,7 +144,7 @@ impl PureGas {
         }
         // The liquid's line begins at the triple point; a line over the frost holds as far as the equation of state does.
         let lowest = if self.frost.is_some() { self.temperatures.0 } else { self.triple_temperature };
-        let highest = REFERENCE_TEMPERATURE.min(self.critical_temperature);
+        let highest = REFERENCE_TEMPERATURE.kelvin().min(self.critical_temperature);
         match t {
             t if t < lowest => Err(GasFault::TemperatureOutside { bound: lowest }),
             t if t > highest => Err(GasFault::TemperatureOutside { bound: highest }),
@@ -181,7 +181,7 @@ impl PureGas {
 
     /// The pressure that a density has at 20 degC, as rated levels are stated.
     pub fn reference_pressure(&self, density: MassDensity) -> Pressure {
-        Pressure::from_si(self.pressure_of_gas(density.si(), REFERENCE_TEMPERATURE))
+        Pressure::from_si(self.pressure_of_gas(density.si(), REFERENCE_TEMPERATURE.kelvin()))
     }
 
     /// The highest filling, as a pressure at 20 degC, that does not condense at a temperature.
