@@ -43,12 +43,13 @@ pub struct Token {
     pub kind: TokenKind,
 }
 
-/// The tokens of a file, in the order of the text; they do not overlap.
-pub fn tokens(assessment: &Assessment, file: FileId) -> Vec<Token> {
+/// The tokens of the lines that a part of a file touches, in the order of the text; they do not overlap.
+pub fn tokens(assessment: &Assessment, file: FileId, within: Span) -> Vec<Token> {
     let Some(source) = assessment.sources.file(file) else { return Vec::new() };
     let mut tokens = Vec::new();
-    let mut kind = None;
-    for line in source.lines() {
+    let mut lines = source.lines_touching(within).peekable();
+    let mut kind = lines.peek().and_then(|line| sheet_at(assessment, file, line.start)).map(|sheet| sheet.kind);
+    for line in lines {
         let text = text_of(source, line);
         let mut row = Row { line, text, tokens: &mut tokens, at: 0 };
         match line.kind {
@@ -183,11 +184,13 @@ impl Row<'_> {
 #[cfg(test)]
 mod tests {
     use super::*;
+
+    const ALL: Span = Span::new(0, u32::MAX);
     use crate::features::testing::{assessed, text_of};
 
     fn told(text: &str) -> Vec<(String, TokenKind)> {
         let assessment = assessed(text);
-        tokens(&assessment, FileId(0))
+        tokens(&assessment, FileId(0), ALL)
             .iter()
             .map(|token| (text_of(&assessment, token.span).to_owned(), token.kind))
             .collect()
@@ -242,7 +245,7 @@ mod tests {
     fn never_over_each_other_and_in_order() {
         let text = crate::features::testing::BAY.replace(':', " : ° \"");
         let assessment = assessed(&text);
-        let tokens = tokens(&assessment, FileId(0));
+        let tokens = tokens(&assessment, FileId(0), ALL);
         assert!(tokens.windows(2).all(|pair| pair[0].span.end <= pair[1].span.start));
         assert!(tokens.iter().all(|token| text.get(token.span.start as usize..token.span.end as usize).is_some()));
     }

@@ -1,6 +1,7 @@
 //! The one file that knows the protocol library: every handler takes the state as it is at once, before it waits for anything, since
 //! handlers interleave wherever they wait.
 
+use std::collections::BTreeMap;
 use std::path::PathBuf;
 use std::sync::{Arc, Mutex, OnceLock, PoisonError};
 
@@ -17,6 +18,7 @@ use super::names::name_of;
 use super::navigation;
 use super::protocol::{self, Abilities, Edge};
 use super::publish::{self, Tell};
+use super::pulled;
 use super::pump::Heard;
 use crate::features::hints::Wanted;
 
@@ -57,6 +59,11 @@ where
                             return;
                         }
                     }
+                    // Beside, since the answer may take as long as the client likes.
+                    Tell::Others => {
+                        let client = teller.clone();
+                        tokio::spawn(async move { drop(client.workspace_diagnostic_refresh().await) });
+                    }
                     Tell::Fault(line) => teller.log_message(lsp::MessageType::ERROR, line).await,
                 }
             }
@@ -67,7 +74,7 @@ where
                 logger.log_message(lsp::MessageType::WARNING, line).await;
             }
         });
-        Backend { client, documents, abilities: OnceLock::new(), hints: Mutex::default() }
+        Backend { client, documents, abilities: OnceLock::new(), hints: Mutex::default(), tokens: Mutex::default() }
     });
     Server::new(input, library, socket).concurrency_level(AT_ONCE).serve(service).await;
     checker.abort();
@@ -82,6 +89,8 @@ struct Backend {
     abilities: OnceLock<Abilities>,
     /// Which hints are wanted; the client may change it at any time.
     hints: Mutex<Wanted>,
+    /// The tokens that the client has of each document, with the state that they are of.
+    tokens: Mutex<BTreeMap<String, (String, Vec<lsp::SemanticToken>)>>,
 }
 
 impl Backend {
@@ -109,6 +118,17 @@ impl Backend {
 impl Backend {
     fn set_hints(&self, settings: Option<&serde_json::Value>) {
         *self.hints.lock().unwrap_or_else(PoisonError::into_inner) = protocol::wanted_hints(settings);
+    }
+
+    /// Keeps the tokens that the client gets, and gives those that it had.
+    fn keep_tokens(
+        &self,
+        uri: &lsp::Url,
+        state: &str,
+        tokens: &[lsp::SemanticToken],
+    ) -> Option<(String, Vec<lsp::SemanticToken>)> {
+        let mut kept = self.tokens.lock().unwrap_or_else(PoisonError::into_inner);
+        kept.insert(uri.to_string(), (state.to_owned(), tokens.to_vec()))
     }
 
     /// Work over the whole workspace, done beside.
@@ -178,6 +198,7 @@ impl LanguageServer for Backend {
 
     async fn did_close(&self, params: lsp::DidCloseTextDocumentParams) {
         self.documents.close(params.text_document.uri.as_str());
+        self.tokens.lock().unwrap_or_else(PoisonError::into_inner).remove(params.text_document.uri.as_str());
     }
 
     async fn did_save(&self, _: lsp::DidSaveTextDocumentParams) {
@@ -313,7 +334,63 @@ impl LanguageServer for Backend {
         &self,
         params: lsp::SemanticTokensParams,
     ) -> Result<Option<lsp::SemanticTokensResult>> {
-        self.ask(&params.text_document.uri, |edge| lsp::SemanticTokensResult::Tokens(edge.tokens())).await
+        let uri = params.text_document.uri;
+        let tokens = self.ask(&uri, |edge| (edge.tokens(None), pulled::state_of(edge.checked))).await?;
+        Ok(tokens.map(|(data, state)| {
+            self.keep_tokens(&uri, &state, &data);
+            lsp::SemanticTokensResult::Tokens(lsp::SemanticTokens { result_id: Some(state), data })
+        }))
+    }
+
+    async fn semantic_tokens_full_delta(
+        &self,
+        params: lsp::SemanticTokensDeltaParams,
+    ) -> Result<Option<lsp::SemanticTokensFullDeltaResult>> {
+        let uri = params.text_document.uri;
+        let tokens = self.ask(&uri, |edge| (edge.tokens(None), pulled::state_of(edge.checked))).await?;
+        Ok(tokens.map(|(data, state)| {
+            let old = self.keep_tokens(&uri, &state, &data);
+            match old.filter(|(known, _)| *known == params.previous_result_id) {
+                Some((_, old)) => lsp::SemanticTokensFullDeltaResult::TokensDelta(lsp::SemanticTokensDelta {
+                    result_id: Some(state),
+                    edits: pulled::delta(&old, &data),
+                }),
+                None => {
+                    lsp::SemanticTokensFullDeltaResult::Tokens(lsp::SemanticTokens { result_id: Some(state), data })
+                }
+            }
+        }))
+    }
+
+    async fn semantic_tokens_range(
+        &self,
+        params: lsp::SemanticTokensRangeParams,
+    ) -> Result<Option<lsp::SemanticTokensRangeResult>> {
+        let range = params.range;
+        let tokens = self.ask(&params.text_document.uri, move |edge| edge.tokens(Some(range))).await?;
+        Ok(tokens.map(|data| lsp::SemanticTokensRangeResult::Tokens(lsp::SemanticTokens { result_id: None, data })))
+    }
+
+    async fn diagnostic(&self, params: lsp::DocumentDiagnosticParams) -> Result<lsp::DocumentDiagnosticReportResult> {
+        let known = params.previous_result_id;
+        let report =
+            self.ask(&params.text_document.uri, move |edge| pulled::document(Some(edge.checked), known.as_deref()));
+        Ok(report.await?.unwrap_or_else(|| pulled::document(None, None)))
+    }
+
+    async fn workspace_diagnostic(
+        &self,
+        params: lsp::WorkspaceDiagnosticParams,
+    ) -> Result<lsp::WorkspaceDiagnosticReportResult> {
+        let items = self.everywhere(move |documents| {
+            let mut items = Vec::new();
+            documents.everywhere(None, |checked| {
+                let version = documents.lock().document(&checked.name).map(|open| open.version);
+                items.extend(pulled::of_workspace(checked, version, &params.previous_result_ids));
+            });
+            items
+        });
+        Ok(lsp::WorkspaceDiagnosticReportResult::Report(lsp::WorkspaceDiagnosticReport { items: items.await? }))
     }
 }
 

@@ -158,6 +158,11 @@ impl State {
             .map(|(_, _, name)| name.clone())
     }
 
+    /// What the client takes of a finding.
+    pub const fn takes(&self) -> Takes {
+        self.takes
+    }
+
     /// The assessments that the client was not told of; from now on it was.
     pub fn untold(&mut self) -> Vec<Arc<Checked>> {
         self.open

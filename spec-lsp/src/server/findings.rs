@@ -21,6 +21,10 @@ pub const MOST: usize = 1000;
 /// What a client takes of a finding beside where it is and what it says.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
 pub struct Takes {
+    /// It asks for findings, and is not told of them unasked: it would show them twice.
+    pub asks: bool,
+    /// It asks anew when it is told to.
+    pub asks_again: bool,
     /// Other places that it rests on.
     pub related: bool,
     /// Marks, such as on text that does nothing.
@@ -286,7 +290,7 @@ mod tests {
 
     #[test]
     fn the_wire_says_what_the_types_say() {
-        let all = told(&checked(Takes { related: true, marks: true, data: true }));
+        let all = told(&checked(Takes { related: true, marks: true, data: true, ..Takes::default() }));
         let (_, own) = all.first().expect("the document");
         assert!(!own.is_empty());
         let body = notification("file:///nowhere/bay.cbspec", Some(3), false, &own.iter().collect::<Vec<_>>());

@@ -20,6 +20,7 @@ mod navigation;
 mod positions;
 mod protocol;
 mod publish;
+mod pulled;
 mod pump;
 mod workspace;
 

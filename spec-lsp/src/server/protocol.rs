@@ -57,7 +57,7 @@ impl Abilities {
             text.and_then(|text| text.completion.as_ref()).and_then(|completion| completion.completion_item.as_ref());
         Self {
             encoding: if utf8 { Encoding::Utf8 } else { Encoding::Utf16 },
-            takes: takes(text),
+            takes: takes(client),
             snippets: item.and_then(|item| item.snippet_support).unwrap_or(false),
             completion_markdown: markdown(item.and_then(|item| item.documentation_format.as_ref())),
             hover_markdown: markdown(
@@ -87,12 +87,16 @@ impl Abilities {
     }
 }
 
-fn takes(text: Option<&lsp::TextDocumentClientCapabilities>) -> Takes {
-    let Some(findings) = text.and_then(|text| text.publish_diagnostics.as_ref()) else { return Takes::default() };
+fn takes(client: &lsp::ClientCapabilities) -> Takes {
+    let text = client.text_document.as_ref();
+    let workspace = client.workspace.as_ref().and_then(|workspace| workspace.diagnostic.as_ref());
+    let findings = text.and_then(|text| text.publish_diagnostics.as_ref());
     Takes {
-        related: findings.related_information.unwrap_or(false),
-        marks: findings.tag_support.is_some(),
-        data: findings.data_support.unwrap_or(false),
+        asks: text.is_some_and(|text| text.diagnostic.is_some()),
+        asks_again: workspace.and_then(|findings| findings.refresh_support).unwrap_or(false),
+        related: findings.and_then(|findings| findings.related_information).unwrap_or(false),
+        marks: findings.is_some_and(|findings| findings.tag_support.is_some()),
+        data: findings.and_then(|findings| findings.data_support).unwrap_or(false),
     }
 }
 
@@ -155,10 +159,19 @@ pub fn capabilities(abilities: Abilities) -> lsp::ServerCapabilities {
                     token_types: TokenKind::ALL.into_iter().map(token_type).collect(),
                     token_modifiers: Vec::new(),
                 },
-                full: Some(lsp::SemanticTokensFullOptions::Bool(true)),
+                full: Some(lsp::SemanticTokensFullOptions::Delta { delta: Some(true) }),
+                range: Some(true),
                 ..lsp::SemanticTokensOptions::default()
             },
         )),
+        diagnostic_provider: abilities.takes.asks.then(|| {
+            lsp::DiagnosticServerCapabilities::Options(lsp::DiagnosticOptions {
+                identifier: Some(findings::SOURCE.to_owned()),
+                inter_file_dependencies: true,
+                workspace_diagnostics: true,
+                work_done_progress_options: lsp::WorkDoneProgressOptions::default(),
+            })
+        }),
         inlay_hint_provider: Some(lsp::OneOf::Left(true)),
         document_highlight_provider: Some(lsp::OneOf::Left(true)),
         selection_range_provider: Some(lsp::SelectionRangeProviderCapability::Simple(true)),
@@ -474,10 +487,11 @@ impl Edge<'_> {
     }
 
     /// Answers a request for semantic tokens.
-    pub fn tokens(&self) -> lsp::SemanticTokens {
+    pub fn tokens(&self, range: Option<lsp::Range>) -> Vec<lsp::SemanticToken> {
+        let within = range.and_then(|range| self.span(range)).unwrap_or(Span::new(0, u32::MAX));
         let mut data = Vec::new();
         let mut last = lsp::Position::default();
-        for Token { span, kind } in tokens::tokens(&self.checked.assessment, OWN) {
+        for Token { span, kind } in tokens::tokens(&self.checked.assessment, OWN, within) {
             let Some(lsp::Range { start, end }) = self.own(span) else { continue };
             let same_line = start.line == last.line;
             data.push(lsp::SemanticToken {
@@ -489,6 +503,6 @@ impl Edge<'_> {
             });
             last = start;
         }
-        lsp::SemanticTokens { result_id: None, data }
+        data
     }
 }

@@ -15,6 +15,8 @@ use super::names::uri_of;
 pub enum Tell {
     /// The findings of a file, as a body of the wire.
     Findings(Vec<u8>),
+    /// A document says something else though its own text is the same: who asks has to ask again.
+    Others,
     /// A line for the log.
     Fault(String),
 }
@@ -22,12 +24,16 @@ pub enum Tell {
 /// Assesses and tells, until nobody listens any more.
 pub async fn run(documents: Arc<Documents>, out: mpsc::Sender<Tell>) {
     let mut shown = Shown::default();
+    let mut asked = Asked::default();
     loop {
         let working = documents.clone();
         let round = tokio::task::spawn_blocking(move || {
             let outcome = working.check_next();
             let untold = working.untold();
-            let found = untold.into_iter().map(|checked| (findings::told(&checked), checked));
+            // Who asks is not told.
+            let told =
+                |checked: &Checked| if checked.snapshot.takes.asks { Vec::new() } else { findings::told(checked) };
+            let found = untold.into_iter().map(|checked| (told(&checked), checked));
             (outcome, found.collect::<Vec<_>>())
         });
         let Ok((outcome, untold)) = round.await else { continue };
@@ -37,8 +43,17 @@ pub async fn run(documents: Arc<Documents>, out: mpsc::Sender<Tell>) {
             tells.push(Tell::Fault(format!("the assessment of {name} failed: {said}")));
             tells.extend(shown.fault(&documents.lock(), name, *stamp));
         }
-        for (found, checked) in untold {
-            tells.extend(shown.take(&documents.lock(), &checked, found));
+        let takes = documents.lock().takes();
+        if takes.asks {
+            tells.retain(|tell| matches!(tell, Tell::Fault(_)));
+            let others = untold.iter().filter(|(_, checked)| asked.is_same_text(checked)).count();
+            if others > 0 && takes.asks_again {
+                tells.push(Tell::Others);
+            }
+        } else {
+            for (found, checked) in untold {
+                tells.extend(shown.take(&documents.lock(), &checked, found));
+            }
         }
         for tell in tells {
             if out.send(tell).await.is_err() {
@@ -48,6 +63,20 @@ pub async fn run(documents: Arc<Documents>, out: mpsc::Sender<Tell>) {
         if idle {
             documents.changed.notified().await;
         }
+    }
+}
+
+/// The texts of documents of which a client that asks has been answered, or could have been.
+#[derive(Debug, Default)]
+struct Asked {
+    stamps: BTreeMap<String, u64>,
+}
+
+impl Asked {
+    /// Whether the text is the one of the assessment before.
+    fn is_same_text(&mut self, checked: &Checked) -> bool {
+        let Some(stamp) = checked.own_stamp() else { return false };
+        self.stamps.insert(checked.name.clone(), stamp) == Some(stamp)
     }
 }
 
@@ -163,7 +192,7 @@ mod tests {
                         serde_json::from_value(body["params"].clone()).expect("typed");
                     Some((params.uri.path().to_owned(), params.version, params.diagnostics.len()))
                 }
-                Tell::Fault(_) => None,
+                Tell::Fault(_) | Tell::Others => None,
             })
             .collect()
     }
