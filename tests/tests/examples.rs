@@ -14,6 +14,12 @@ fn assessed(name: &str, form: &str) -> String {
 }
 
 #[test]
+fn the_examples_are_aligned() {
+    let (code, out, err) = program(&["align", "--verify", &root().join("tests/specifications").to_string_lossy()]);
+    assert_eq!((code, out.as_str(), err.as_str()), (0, "", ""));
+}
+
+#[test]
 fn text_and_json_of_every_example() {
     let mut settings = insta::Settings::clone_current();
     settings.set_omit_expression(true);

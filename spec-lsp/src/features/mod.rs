@@ -18,3 +18,4 @@ pub mod symbols;
 mod testing;
 pub mod text;
 pub mod tokens;
+pub mod use_paths;

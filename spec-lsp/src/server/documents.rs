@@ -13,6 +13,7 @@ use super::checker::Checked;
 use super::findings::Takes;
 use super::names::{name_of, uri_of};
 use super::positions::{Encoding, Lines, Position, View};
+use crate::files::{below_folder, shown};
 
 /// An edit of a document.
 #[derive(Clone, Debug)]
@@ -98,6 +99,15 @@ pub struct Known {
 }
 
 impl Snapshot {
+    /// The specifications of the workspace by their names: those that are open, and those that lie in its folders.
+    pub fn specifications(&self) -> Vec<String> {
+        let below = self.roots.iter().flat_map(|root| below_folder(root)).map(|path| shown(&path));
+        let mut names: Vec<String> = self.open.keys().cloned().chain(below).collect();
+        names.sort_unstable();
+        names.dedup();
+        names
+    }
+
     /// The address of a file: the client's own where it is open.
     pub fn uri(&self, name: &str) -> String {
         self.open.get(name).map_or_else(|| uri_of(name), |known| known.uri.clone())

@@ -17,7 +17,7 @@ use crate::features::hover::Hover;
 use crate::features::symbols::Symbol;
 use crate::features::text::Text;
 use crate::features::tokens::{Token, TokenKind};
-use crate::features::{actions, completion, definition, folding, hints, hover, links, symbols, tokens};
+use crate::features::{actions, completion, definition, folding, hints, hover, links, symbols, tokens, use_paths};
 
 /// What the client told that it can do.
 #[derive(Clone, Copy, Debug, Default)]
@@ -131,7 +131,7 @@ pub fn capabilities(abilities: Abilities) -> lsp::ServerCapabilities {
         })),
         hover_provider: Some(lsp::HoverProviderCapability::Simple(true)),
         completion_provider: Some(lsp::CompletionOptions {
-            trigger_characters: Some(vec![":".to_owned(), " ".to_owned()]),
+            trigger_characters: Some(vec![":".to_owned(), " ".to_owned(), "\"".to_owned()]),
             resolve_provider: Some(true),
             ..lsp::CompletionOptions::default()
         }),
@@ -303,7 +303,11 @@ impl Edge<'_> {
 
     /// Answers a completion.
     pub fn completion(&self, position: lsp::Position) -> Option<Vec<lsp::CompletionItem>> {
-        let proposals = completion::complete(&self.checked.assessment, OWN, self.offset(position)?);
+        let (assessment, offset) = (&self.checked.assessment, self.offset(position)?);
+        let proposals = match use_paths::path_at(assessment, OWN, offset) {
+            Some(path) => use_paths::proposals(assessment, OWN, path, &self.checked.snapshot.specifications()),
+            None => completion::complete(assessment, OWN, offset),
+        };
         Some(proposals.into_iter().enumerate().filter_map(|(at, proposal)| self.proposal(at, proposal)).collect())
     }
 
