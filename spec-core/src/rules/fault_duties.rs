@@ -151,7 +151,8 @@ fn double_earth(case: &Case<'_>, findings: &mut Findings) {
     let Some((word @ ("isolated" | "resonant earthed"), statement)) = case.system.word(&system::NEUTRAL) else {
         return;
     };
-    if case.breaker.mentions(&breaker::DOUBLE_EARTH_FAULT_BREAKING_CURRENT) {
+    // At the terminals of a generator their own standard sets the duties.
+    if case.breaker.mentions(&breaker::DOUBLE_EARTH_FAULT_BREAKING_CURRENT) || case.is_generator_breaker() {
         return;
     }
     let isc = breaking_current(case);
@@ -264,6 +265,14 @@ mod tests {
         Bay::new()
             .set("system", "neutral", "isolated")
             .set("breaker", "double-earth-fault breaking current", "27.3 kA")
+            .silent("double-earth-fault");
+    }
+
+    #[test]
+    fn generator_breakers_have_duties_of_their_own() {
+        Bay::new()
+            .set("system", "neutral", "isolated")
+            .set("breaker", "construction", "generator circuit-breaker")
             .silent("double-earth-fault");
     }
 

@@ -1,6 +1,7 @@
 //! Hover: what a label means, what a value is in other units and which figures of the duty rest on it, what a name names.
 
 use firstpole_core::case::{Case, as_written};
+use firstpole_core::documents::curves;
 use firstpole_core::particular::{Kind, Particular, SheetKind};
 use firstpole_core::quantity::{Physical, Pressure, look_up, significant};
 use firstpole_core::rules;
@@ -140,7 +141,24 @@ fn of_value(assessment: &Assessment, sheet: &Sheet, statement: &Statement) -> Te
     text.and(beside(assessment, sheet, statement))
         .and(needed(assessment, statement.value))
         .and(figures(assessment, statement.value))
+        .and(picture(assessment, sheet, statement.particular))
         .sentence(statement.particular.meaning)
+}
+
+/// The curves that belong to a particular: of the breaker itself, else of the first that stands on the system or is like the family.
+fn picture(assessment: &Assessment, sheet: &Sheet, particular: &Particular) -> Text {
+    let Some((words, draw)) = curves::of_particular(particular) else { return Text::new() };
+    let set = &assessment.set;
+    let breaker = match sheet.kind {
+        SheetKind::Breaker => Some(sheet),
+        SheetKind::System => set.pointing_at(sheet.id, "on").find(|sheet| sheet.kind == SheetKind::Breaker),
+        SheetKind::Family => set.pointing_at(sheet.id, "like").find(|sheet| sheet.kind == SheetKind::Breaker),
+        _ => None,
+    };
+    let Some(breaker) = breaker else { return Text::new() };
+    let case = Case::new(set, breaker, assessment.policy());
+    let words = if breaker.id == sheet.id { words.to_owned() } else { format!("{words}, of {}", breaker.name) };
+    Text::new().picture(words, draw(&case.duty))
 }
 
 /// What the checker chose, for each breaker that takes the line over.
@@ -362,5 +380,17 @@ mod tests {
         assert!(hover(&assessment, FileId(0), at).is_none());
         assert!(hover(&assessment, FileId(0), 9999).is_none());
         assert!(hover(&assessment, FileId(7), 0).is_none());
+    }
+
+    #[test]
+    fn curves_stand_in_markdown_alone() {
+        let (assessment, at) = bay_after("DC time constant:   4");
+        let text = hover(&assessment, FileId(0), at).expect("a hover").text;
+        assert!(text.markdown().contains("![decay of the DC component](data:image/svg+xml;base64,"), "{text:?}");
+        assert!(!text.plain().contains("svg"));
+        let (assessment, at) = bay_after("rated filling pressure: 0.7");
+        assert!(hover(&assessment, FileId(0), at).expect("a hover").text.markdown().contains("![pressure of the gas"));
+        let (assessment, at) = bay_after("    Isc:                31");
+        assert!(!hover(&assessment, FileId(0), at).expect("a hover").text.markdown().contains("!["));
     }
 }

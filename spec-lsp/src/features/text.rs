@@ -1,5 +1,8 @@
 //! Short texts for a hover or the documentation of a proposal, for clients that show Markdown and for those that do not.
 
+use base64::Engine;
+use base64::prelude::BASE64_STANDARD;
+
 /// A short text.
 #[derive(Clone, Debug, Default, PartialEq, Eq)]
 pub struct Text {
@@ -12,6 +15,11 @@ enum Part {
     Sentence(String),
     Table(Vec<(String, String)>),
     Formula(String),
+    Picture {
+        /// What it shows, in words.
+        words: String,
+        svg: String,
+    },
 }
 
 impl Text {
@@ -50,6 +58,13 @@ impl Text {
         self
     }
 
+    /// Adds a picture, which only Markdown shows.
+    #[must_use]
+    pub fn picture(mut self, words: impl Into<String>, svg: Option<String>) -> Self {
+        self.parts.extend(svg.map(|svg| Part::Picture { words: words.into(), svg }));
+        self
+    }
+
     /// Adds all of another.
     #[must_use]
     pub fn and(mut self, other: Self) -> Self {
@@ -66,6 +81,9 @@ impl Text {
                 Part::Title(text) => format!("**{}**", escaped(text)),
                 Part::Sentence(text) => escaped(text),
                 Part::Formula(text) => format!("`{}`", text.replace('`', "'")),
+                Part::Picture { words, svg } => {
+                    format!("![{}](data:image/svg+xml;base64,{})", escaped(words), BASE64_STANDARD.encode(svg))
+                }
                 Part::Table(rows) => {
                     let rows: Vec<String> = rows
                         .iter()
@@ -84,8 +102,10 @@ impl Text {
         let parts: Vec<String> = self
             .parts
             .iter()
+            .filter(|part| !matches!(part, Part::Picture { .. }))
             .map(|part| match part {
                 Part::Title(text) | Part::Sentence(text) | Part::Formula(text) => text.clone(),
+                Part::Picture { words, .. } => words.clone(),
                 Part::Table(rows) => {
                     rows.iter().map(|(left, right)| format!("{left}: {right}")).collect::<Vec<_>>().join("\n")
                 }

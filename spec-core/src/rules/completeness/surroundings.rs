@@ -52,7 +52,8 @@ static ASSUMED: &[Datum] = &[
         name: "seismic acceleration",
         by: &[&site::SEISMIC_ACCELERATION, &breaker::SEISMIC_QUALIFICATION],
         checks: "",
-        outdoors_only: false,
+        // Indoors it would be the only one, and a remark on nearly every text.
+        outdoors_only: true,
     },
 ];
 
@@ -329,6 +330,8 @@ mod tests {
             .set("site", "wind", "none")
             .set("site", "seismic acceleration", "none")
             .silent("site-data-missing");
+        bare().set("site", "ice", "none").set("site", "wind", "none").one("site-data-missing");
+        bare().set("site", "installation", "indoor").silent("site-data-missing");
         let by_breaker = bare().set("breaker", "ice class", "10 mm").set("breaker", "design wind speed", "34 m/s");
         by_breaker.set("breaker", "seismic qualification", "moderate").silent("site-data-missing");
     }
