@@ -1,7 +1,7 @@
 //! What is correct and must raise no alarm: clean specifications, bent in ways that a buyer may choose, stay free of
 //! contradiction, shortfall, omission and caution.
 
-#![allow(clippy::expect_used, reason = "a test fails by panicking")]
+#![allow(clippy::expect_used, clippy::indexing_slicing, reason = "a test fails by panicking")]
 
 use firstpole_tests::{example, program, root};
 
