@@ -11,7 +11,9 @@ mod span;
 pub mod value;
 
 pub use fault::{Fault, Look};
-pub use line::{Document, Heading, Line, LineKind, Link, Name, Particular, ValueForm, ValueText, read, read_line};
+pub use line::{
+    Document, Heading, Line, LineKind, Link, Name, Particular, ValueForm, ValueText, read, read_line, read_lines,
+};
 pub use span::Span;
 
 /// The longest line that is read, in characters; a longer one is a finding.

@@ -134,8 +134,13 @@ impl Line {
 
 /// Reads a text. A byte-order mark is passed over; LF, CRLF and CR end a line.
 pub fn read(text: &str) -> Document {
-    let mut lines = Vec::with_capacity(text.len() / 32);
-    let mut start = if text.starts_with('\u{feff}') { '\u{feff}'.len_utf8() } else { 0 };
+    let start = if text.starts_with('\u{feff}') { '\u{feff}'.len_utf8() } else { 0 };
+    Document { lines: read_lines(text, start) }
+}
+
+/// Reads the lines of a text from byte `start` on, which is the start of a line.
+pub fn read_lines(text: &str, mut start: usize) -> Vec<Line> {
+    let mut lines = Vec::with_capacity(text.len().saturating_sub(start) / 32);
     loop {
         let rest = text.get(start..).unwrap_or("");
         let (len, ending) = match memchr::memchr2(b'\n', b'\r', rest.as_bytes()) {
@@ -145,11 +150,11 @@ pub fn read(text: &str) -> Document {
         };
         let content = rest.get(..len).unwrap_or("");
         if ending == 0 && content.is_empty() {
-            return Document { lines };
+            return lines;
         }
         lines.push(Line { start: start as u32, len: len as u32, kind: read_line(content) });
         if ending == 0 {
-            return Document { lines };
+            return lines;
         }
         start += len + ending;
     }

@@ -20,4 +20,4 @@ pub use assess::{Assessment, Assessor, CaseSummary};
 pub use finding::{Edit, Finding, FindingKind};
 pub use firstpole_grammar::Span;
 pub use sheet::Date;
-pub use source::{FileId, LoadFault, Loader, Place, Sources};
+pub use source::{FileId, FilePlace, LoadFault, Loader, Place, Sources};

@@ -6,7 +6,7 @@ use std::path::{Component, Path, PathBuf};
 use std::sync::Arc;
 
 use firstpole_core::rules::reading::FILE_UNREADABLE;
-use firstpole_core::{Finding, LoadFault, Loader, Place, Sources, Span};
+use firstpole_core::{Finding, LoadFault, Loader, Sources, Span};
 use ignore::WalkBuilder;
 
 /// The largest file that is read.
@@ -45,14 +45,7 @@ pub fn gather(paths: &[PathBuf], below: Option<&Path>) -> Gathered {
             if below.is_none() {
                 gathered.loader.roots.push(path.clone());
             }
-            // The walk is sorted, so that the same folder gives the same output everywhere.
-            let walk = WalkBuilder::new(path).require_git(false).sort_by_file_name(Ord::cmp).build();
-            for entry in walk.flatten() {
-                let is_file = entry.file_type().is_some_and(|kind| kind.is_file());
-                if is_file && entry.path().extension().is_some_and(|end| end == "cbspec") {
-                    add(&mut gathered, entry.path());
-                }
-            }
+            below_folder(path).for_each(|path| add(&mut gathered, &path));
         } else if path.exists() {
             if below.is_none() {
                 let folder = path.parent().filter(|p| !p.as_os_str().is_empty()).unwrap_or(Path::new("."));
@@ -66,6 +59,24 @@ pub fn gather(paths: &[PathBuf], below: Option<&Path>) -> Gathered {
     gathered
 }
 
+/// The specifications below a folder. The walk is sorted, so that the same folder gives the same output everywhere.
+pub fn below_folder(folder: &Path) -> impl Iterator<Item = PathBuf> + use<> {
+    let walk = WalkBuilder::new(folder).require_git(false).sort_by_file_name(Ord::cmp).build();
+    walk.flatten()
+        .filter(|entry| entry.file_type().is_some_and(|kind| kind.is_file()))
+        .map(ignore::DirEntry::into_path)
+        .filter(|path| path.extension().is_some_and(|end| end == "cbspec"))
+}
+
+/// The specifications under `paths`, and the paths where there is nothing.
+pub fn specifications(paths: &[PathBuf]) -> (Vec<PathBuf>, Vec<PathBuf>) {
+    let (there, missing): (Vec<&PathBuf>, Vec<&PathBuf>) = paths.iter().partition(|path| path.exists());
+    let found = there
+        .into_iter()
+        .flat_map(|path| if path.is_dir() { below_folder(path).collect() } else { vec![path.clone()] });
+    (found.collect(), missing.into_iter().cloned().collect())
+}
+
 fn add(gathered: &mut Gathered, path: &Path) {
     let name = shown(path);
     match read(path) {
@@ -75,7 +86,8 @@ fn add(gathered: &mut Gathered, path: &Path) {
         Err(sentence) => {
             let file = gathered.sources.add(name.clone(), "");
             let message = format!("{name} was not checked: {sentence}");
-            let mut finding = Finding::new(&FILE_UNREADABLE, Place::new(file, Span::new(0, 0)), message);
+            let Some(place) = gathered.sources.place(file, Span::new(0, 0)) else { return };
+            let mut finding = Finding::new(&FILE_UNREADABLE, place, message);
             finding.advice("the other files were checked");
             gathered.faults.push(finding);
         }
@@ -83,7 +95,7 @@ fn add(gathered: &mut Gathered, path: &Path) {
 }
 
 /// The text of a file, or a sentence that says why it cannot be had.
-fn read(path: &Path) -> Result<Arc<str>, String> {
+pub fn read(path: &Path) -> Result<Arc<str>, String> {
     let file = File::open(path).map_err(|fault| sentence(&fault))?;
     let mut bytes = Vec::new();
     file.take(LARGEST_FILE + 1).read_to_end(&mut bytes).map_err(|fault| sentence(&fault))?;

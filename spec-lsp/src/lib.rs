@@ -34,6 +34,8 @@ struct Program {
 enum Command {
     /// Check files and folders, and print the findings
     Assess(commands::assess::Arguments),
+    /// Set columns and spacing, and change no meaning
+    Align(commands::align::Arguments),
     /// Say what a rule checks, on what basis, with its formula
     Clause(commands::clause::Arguments),
     /// Serve an editor: findings while one types, over the language server protocol
@@ -60,6 +62,7 @@ pub fn run(arguments: impl IntoIterator<Item = OsString>, out: &mut dyn Write, e
     };
     let ended = match program.command {
         Command::Assess(arguments) => commands::assess::run(&arguments, out, err),
+        Command::Align(arguments) => commands::align::run(&arguments, out, err),
         Command::Clause(arguments) => commands::clause::run(&arguments, out, err),
         Command::Serve(arguments) => commands::serve::run(&arguments, err),
     };

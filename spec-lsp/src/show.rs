@@ -64,9 +64,10 @@ pub fn findings(assessment: &Assessment, look: Look, out: &mut dyn Write) -> io:
 }
 
 fn plain(finding: &Finding, assessment: &Assessment) -> String {
-    let file = assessment.sources.file(finding.place.file);
+    let place = assessment.at(finding.place);
+    let file = assessment.sources.file(place.file);
     let position = file.map_or_else(String::new, |file| {
-        let at = file.position(finding.place.span.start);
+        let at = file.position(place.span.start);
         format!("{}:{}:{}: ", file.name, at.line, at.column)
     });
     format!("{position}{}: {}: {}", finding.kind.word(), finding.rule, finding.message)

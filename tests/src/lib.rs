@@ -1,6 +1,10 @@
 //! What the acceptance tests share: the example specifications, and how they are assessed.
 
+mod large;
+
 use std::path::{Path, PathBuf};
+
+pub use large::large;
 
 /// The root of the workspace.
 pub fn root() -> PathBuf {
@@ -11,7 +15,14 @@ pub fn root() -> PathBuf {
 pub const CLEAN: [&str; 4] = ["cable-feeders-12kV", "transmission-72.5kV-60Hz", "cold-climate-245kV", "station-420kV"];
 
 /// The example specifications with seeded mistakes.
-pub const SEEDED: [&str; 4] = ["reclosing-line-24kV", "substation-36kV", "line-bay-145kV", "generation-tie-550kV"];
+pub const SEEDED: [&str; 6] = [
+    "reclosing-line-24kV",
+    "substation-36kV",
+    "line-bay-145kV",
+    "generation-tie-550kV",
+    "station-110kV-infeeds",
+    "bank-and-cable-24kV",
+];
 
 /// The path of an example, from the root of the workspace.
 pub fn example(name: &str) -> String {

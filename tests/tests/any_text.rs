@@ -66,6 +66,7 @@ fn check(text: &str) -> Result<(), TestCaseError> {
     }
     let assessment = Assessor::standard().assess(&Sources::of("x.cbspec", text));
     let inside = |place: Place| {
+        let place = assessment.at(place);
         let file = assessment.sources.file(place.file).expect("a file");
         file.text.get(place.span.start as usize..place.span.end as usize).is_some()
     };
@@ -75,7 +76,8 @@ fn check(text: &str) -> Result<(), TestCaseError> {
         for edit in &finding.edits {
             prop_assert!(inside(edit.place), "{}", finding.rule);
             let mut mended = text.to_owned();
-            mended.replace_range(edit.place.span.start as usize..edit.place.span.end as usize, &edit.text);
+            let span = assessment.span(edit.place);
+            mended.replace_range(span.start as usize..span.end as usize, &edit.text);
             let _ = read(&mended);
         }
     }

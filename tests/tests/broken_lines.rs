@@ -69,7 +69,7 @@ proptest! {
         let assess = |text: &str| Assessor::standard().assess(&Sources::of("a.cbspec", text));
         let (before, after) = (assess(&whole), assess(&spoilt));
         let line_of = |a: &firstpole_core::Assessment, place: firstpole_core::Place| {
-            a.sources.file(place.file).expect("a file").position(place.span.start).line as usize - 1
+            a.sources.file_of(place).expect("a file").position(a.span(place).start).line as usize - 1
         };
         let reading: Vec<usize> = after
             .findings()
@@ -80,8 +80,7 @@ proptest! {
         prop_assert_eq!(reading, chosen.iter().copied().collect::<Vec<_>>());
         let values = |a: &firstpole_core::Assessment, skip: &BTreeSet<usize>| -> Vec<String> {
             a.set
-                .sheets
-                .iter()
+                .sheets()
                 .flat_map(|sheet| sheet.statements.iter().map(move |s| (sheet, s)))
                 .filter(|(_, s)| !skip.contains(&line_of(a, s.label)))
                 .map(|(sheet, s)| format!("{} {} {}", sheet.title(), s.particular.label, a.sources.text(s.value)))

@@ -39,7 +39,7 @@ fn clean_examples_are_clean() {
 /// Each seeded mistake is found, by the rule that is about it.
 #[test]
 fn seeded_mistakes_are_found() {
-    let seeded: [(&str, &[&str]); 4] = [
+    let seeded: [(&str, &[&str]); 6] = [
         (
             "reclosing-line-24kV",
             &["trv-class", "first-pole-factor", "sequence-without-rapid-reclosing", "decimal-comma"],
@@ -54,7 +54,26 @@ fn seeded_mistakes_are_found() {
                 "insulation-set",
             ],
         ),
+        (
+            "bank-and-cable-24kV",
+            &[
+                "inrush-current",
+                "bank-current",
+                "capacitive-voltage-factor",
+                "cable-charging-current",
+                "vacuum-surge-protection",
+            ],
+        ),
         ("line-bay-145kV", &["dc-time-constant", "gas-liquefaction"]),
+        (
+            "station-110kV-infeeds",
+            &[
+                "breaking-current-below-duty",
+                "making-current-below-duty",
+                "dc-time-constant",
+                "transformer-limited-fault",
+            ],
+        ),
         (
             "generation-tie-550kV",
             &[

@@ -284,7 +284,7 @@ proptest! {
         let read = |text: String| {
             let text = format!("cbspec 1\nbreaker B\n    rated filling pressure: {text}\n");
             let assessment = Assessor::standard().assess(&Sources::of("x.cbspec", text.as_str()));
-            let quantity = assessment.set.sheets[0].statements[0].quantity().expect("a pressure").clone();
+            let quantity = assessment.set.sheets().next().expect("a sheet").statements[0].quantity().expect("a pressure").clone();
             quantity.absolute().expect("a pressure").pressure.si()
         };
         let from_gauge = read(format!("{:.9} {unit} gauge", gauge / factor));

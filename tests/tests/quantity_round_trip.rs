@@ -12,7 +12,8 @@ use proptest::prelude::*;
 fn read(sheet: &str, label: &str, value: &str) -> (Option<Statement>, Vec<&'static str>) {
     let text = format!("cbspec 1\n{sheet} X\n    {label}: {value}\n");
     let assessment = Assessor::standard().assess(&Sources::of("x.cbspec", text.as_str()));
-    let statement = assessment.set.sheets.first().and_then(|sheet| sheet.statements.first()).cloned();
+    let statement =
+        assessment.set.sheets().next().and_then(|sheet| sheet.statements.first()).map(|s| Statement::clone(s));
     let reading =
         ["unreadable-line", "unreadable-value", "decimal-comma", "unit-missing", "unit-mismatch", "unknown-unit"];
     let rules = assessment.findings().iter().map(|f| f.rule).filter(|rule| reading.contains(rule)).collect();

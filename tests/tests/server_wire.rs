@@ -163,7 +163,8 @@ fn edit(line: u32, from: u32, to: u32, text: &str) -> Value {
 
 #[tokio::test(flavor = "multi_thread")]
 async fn findings_come_with_severity_rule_place_and_repair() {
-    let mut client = Client::new().await;
+    let mut client = Client::start(None);
+    client.begin(json!({"textDocument": {"publishDiagnostics": {"dataSupport": true}}})).await;
     client.open(URI, BAY).await;
     let found = client.diagnostics(URI, Some(1)).await;
     let voltage = found.iter().find(|d| d["code"] == "rated-voltage-not-preferred").expect("the finding");
@@ -529,7 +530,7 @@ async fn every_feature_answers() {
 }
 
 fn fall_over(set: &Set, _: &Policy, _: &mut Findings) {
-    assert!(!set.sheets.iter().any(|sheet| sheet.name == "Panic"), "a seeded fault");
+    assert!(!set.sheets().any(|sheet| sheet.name == "Panic"), "a seeded fault");
 }
 
 static FAULTY: Rule = Rule {

@@ -16,7 +16,7 @@ fn assess(files: &[(&str, &str)]) -> Assessment {
 }
 
 fn of<'a>(assessment: &'a Assessment, rule: &str) -> Vec<&'a Finding> {
-    assessment.findings().iter().filter(|finding| finding.rule == rule).collect()
+    assessment.findings().iter().map(AsRef::as_ref).filter(|finding: &&Finding| finding.rule == rule).collect()
 }
 
 const SYSTEM: &str = "cbspec 1\nsystem N\n    highest voltage: 145 kV\n    frequency: 50 Hz\n";
@@ -28,7 +28,11 @@ fn what_another_file_holds_is_found_and_pointed_at() {
     let found = of(&assessment, "rated-voltage-below-system");
     assert_eq!(found.len(), 1);
     let related = &found[0].related[0];
-    assert_ne!(related.place.file, found[0].place.file, "the other statement stands in the other file");
+    assert_ne!(
+        assessment.at(related.place).file,
+        assessment.at(found[0].place).file,
+        "the other statement stands in the other file"
+    );
     assert_eq!(assessment.sources.text(related.place), "145 kV");
     // Without `use` it is not in reach.
     let alone = bay.replace("use \"net.cbspec\"\n", "");

@@ -13,7 +13,7 @@ fn assess(sheet: &str, lines: &str) -> Assessment {
 /// Rules that speak of how a text is written.
 fn reading_findings(assessment: &Assessment) -> Vec<&Finding> {
     let names: Vec<&str> = firstpole_core::rules::reading::ALL.iter().map(|rule| rule.name).collect();
-    assessment.findings().iter().filter(|finding| names.contains(&finding.rule)).collect()
+    assessment.findings().iter().map(AsRef::as_ref).filter(|finding: &&Finding| names.contains(&finding.rule)).collect()
 }
 
 #[track_caller]
@@ -21,7 +21,15 @@ fn readings(sheet: &str, lines: &str) -> Vec<Reading> {
     let assessment = assess(sheet, lines);
     let said = reading_findings(&assessment);
     assert!(said.is_empty(), "{lines}: {said:#?}");
-    assessment.set.sheets[0].statements.iter().map(|statement| statement.reading.clone()).collect()
+    assessment
+        .set
+        .sheets()
+        .next()
+        .expect("a sheet")
+        .statements
+        .iter()
+        .map(|statement| statement.reading.clone())
+        .collect()
 }
 
 #[track_caller]

@@ -6,7 +6,7 @@ use crate::quantity::{
     Dimension, ElectricCurrent, ElectricPotential, Frequency, Measure, Physical, Ratio, Time, canonical, look_up,
     significant,
 };
-use crate::sheet::{About, QuantityReading, Reading};
+use crate::sheet::{QuantityReading, Reading, Statement};
 use crate::standards::{self, PreferredCurrents, RatingSeries, Regime, TimeConstants};
 
 /// A chosen value.
@@ -45,25 +45,21 @@ pub(super) fn fill(case: &mut Case<'_>) -> bool {
     for (particular, _, choose) in CHOICES {
         let asked = case.breaker.all(particular).any(|s| s.reading == Reading::FromDuty);
         let Some(chosen) = asked.then(|| choose(case)).flatten() else { continue };
-        for statement in case.breaker.facts.statements_mut() {
-            if statement.about == About::Value
-                && statement.particular.is(particular)
-                && statement.reading == Reading::FromDuty
-            {
-                statement.reading = Reading::Quantity(QuantityReading {
-                    measure: chosen.measure,
-                    second: None,
-                    bound: None,
-                    qualifiers: Vec::new(),
-                    at: None,
-                    lasting: None,
-                    tolerance: None,
-                    again: Vec::new(),
-                    place: statement.value,
-                });
-                statement.chosen = Some(chosen.working.clone());
-                any = true;
-            }
+        let open = |statement: &Statement| statement.states(particular) && statement.reading == Reading::FromDuty;
+        for statement in case.breaker.facts.statements_mut(open) {
+            statement.reading = Reading::Quantity(QuantityReading {
+                measure: chosen.measure,
+                second: None,
+                bound: None,
+                qualifiers: Vec::new(),
+                at: None,
+                lasting: None,
+                tolerance: None,
+                again: Vec::new(),
+                place: statement.value,
+            });
+            statement.chosen = Some(chosen.working.clone());
+            any = true;
         }
         case.duty = crate::duty::Duty::of(case);
     }

@@ -10,7 +10,7 @@ pub use regime::Regimes;
 
 use std::ops::Deref;
 
-use crate::duty::Duty;
+use crate::duty::{Duty, Infeeds};
 use crate::finding::{Finding, FindingKind};
 use crate::particular::{SheetKind, breaker, site, system, tender};
 use crate::quantity::{ElectricPotential, Frequency};
@@ -36,6 +36,8 @@ pub struct Case<'a> {
     pub tender: Part<'a>,
     /// What it switches.
     pub circuits: Vec<Part<'a>>,
+    /// What feeds the system.
+    pub infeeds: Infeeds,
     /// What it must meet.
     pub duty: Duty,
 }
@@ -83,6 +85,7 @@ impl<'a> Case<'a> {
             site: linked("at"),
             tender: Part::of(set, tender),
             circuits,
+            infeeds: Infeeds::default(),
             duty: Duty::default(),
         };
         if let Some(frequency) = case.frequency() {
@@ -91,6 +94,9 @@ impl<'a> Case<'a> {
             for circuit in &mut case.circuits {
                 circuit.facts.set_frequency(frequency);
             }
+        }
+        if let Some(system) = case.system.sheet {
+            case.infeeds = Infeeds::of(set, system.id, case.frequency());
         }
         // What the system asks for is needed to choose ratings, and ratings are needed for the rest of the duty.
         case.duty = Duty::of(&case);

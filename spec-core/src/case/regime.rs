@@ -57,10 +57,10 @@ impl Regimes {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::source::{FileId, Place};
+    use crate::source::{BlockId, Place};
 
     fn regimes(texts: &[&str]) -> Regimes {
-        let place = Place::new(FileId(0), firstpole_grammar::Span::default());
+        let place = Place::new(BlockId(0), firstpole_grammar::Span::default());
         Regimes::of(&texts.iter().map(|t| Item { text: (*t).to_owned(), place }).collect::<Vec<_>>())
     }
 

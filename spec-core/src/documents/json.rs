@@ -149,8 +149,9 @@ fn told(value: f64) -> f64 {
 }
 
 fn span(assessment: &Assessment, place: Place) -> (String, Position, Position) {
-    match assessment.sources.file(place.file) {
-        Some(file) => (file.name.clone(), file.position(place.span.start), file.position(place.span.end)),
+    let at = assessment.sources.at(place);
+    match assessment.sources.file(at.file) {
+        Some(file) => (file.name.clone(), file.position(at.span.start), file.position(at.span.end)),
         None => (String::new(), Position { line: 1, column: 1 }, Position { line: 1, column: 1 }),
     }
 }

@@ -24,6 +24,8 @@ pub struct Working {
     pub inputs: Vec<Input>,
     /// The result, with its unit.
     pub result: String,
+    /// Where the infeeds stand that it rests on, which are summed up in an input.
+    pub infeeds: Vec<Place>,
 }
 
 /// One input of a working.
@@ -40,7 +42,10 @@ pub struct Input {
 impl<Q: Physical> Figure<Q> {
     /// A value that follows by `formula`.
     pub fn new(value: Q, formula: &'static str, basis: &'static str) -> Self {
-        Self { value, working: Working { formula, basis, inputs: Vec::new(), result: value.show() } }
+        Self {
+            value,
+            working: Working { formula, basis, inputs: Vec::new(), result: value.show(), infeeds: Vec::new() },
+        }
     }
 
     /// A value as it is stated.
@@ -61,7 +66,12 @@ impl<Q: Physical> Figure<Q> {
     pub fn from<I: Physical>(mut self, symbol: &'static str, figure: &Figure<I>) -> Self {
         let place =
             figure.working.inputs.first().filter(|_| figure.working.formula == "as stated").and_then(|i| i.place);
-        self.working.inputs.push(Input { symbol, text: figure.value.show(), place });
+        self.working.inputs.push(Input { symbol, text: figure.working.result.clone(), place });
+        for place in &figure.working.infeeds {
+            if !self.working.infeeds.contains(place) {
+                self.working.infeeds.push(*place);
+            }
+        }
         self
     }
 
@@ -76,6 +86,13 @@ impl<Q: Physical> Figure<Q> {
     #[must_use]
     pub fn shown(mut self, result: impl Into<String>) -> Self {
         self.working.result = result.into();
+        self
+    }
+
+    /// That it rests on these infeeds.
+    #[must_use]
+    pub fn resting_on(mut self, infeeds: impl IntoIterator<Item = Place>) -> Self {
+        self.working.infeeds.extend(infeeds);
         self
     }
 

@@ -2,16 +2,25 @@
 
 mod figure;
 mod gas;
+mod network;
 mod short_circuit;
+mod site;
+mod switching;
 mod trv;
 
 pub use figure::{Figure, Input, Working, percent};
 pub use gas::{Certainty, DewPoint, GasDuty, Level, LevelState, Medium, absolute, celsius, told};
+pub use network::{AtBusbar, BusbarKind, FromInfeeds, Infeeds, Lacking, Misplaced, NetworkTrv, Off, Part, Seen};
+pub(crate) use network::{limited, withstand};
 pub(crate) use short_circuit::making_factor_of;
+pub use site::{LevelOnSite, SiteDuty};
+pub(crate) use site::{stands_in_air, stated_for_site};
+pub use switching::{InrushDuty, SwitchingDuty};
+pub(crate) use switching::{hundreds, inductance_between_banks, inrush_limit};
 pub use trv::TrvDuty;
 
 use crate::case::Case;
-use crate::particular::{circuit, site, system};
+use crate::particular::{circuit, system};
 use crate::quantity::{
     ElectricCurrent, ElectricPotential, JouleIntegral, Physical, Ratio, ThermodynamicTemperature, Time,
 };
@@ -59,10 +68,18 @@ pub struct Duty {
     pub effectively_earthed: Option<(bool, crate::source::Place)>,
     /// The first-pole-to-clear factor that the earthing asks for.
     pub first_pole_factor: Option<Figure<Ratio>>,
+    /// What follows from the infeeds, whether the system states it or not.
+    pub infeeds: FromInfeeds,
     /// The standard envelopes.
     pub trv: TrvDuty,
+    /// The recovery voltage of the network at the busbar.
+    pub network_trv: NetworkTrv,
     /// The largest steady current of a circuit.
     pub load_current: Option<Figure<ElectricCurrent>>,
+    /// Lines, cables, banks, reactors and operations.
+    pub switching: SwitchingDuty,
+    /// What the site makes of the ratings.
+    pub site: SiteDuty,
     /// The gas in the cold.
     pub gas: GasDuty,
     /// The second filling of other compartments, in the cold.
@@ -97,12 +114,15 @@ impl Duty {
         };
         short_circuit::fill(case, &mut duty);
         trv::fill(case, &mut duty);
+        duty.network_trv = NetworkTrv::of(case, &case.infeeds, &duty);
+        switching::fill(case, &mut duty);
+        site::fill(case, &mut duty);
         duty.gas = GasDuty::of(case);
         duty.other_gas = GasDuty::of_others(case);
         duty
     }
 
-    /// Every figure by its name. The names of figures that are not computed yet stand there too, without a value.
+    /// Every figure by its name.
     pub fn figures(&self) -> Vec<NamedFigure> {
         let mut all = vec![
             named("system_voltage", "V", self.system_voltage.as_ref()),
@@ -125,37 +145,19 @@ impl Duty {
             named("making_current_rated", "A", self.making_current_rated.as_ref()),
             named("first_pole_factor", "1", self.first_pole_factor.as_ref()),
             named("load_current", "A", self.load_current.as_ref()),
+            named("r_over_x", "1", self.infeeds.r_over_x.as_ref()),
+            named("x0_over_x1", "1", self.infeeds.x0_over_x1.as_ref()),
+            named("short_circuit_current_two_phase_earth", "A", self.infeeds.two_phase_earth.as_ref()),
+            named("network_trv_peak", "V", self.network_trv.peak.as_ref()),
+            named("network_trv_rate", "V/s", self.network_trv.rate.as_ref()),
         ];
         all.extend(self.trv.figures());
+        all.extend(self.switching.figures());
+        all.extend(self.site.figures());
         all.extend(self.gas.figures());
-        all.extend(LATER.iter().map(|(key, unit)| NamedFigure {
-            key,
-            value: None,
-            unit,
-            working: None,
-            places: Vec::new(),
-        }));
         all
     }
 }
-
-/// Figures of the json that nothing computes yet.
-const LATER: &[(&str, &str)] = &[
-    ("network_trv_peak", "V"),
-    ("network_trv_rate", "V/s"),
-    ("line_charging_current", "A"),
-    ("cable_charging_current", "A"),
-    ("bank_current", "A"),
-    ("bank_continuous_current", "A"),
-    ("inrush_peak", "A"),
-    ("inrush_frequency", "Hz"),
-    ("continuous_current_at_site", "A"),
-    ("lightning_level_on_site", "V"),
-    ("switching_level_on_site", "V"),
-    ("creepage_needed", "m"),
-    ("clearing_time", "s"),
-    ("operations", "1"),
-];
 
 fn named<Q: Physical>(key: &'static str, unit: &'static str, figure: Option<&Figure<Q>>) -> NamedFigure {
     NamedFigure {
@@ -163,7 +165,7 @@ fn named<Q: Physical>(key: &'static str, unit: &'static str, figure: Option<&Fig
         value: figure.map(|figure| figure.value.si()),
         unit,
         working: figure.map(|figure| figure.working.to_string()),
-        places: figure.map(|figure| figure.places().collect()).unwrap_or_default(),
+        places: figure.map(|f| f.places().chain(f.working.infeeds.iter().copied()).collect()).unwrap_or_default(),
     }
 }
 
@@ -187,6 +189,6 @@ fn load_current(case: &Case<'_>) -> Option<Figure<ElectricCurrent>> {
 
 /// The lowest air temperature of the site: of its own line, else the lower end of the range.
 pub(crate) fn lowest_ambient<'a>(case: &'a Case<'_>) -> Option<crate::sheet::Stated<'a, ThermodynamicTemperature>> {
-    let own = case.site.quantity::<ThermodynamicTemperature>(&site::LOWEST_AMBIENT);
-    own.or_else(|| case.site.side(&site::AMBIENT, crate::particular::Limit::Least))
+    let own = case.site.quantity::<ThermodynamicTemperature>(&crate::particular::site::LOWEST_AMBIENT);
+    own.or_else(|| case.site.side(&crate::particular::site::AMBIENT, crate::particular::Limit::Least))
 }

@@ -1,8 +1,8 @@
 //! The short-circuit duty: current, time constant, DC component, peak, heat.
 
-use super::{Duty, Figure, percent};
+use super::{Duty, Figure, FromInfeeds, percent};
 use crate::case::Case;
-use crate::particular::{breaker, system, tender};
+use crate::particular::{Particular, breaker, system, tender};
 use crate::physics::{dc_component, short_circuit};
 use crate::quantity::{ElectricCurrent, ElectricPotential, Frequency, Physical, Power, Ratio, Time, significant};
 use crate::sheet::Stated;
@@ -13,6 +13,7 @@ const DC: &str = "IEC 62271-100 5.101, IEC/TR 62271-306 (from memory)";
 
 /// Computes what the text says enough for.
 pub(super) fn fill(case: &Case<'_>, duty: &mut Duty) {
+    duty.infeeds = FromInfeeds::of(&case.infeeds, instant(case).map(|figure| figure.value));
     currents(case, duty);
     duty.time_constant = time_constant(case, duty);
     peak(case, duty);
@@ -25,23 +26,38 @@ fn currents(case: &Case<'_>, duty: &mut Duty) {
     let system = &case.system;
     let own = system.quantity::<ElectricCurrent>(&system::SHORT_CIRCUIT_CURRENT).map(|s| Figure::stated("Ik3", &s));
     let stated = own.or_else(|| of_fault_level(case));
-    duty.short_circuit_current = stated.map(|figure| grown(case, figure));
-    duty.single_phase_current =
-        system.quantity(&system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT).map(|s| Figure::stated("Ik1", &s));
-    let two_phase =
-        system.quantity(&system::TWO_PHASE_TO_EARTH_SHORT_CIRCUIT_CURRENT).map(|s| Figure::stated("Ik2E", &s));
+    // What the system states counts; growth is of stated levels only.
+    let is_stated = stated.is_some();
+    duty.short_circuit_current = stated.map(|figure| grown(case, figure)).or_else(|| duty.infeeds.three_phase.clone());
+    duty.single_phase_current = system
+        .quantity(&system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT)
+        .map(|s| Figure::stated("Ik1", &s))
+        .or_else(|| duty.infeeds.single_phase.clone());
+    let two_phase = system
+        .quantity(&system::TWO_PHASE_TO_EARTH_SHORT_CIRCUIT_CURRENT)
+        .map(|s| Figure::stated("Ik2E", &s))
+        .or_else(|| duty.infeeds.two_phase_earth.clone());
     duty.breaking_duty = largest(&[
         ("Ik3", duty.short_circuit_current.as_ref()),
         ("Ik1", duty.single_phase_current.as_ref()),
         ("Ik2E", two_phase.as_ref()),
     ]);
     // Where the breaker's own share is documented, that is what it has to break.
-    if let Some(share) = case.breaker.quantity::<ElectricCurrent>(&breaker::SHORT_CIRCUIT_CURRENT_THROUGH_THE_BREAKER) {
-        duty.breaking_duty = Some(Figure::stated("share of the breaker", &share));
+    let share = case.breaker.quantity::<ElectricCurrent>(&breaker::SHORT_CIRCUIT_CURRENT_THROUGH_THE_BREAKER);
+    if let Some(share) = &share {
+        duty.breaking_duty = Some(Figure::stated("share of the breaker", share));
     }
     let decayed =
         system.quantity(&system::SYMMETRICAL_SHORT_CIRCUIT_BREAKING_CURRENT).map(|s| Figure::stated("Ib", &s));
     duty.symmetrical_breaking_current = decayed.or_else(|| {
+        // Machines among the infeeds let the current of three phases decay; that of one phase or two is taken as it begins.
+        if let Some(breaking) = duty.infeeds.breaking.as_ref().filter(|_| !is_stated && share.is_none()) {
+            return largest(&[
+                ("Ib", Some(breaking)),
+                ("Ik1", duty.single_phase_current.as_ref()),
+                ("Ik2E", two_phase.as_ref()),
+            ]);
+        }
         let initial = duty.breaking_duty.as_ref()?;
         Some(Figure::new(initial.value, "Ib = Ik'' far from generators", IEC_60909).from("Ik''", initial))
     });
@@ -111,7 +127,9 @@ fn time_constant(case: &Case<'_>, duty: &Duty) -> Option<Figure<Time>> {
                 .given("f", frequency.show()),
         );
     }
-    let peak: Stated<'_, ElectricCurrent> = system.quantity(&system::PEAK_SHORT_CIRCUIT_CURRENT)?;
+    let Some(peak) = system.quantity::<ElectricCurrent>(&system::PEAK_SHORT_CIRCUIT_CURRENT) else {
+        return duty.infeeds.time_constant.clone();
+    };
     let initial = duty.short_circuit_current.as_ref()?;
     let r_over_x = short_circuit::r_over_x_of_peak(peak.value, initial.value).filter(|r| *r > 0.0)?;
     let tau = short_circuit::time_constant(r_over_x.recip(), frequency);
@@ -123,14 +141,21 @@ fn time_constant(case: &Case<'_>, duty: &Duty) -> Option<Figure<Time>> {
     )
 }
 
+/// Whether the system itself states how its DC component decays.
+fn states_decay(case: &Case<'_>) -> bool {
+    let by: [&Particular; 4] =
+        [&system::DC_TIME_CONSTANT, &system::X_OVER_R, &system::R_OVER_X, &system::PEAK_SHORT_CIRCUIT_CURRENT];
+    by.into_iter().any(|particular| case.system.mentions(particular))
+}
+
 fn peak(case: &Case<'_>, duty: &mut Duty) {
-    let factor = duty.time_constant.as_ref().zip(case.frequency()).map(|(tau, frequency)| {
+    let of_tau = duty.time_constant.as_ref().zip(case.frequency()).map(|(tau, frequency)| {
         let kappa = short_circuit::peak_factor(short_circuit::x_over_r(tau.value, frequency).recip());
         Figure::new(Ratio::from_si(kappa), "kappa = 1.02 + 0.98 exp(-3 R/X), R/X = 1/(2 pi f tau)", IEC_60909)
             .from("tau", tau)
             .given("f", frequency.show())
     });
-    duty.peak_factor = factor;
+    duty.peak_factor = duty.infeeds.peak_factor.clone().filter(|_| !states_decay(case)).or(of_tau);
     let stated =
         case.system.quantity::<ElectricCurrent>(&system::PEAK_SHORT_CIRCUIT_CURRENT).map(|s| Figure::stated("ip", &s));
     duty.peak_current = stated.or_else(|| {
@@ -184,13 +209,17 @@ pub(crate) fn making_factor_of(case: &Case<'_>, duty: &Duty) -> Option<(f64, Str
     making_factor(making, frequency).map(|factor| (factor, format!("{} and {}", frequency.show(), tau.show())))
 }
 
-fn separation(case: &Case<'_>, duty: &mut Duty) {
-    let (Some(opening), Some(frequency)) = (case.breaker.least::<Time>(&breaker::OPENING_TIME), case.frequency())
-    else {
-        return;
-    };
+/// Time from the fault to contact separation.
+fn instant(case: &Case<'_>) -> Option<Figure<Time>> {
+    let opening = case.breaker.least::<Time>(&breaker::OPENING_TIME)?;
+    let frequency = case.frequency()?;
     let time = dc_component::contact_separation(opening.value, frequency);
-    let separation = Figure::new(time, "t = Top + half a cycle", DC).with("Top", &opening).given("f", frequency.show());
+    Some(Figure::new(time, "t = Top + half a cycle", DC).with("Top", &opening).given("f", frequency.show()))
+}
+
+fn separation(case: &Case<'_>, duty: &mut Duty) {
+    let Some(separation) = instant(case) else { return };
+    let time = separation.value;
     let share = |tau: &Figure<Time>| {
         let share = dc_component::share(time, tau.value);
         Figure::new(share, "p = exp(-t/tau)", DC).from("t", &separation).from("tau", tau).shown(percent(share.value))
@@ -202,16 +231,27 @@ fn separation(case: &Case<'_>, duty: &mut Duty) {
         let figure = Figure::new(total, "Itot = I sqrt(1 + 2 p^2)", "IEEE C37.04, IEC/TR 62271-306 (from memory)");
         figure.from(symbol, current).given("p", percent(share.value.value))
     };
-    duty.asymmetrical_current = duty
-        .symmetrical_breaking_current
-        .as_ref()
-        .zip(duty.dc_share.as_ref())
-        .map(|(current, share)| total(current, share, "Ik''"));
+    duty.asymmetrical_current = asymmetrical(duty)
+        .or_else(|| duty.breaking_duty.as_ref().zip(duty.dc_share.as_ref()).map(|(i, share)| total(i, share, "Ik''")));
     let rating = case.breaker.quantity::<ElectricCurrent>(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT);
     let rating = rating.map(|s| Figure::stated("Isc", &s));
     duty.asymmetrical_current_rated =
         rating.as_ref().zip(duty.dc_share_rated.as_ref()).map(|(current, share)| total(current, share, "Isc"));
     duty.separation = Some(separation);
+}
+
+/// The total where the alternating current has decayed: the direct current is still that of the initial one.
+fn asymmetrical(duty: &Duty) -> Option<Figure<ElectricCurrent>> {
+    let (decayed, initial) = (duty.symmetrical_breaking_current.as_ref()?, duty.breaking_duty.as_ref()?);
+    let share = duty.dc_share.as_ref()?;
+    if decayed.value.si() >= initial.value.si() {
+        return None;
+    }
+    let direct = initial.value.si() * share.value.value;
+    let total = ElectricCurrent::from_si((decayed.value.si().powi(2) + 2.0 * direct * direct).sqrt());
+    let basis = "IEEE C37.04, IEC/TR 62271-306 (from memory)";
+    let figure = Figure::new(total, "Itot = sqrt(Ib^2 + 2 (p Ik'')^2)", basis);
+    Some(figure.from("Ib", decayed).given("p", percent(share.value.value)).from("Ik''", initial))
 }
 
 fn heat(case: &Case<'_>, duty: &mut Duty) {

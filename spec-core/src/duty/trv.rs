@@ -49,14 +49,15 @@ impl TrvDuty {
 }
 
 pub(super) fn fill(case: &Case<'_>, duty: &mut Duty) {
-    duty.effectively_earthed = effectively_earthed(case);
+    duty.effectively_earthed = effectively_earthed(case, duty);
     duty.first_pole_factor = needed_factor(case, duty);
     envelopes(case, duty);
 }
 
 /// Whether the neutral is effectively earthed, and where that is said: by the ratios where they are stated, else by the earth-fault
-/// factor, else by the two currents, else by the words.
-fn effectively_earthed(case: &Case<'_>) -> Option<(bool, Place)> {
+/// factor, else by the two currents, else by the words, else by the
+/// infeeds.
+fn effectively_earthed(case: &Case<'_>, duty: &Duty) -> Option<(bool, Place)> {
     let system = &case.system;
     let x0 = system.quantity::<Ratio>(&system::X0_OVER_X1).or_else(|| system.quantity(&system::Z0_OVER_Z1));
     let r0 = system.quantity::<Ratio>(&system::R0_OVER_X1);
@@ -73,6 +74,12 @@ fn effectively_earthed(case: &Case<'_>) -> Option<(bool, Place)> {
     let three = duty_current(case, &system::SHORT_CIRCUIT_CURRENT);
     let one = duty_current(case, &system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT);
     let words = system.word(&system::NEUTRAL);
+    if words.is_none()
+        && let Some(place) = case.infeeds.places().next()
+        && let Some(effective) = duty.infeeds.effectively_earthed()
+    {
+        return Some((effective, place));
+    }
     if let (Some((three, _)), Some((one, place))) = (three, one) {
         // Currents speak of every earthed neutral; a neutral that the words call isolated or resonant is not argued with.
         if words.is_none_or(|(word, _)| matches!(word, "solidly earthed" | "effectively earthed")) {
@@ -86,7 +93,8 @@ fn duty_current(case: &Case<'_>, particular: &crate::particular::Particular) -> 
     case.system.quantity::<ElectricCurrent>(particular).map(|stated| (stated.value, stated.place()))
 }
 
-/// The first-pole-to-clear factor that the earthing asks for: of X0/X1, else of the two currents, else by the words.
+/// The first-pole-to-clear factor that the earthing asks for: of X0/X1, else of the two currents, else of the infeeds, else by the
+/// words. A neutral that the words call not effectively earthed comes first.
 fn needed_factor(case: &Case<'_>, duty: &Duty) -> Option<Figure<Ratio>> {
     const BASIS: &str = "IEC 62271-100 5.102, IEC/TR 62271-306 (from memory)";
     let system = &case.system;
@@ -120,6 +128,14 @@ fn needed_factor(case: &Case<'_>, duty: &Duty) -> Option<Figure<Ratio>> {
                     .given("a", significant(a, 3)),
             );
         }
+    }
+    if let Some(factor) = duty.infeeds.first_pole_factor.clone() {
+        return Some(factor);
+    }
+    if duty.infeeds.is_earthed == Some(false) && word.is_none() {
+        let factor = Ratio::from_si(standards::first_pole_factors().last()?);
+        let figure = Figure::new(factor, "1.5 where no infeed has an earthed neutral", BASIS);
+        return Some(figure.resting_on(case.infeeds.places()));
     }
     let (effective, _) = duty.effectively_earthed?;
     let (word, _) = word?;

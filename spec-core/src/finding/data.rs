@@ -42,6 +42,16 @@ impl FindingKind {
         }
     }
 
+    /// So many of it, in words: `2 cautions`.
+    pub fn counted(self, count: usize) -> String {
+        let ending = match (count, self) {
+            (1, _) => "",
+            (_, Self::Excess) => "es",
+            _ => "s",
+        };
+        format!("{count} {}{ending}", self.word())
+    }
+
     /// Whether it blocks the gate where nothing else is said.
     pub const fn blocks(self) -> bool {
         matches!(self, Self::Contradiction | Self::Shortfall)
@@ -84,7 +94,7 @@ impl Datum {
 }
 
 /// Another statement that a finding rests on.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct Related {
     /// Where it stands.
     pub place: Place,
@@ -93,7 +103,7 @@ pub struct Related {
 }
 
 /// A change of the text that mends a finding.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct Edit {
     /// What it does.
     pub title: String,
@@ -115,7 +125,7 @@ pub struct Acceptance {
 }
 
 /// What is wrong, where, by what measure, and how it is mended.
-#[derive(Clone, Debug, PartialEq, Serialize)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct Finding {
     /// The name of the rule.
     pub rule: &'static str,
@@ -124,7 +134,6 @@ pub struct Finding {
     /// The breaker that it concerns.
     pub breaker: Option<String>,
     /// The sheet of that breaker.
-    #[serde(skip)]
     pub sheet: Option<SheetId>,
     /// The very value that it is about.
     pub place: Place,

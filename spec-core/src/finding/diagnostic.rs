@@ -3,13 +3,14 @@
 //! `miette` panics on a span past the end, draws no label without width at the end of a file, and scans a text from its start
 //! for each snippet; the line index and the clamping here are for that.
 
+use firstpole_grammar::Span;
 use miette::{
     Diagnostic, LabeledSpan, MietteError, MietteSpanContents, Severity, SourceCode, SourceSpan, SpanContents,
 };
 
 use super::{Finding, FindingKind};
 use crate::assess::Assessment;
-use crate::source::{Place, SourceFile};
+use crate::source::SourceFile;
 
 /// A file of the set as `miette` reads it.
 #[derive(Clone, Copy, Debug)]
@@ -67,16 +68,18 @@ struct Elsewhere<'a> {
 impl<'a> FindingDiagnostic<'a> {
     /// The finding with the sources that it points into.
     pub fn new(finding: &'a Finding, assessment: &'a Assessment) -> Self {
-        let source = assessment.sources.file(finding.place.file).map(IndexedSource);
+        let at = assessment.sources.at(finding.place);
+        let source = assessment.sources.file(at.file).map(IndexedSource);
         let own = Some(finding.label.clone()).filter(|label| !label.is_empty());
-        let mut labels = vec![LabeledSpan::new_primary_with_span(own, span(source, finding.place))];
+        let mut labels = vec![LabeledSpan::new_primary_with_span(own, span(source, at.span))];
         let mut elsewhere = Vec::new();
         for related in &finding.related {
-            if related.place.file == finding.place.file {
-                labels.push(LabeledSpan::new_with_span(Some(related.message.clone()), span(source, related.place)));
+            let place = assessment.sources.at(related.place);
+            if place.file == at.file {
+                labels.push(LabeledSpan::new_with_span(Some(related.message.clone()), span(source, place.span)));
             } else {
-                let source = assessment.sources.file(related.place.file).map(IndexedSource);
-                let label = LabeledSpan::new_with_span(None, span(source, related.place));
+                let source = assessment.sources.file(place.file).map(IndexedSource);
+                let label = LabeledSpan::new_with_span(None, span(source, place.span));
                 elsewhere.push(Elsewhere { message: &related.message, source, label });
             }
         }
@@ -85,11 +88,11 @@ impl<'a> FindingDiagnostic<'a> {
 }
 
 /// The span clamped to the text; one without width is put on the character at it, or on the last one.
-fn span(source: Option<IndexedSource<'_>>, place: Place) -> SourceSpan {
+fn span(source: Option<IndexedSource<'_>>, place: Span) -> SourceSpan {
     let Some(IndexedSource(file)) = source else { return (0, 0).into() };
     let text: &str = &file.text;
-    let end = (place.span.end as usize).min(text.len());
-    let start = (place.span.start as usize).min(end);
+    let end = (place.end as usize).min(text.len());
+    let start = (place.start as usize).min(end);
     if start < end {
         return (start, end - start).into();
     }

@@ -8,13 +8,17 @@ pub use data::{Acceptance, Datum, Edit, Finding, FindingKind, Related};
 #[cfg(feature = "miette")]
 pub use diagnostic::{FindingDiagnostic, IndexedSource};
 
+use std::sync::Arc;
+
 use crate::rules::Rule;
-use crate::source::Place;
+use crate::source::{Place, Sources};
 
 /// Collects the findings of one run.
 #[derive(Debug, Default)]
 pub struct Findings {
     all: Vec<Finding>,
+    /// Those that were found before and still hold.
+    kept: Vec<Arc<Finding>>,
 }
 
 impl Findings {
@@ -26,6 +30,11 @@ impl Findings {
     /// Adds a finding.
     pub fn push(&mut self, finding: Finding) {
         self.all.push(finding);
+    }
+
+    /// Adds findings that were made before.
+    pub(crate) fn extend(&mut self, findings: &[Arc<Finding>]) {
+        self.kept.extend_from_slice(findings);
     }
 
     /// Begins a finding of `rule` at `place`; the builder puts it in when it is dropped into [`Findings::push`].
@@ -64,11 +73,19 @@ impl Findings {
         self.all.is_empty()
     }
 
-    /// In the order of the text: by file, start, rule, message; each one once.
-    pub fn sorted(mut self) -> Vec<Finding> {
-        self.all
-            .sort_by(|a, b| (a.place, a.rule, &a.breaker, &a.message).cmp(&(b.place, b.rule, &b.breaker, &b.message)));
-        self.all.dedup();
-        self.all
+    /// To be kept: each one once, in no order yet.
+    pub(crate) fn shared(self) -> Vec<Arc<Finding>> {
+        let mut shared = self.kept;
+        shared.extend(self.all.into_iter().map(Arc::new));
+        shared
     }
+}
+
+/// Puts findings in the order of the text: by file, start, rule, breaker, message; each one once.
+pub(crate) fn sort(findings: &mut Vec<Arc<Finding>>, sources: &Sources) {
+    findings.sort_by(|a, b| {
+        let (first, second) = (sources.at(a.place), sources.at(b.place));
+        (first, a.rule, &a.breaker, &a.message).cmp(&(second, b.rule, &b.breaker, &b.message))
+    });
+    findings.dedup();
 }

@@ -307,4 +307,39 @@ particulars! { Circuit, "circuit";
         basis: "IEC 62271-110 (memory)",
         meaning: "At the motor, transformer or reactor.",
     }
+    PROSPECTIVE_TRV_CURRENT = "prospective TRV current" {
+        wordings: ["TRV study current"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Current], &["kA"]).as_(Qualifier::Rms)),
+        sense: Exact,
+        basis: "IEEE C37.011 (memory)",
+        meaning: "The fault current of a studied TRV, of a fault in this circuit.",
+    }
+    PROSPECTIVE_TRV_PEAK = "prospective TRV peak" {
+        wordings: ["TRV study peak"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Voltage], &["kV"]).as_(Qualifier::Peak)),
+        sense: Exact,
+        basis: "IEEE C37.011 (memory)",
+        meaning: "The peak found by the study.",
+    }
+    PROSPECTIVE_TRV_RATE_OF_RISE = "prospective TRV rate of rise" {
+        wordings: ["TRV study RRRV"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::VoltageRate], &["kV/us"])),
+        sense: Exact,
+        basis: "IEEE C37.011 (memory)",
+        meaning: "The rate found by the study; if absent, from peak and time.",
+    }
+    PROSPECTIVE_TRV_TIME_TO_PEAK = "prospective TRV time to peak" {
+        wordings: ["TRV study time to peak"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Time], &["us"])),
+        sense: Exact,
+        basis: "IEEE C37.011 (memory)",
+        meaning: "From current zero to the peak.",
+    }
+    PROSPECTIVE_TRV_TIME_T3 = "prospective TRV time t3" {
+        wordings: ["TRV study t3"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Time], &["us"])),
+        sense: Exact,
+        basis: "IEEE C37.011 (memory)",
+        meaning: "The two-parameter time of the studied wave.",
+    }
 }

@@ -87,6 +87,14 @@ particulars! { Infeed, "infeed";
         basis: "IEC 60909-0 (memory)",
         meaning: "Of a transformer.",
     }
+    MIDDLE_VOLTAGE_SIDE = "middle-voltage side" {
+        wordings: ["rated middle voltage", "tertiary voltage"],
+        symbols: ["UrMV"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Voltage], &["kV"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "Of a transformer with three windings, the one between high and low.",
+    }
     LOW_VOLTAGE_SIDE = "low-voltage side" {
         wordings: ["rated low voltage", "secondary voltage"],
         symbols: ["UrLV"],
@@ -101,7 +109,22 @@ particulars! { Infeed, "infeed";
         kind: Kind::Quantity(QuantityKind::of(&[Dimension::ApparentPower, Dimension::ActivePower], &["MVA", "MW"])),
         sense: Exact,
         basis: "IEC 60909-0 (memory)",
-        meaning: "Of a transformer, generator, motor group or converter plant.",
+        meaning: "Of a transformer, a generator, one motor or a converter plant; of a power station unit, of generator and transformer alike.",
+    }
+    UNIT_TRANSFORMER_POWER = "unit transformer power" {
+        wordings: ["rated power of the unit transformer"],
+        symbols: ["SrT"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::ApparentPower], &["MVA"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "Of the transformer of a power station unit, where it is not that of the generator.",
+    }
+    RATED_CURRENT = "rated current" {
+        symbols: ["Ir"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Current], &["A"]).as_(Qualifier::Rms)),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "Of a series reactor that is given by its impedance voltage.",
     }
     IMPEDANCE_VOLTAGE = "impedance voltage" {
         wordings: ["short-circuit voltage", "short-circuit impedance", "percent impedance"],
@@ -109,7 +132,7 @@ particulars! { Infeed, "infeed";
         kind: Kind::Quantity(QuantityKind::of(&[Dimension::Share], &["%"])),
         sense: Exact,
         basis: "IEC 60076 (memory)",
-        meaning: "Of a transformer.",
+        meaning: "Of a transformer; with three windings, between high and middle, at rated power.",
     }
     LOAD_LOSSES = "load losses" {
         wordings: ["copper losses"],
@@ -123,15 +146,69 @@ particulars! { Infeed, "infeed";
         symbols: ["uk0"],
         kind: Kind::Quantity(QuantityKind::of(&[Dimension::Share], &["%"])),
         sense: Exact,
-        carried: true,
         basis: "IEC 60909-0 (memory)",
         meaning: "Of a transformer, where it differs.",
+    }
+    IMPEDANCE_VOLTAGE_HIGH_TO_LOW = "impedance voltage high to low" {
+        wordings: ["high-low impedance voltage"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Share], &["%"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "Of a transformer with three windings, between high and low.",
+    }
+    LOAD_LOSSES_HIGH_TO_LOW = "load losses high to low" {
+        wordings: ["high-low load losses"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::ActivePower], &["kW"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "The losses that belong to it.",
+    }
+    RATED_POWER_HIGH_TO_LOW = "rated power high to low" {
+        wordings: ["high-low rated power"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::ApparentPower], &["MVA"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "The power that both are for; absent: the rated power.",
+    }
+    ZERO_SEQUENCE_IMPEDANCE_VOLTAGE_HIGH_TO_LOW = "zero-sequence impedance voltage high to low" {
+        wordings: ["high-low zero-sequence impedance voltage"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Share], &["%"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "The same in the zero sequence, where the three pairs differ.",
+    }
+    IMPEDANCE_VOLTAGE_MIDDLE_TO_LOW = "impedance voltage middle to low" {
+        wordings: ["middle-low impedance voltage"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Share], &["%"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "Of a transformer with three windings, between middle and low.",
+    }
+    LOAD_LOSSES_MIDDLE_TO_LOW = "load losses middle to low" {
+        wordings: ["middle-low load losses"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::ActivePower], &["kW"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "The losses that belong to it.",
+    }
+    RATED_POWER_MIDDLE_TO_LOW = "rated power middle to low" {
+        wordings: ["middle-low rated power"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::ApparentPower], &["MVA"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "The power that both are for; absent: the rated power.",
+    }
+    ZERO_SEQUENCE_IMPEDANCE_VOLTAGE_MIDDLE_TO_LOW = "zero-sequence impedance voltage middle to low" {
+        wordings: ["middle-low zero-sequence impedance voltage"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Share], &["%"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "The same in the zero sequence, where the three pairs differ.",
     }
     WINDING_CONNECTION = "winding connection" {
         wordings: ["vector group"],
         kind: Kind::Text,
         sense: Exact,
-        carried: true,
         basis: "IEC 60076 (memory)",
         meaning: "Decides whether zero-sequence current passes.",
     }
@@ -149,13 +226,26 @@ particulars! { Infeed, "infeed";
         basis: "IEC 60909-0 (memory)",
         meaning: "Counts three times in the zero sequence.",
     }
+    FAR_SIDE_NEUTRAL = "neutral of the far side" {
+        wordings: ["far-side neutral", "neutral of the other side"],
+        kind: Kind::Words { list: &words::NEUTRAL, alternatives: false },
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "Of a star winding of a transformer on the other side than the breaker's.",
+    }
     ON_LOAD_TAP_RANGE = "on-load tap range" {
         wordings: ["tap range"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Share], &["%"]).or_none()),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "Of a unit transformer, one side of the middle; none where it has no on-load tap changer.",
+    }
+    OFF_LOAD_TAP = "off-load tap" {
+        symbols: ["pT"],
         kind: Kind::Quantity(QuantityKind::of(&[Dimension::Share], &["%"])),
         sense: Exact,
-        carried: true,
         basis: "IEC 60909-0 (memory)",
-        meaning: "Of a unit transformer, one side of the middle.",
+        meaning: "Of a unit transformer without on-load tap changer, the tap in permanent use towards less impedance; absent: none.",
     }
     VOLTAGE_FACTOR = "voltage factor" {
         wordings: ["c factor"],
@@ -241,9 +331,16 @@ particulars! { Infeed, "infeed";
         wordings: ["stator resistance"],
         kind: Kind::Quantity(QuantityKind::of(&[Dimension::Impedance, Dimension::Share], &["ohm", "%"])),
         sense: Exact,
-        carried: true,
         basis: "IEC 60909-0 (memory)",
-        meaning: "Of a synchronous machine.",
+        meaning: "Of a synchronous machine; absent: the fictitious one of the peak current.",
+    }
+    VOLTAGE_RANGE = "voltage range" {
+        wordings: ["generator voltage range"],
+        symbols: ["pG"],
+        kind: Kind::Quantity(QuantityKind::of(&[Dimension::Share], &["%"])),
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "How far the voltage of a generator lies above its rated one for long; absent: not at all.",
     }
     POWER_FACTOR = "power factor" {
         wordings: ["cos phi"],
@@ -263,16 +360,14 @@ particulars! { Infeed, "infeed";
     EFFICIENCY = "efficiency" {
         kind: Kind::Quantity(QuantityKind::of(&[Dimension::Share], &["%"])),
         sense: Exact,
-        carried: true,
         basis: "IEC 60909-0 (memory)",
         meaning: "Of asynchronous motors.",
     }
     POLE_PAIRS = "pole pairs" {
         kind: Kind::Count,
         sense: Exact,
-        carried: true,
         basis: "IEC 60909-0 (memory)",
-        meaning: "Of asynchronous motors; decides the decay.",
+        meaning: "Of asynchronous motors; decides the decay, and without it none is counted.",
     }
     NATURAL_FREQUENCY = "natural frequency" {
         kind: Kind::Quantity(QuantityKind::of(&[Dimension::Frequency], &["kHz"])),

@@ -56,6 +56,17 @@ impl SheetKind {
         }
     }
 
+    /// The kind whose word is nearest to `word`, if one is near.
+    pub fn nearest(word: &str) -> Option<Self> {
+        let lower = word.to_lowercase();
+        Self::ALL
+            .into_iter()
+            .map(|kind| (strsim::normalized_damerau_levenshtein(kind.word(), &lower), kind))
+            .filter(|(near, _)| *near >= 0.7)
+            .max_by(|a, b| a.0.total_cmp(&b.0))
+            .map(|(_, kind)| kind)
+    }
+
     /// The kind that a word heads.
     pub fn read(word: &str) -> Option<Self> {
         Self::ALL.into_iter().find(|kind| kind.word().eq_ignore_ascii_case(word))

@@ -44,6 +44,14 @@ particulars! { System, "system";
         basis: "practice",
         meaning: "The band about the nominal voltage.",
     }
+    VOLTAGE_FACTOR = "voltage factor" {
+        wordings: ["c factor"],
+        symbols: ["c"],
+        kind: Kind::Ratio,
+        sense: Exact,
+        basis: "IEC 60909-0 (memory)",
+        meaning: "Other than the standard's cmax, for currents that follow from infeeds; where cmax Un would pass the highest voltage.",
+    }
     NEUTRAL = "neutral" {
         wordings: ["neutral earthing", "neutral grounding", "earthing of the neutral", "grounding", "system earthing", "system grounding"],
         kind: Kind::Words { list: &words::NEUTRAL, alternatives: false },

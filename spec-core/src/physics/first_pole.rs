@@ -1,10 +1,17 @@
 //! Recovery voltage of the first pole to clear, by symmetrical components (IEC/TR 62271-306, from memory).
 
+use super::infeed::Impedance;
 use crate::quantity::{ElectricCurrent, Physical};
 
 /// First-pole-to-clear factor of X0/X1 = a: kpp = 3a / (1 + 2a).
 pub fn first_pole_factor(x0_over_x1: f64) -> f64 {
     3.0 * x0_over_x1 / (1.0 + 2.0 * x0_over_x1)
+}
+
+/// The same of the impedances themselves: |3 Z0 / (Z1 + 2 Z0)|.
+pub fn first_pole_factor_of(positive: Impedance, zero: Impedance) -> f64 {
+    let (z1, z0) = (positive.ohms(), zero.ohms());
+    (3.0 * z0 / (z1 + 2.0 * z0)).norm()
 }
 
 /// Factor of the second pole: sqrt3 sqrt(a^2 + a + 1) / (a + 2).

@@ -85,11 +85,44 @@ impl ExponentialRise {
         self.crest * (1.0 - (-after / self.time_constant.si()).exp())
     }
 
+    /// The steepest line from the origin that touches the rise: E/tau without delay. With D = delay/tau it touches where
+    /// e^x = x + 1 + D, x = (t - delay)/tau, and is E/tau e^-x. V/s. Follows from the wave; only to be used up to the first reflection.
+    pub fn tangent(&self) -> VoltageRate {
+        let delay = (self.delay / self.time_constant).value;
+        if !(delay > 0.0 && delay.is_finite()) {
+            return self.rate;
+        }
+        // Newton from above; the function is convex, so that every step stays above the root.
+        let mut x = (2.0 * delay).sqrt().max((1.0 + delay).ln());
+        for _ in 0..NEWTON_STEPS {
+            let (value, slope) = (x.exp() - x - 1.0 - delay, x.exp_m1());
+            x -= value / slope;
+        }
+        self.rate * (-x).exp()
+    }
+
+    /// The crest with the first reflection from a line whose far end is open: a wave that left with the busbar's voltage comes back
+    /// after `there_and_back`, and adds K E x e^-x, x = (t - there_and_back)/tau, K = 2 Zeq/Z the part that passes from that line (or
+    /// those equal ones) to the busbar with its source. The sum is greatest at x = 1 + e^(-there_and_back/tau)/K, where it is
+    /// E (1 + K e^-x). Attenuation is left out. Follows from the circuit: a ramp of current into L beside the lines; the coefficient of
+    /// IEEE C37.011, from memory.
+    pub fn crest_with_reflection(&self, there_and_back: Time, passing: f64) -> ElectricPotential {
+        let not_yet_risen = (-(there_and_back / self.time_constant).value).exp();
+        if passing <= 0.0 || !passing.is_finite() {
+            return self.crest;
+        }
+        let x = 1.0 + not_yet_risen / passing;
+        self.crest * (1.0 + passing * (-x).exp())
+    }
+
     /// The voltage when the first reflection arrives, or the crest where none is known.
     pub fn before_reflection(&self) -> ElectricPotential {
         self.first_reflection.map_or(self.crest, |time| self.at(time))
     }
 }
+
+/// Steps of Newton's method for the tangent: it doubles the digits with each.
+const NEWTON_STEPS: usize = 12;
 
 /// Inductance of the source that limits a fault: Ur / (sqrt3 w I). H. IEEE C37.011, from memory.
 pub fn source_inductance(rated: ElectricPotential, current: ElectricCurrent, frequency: Frequency) -> Inductance {
@@ -240,6 +273,58 @@ mod tests {
         assert!((early / rise.rate.si() - 1.0).abs() < 1e-3);
         let value = rise.before_reflection().si() / rise.crest.si();
         assert!((value - (1.0 - (-(200e-6 - 0.508e-6) / rise.time_constant.si()).exp())).abs() < 1e-12);
+    }
+
+    /// The same circuit step by step: the current of the source's inductance and of the lines together is a ramp, and the wave that
+    /// left on the open line comes back doubled.
+    #[test]
+    fn a_reflection_raises_the_crest() {
+        let (current, frequency, z) = (ElectricCurrent::from_si(20e3), Frequency::from_si(50.0), 250.0);
+        let (lines, kpp) = (3.0, 1.3);
+        let all = ElectricalResistance::from_si(z / lines);
+        let rise = exponential_rise(kv(145.0), kpp, current, frequency, all, Capacitance::default(), None);
+        for microseconds in [20.0, 100.0, 400.0] {
+            let (back, step) = (microseconds * 1e-6, 1e-8);
+            let inductance = rise.time_constant.si() * all.si();
+            let ramp = rise.crest.si() / inductance;
+            let delay = (back / step) as usize;
+            let mut left: Vec<f64> = Vec::new();
+            let (mut through, mut greatest) = (0.0f64, 0.0f64);
+            // Until the second reflection.
+            for at in 0..=2 * delay {
+                let arriving = at.checked_sub(delay).and_then(|then| left.get(then)).copied().unwrap_or(0.0);
+                let time = at as f64 * step;
+                let voltage = (ramp * time - through + 2.0 * arriving / z) * all.si();
+                through += voltage / inductance * step;
+                left.push(voltage - arriving);
+                greatest = greatest.max(voltage);
+            }
+            let passing = 2.0 * all.si() / z;
+            let crest = rise.crest_with_reflection(Time::from_si(back), passing).si();
+            let reached = 1.0 + (-(back / rise.time_constant.si())).exp() / passing;
+            // Where the crest comes before the second reflection, it is the greatest voltage.
+            if reached * rise.time_constant.si() < back {
+                assert!((greatest / crest - 1.0).abs() < 1e-3, "{microseconds}: {greatest} {crest}");
+            } else {
+                assert!(greatest <= crest * 1.001, "{microseconds}: {greatest} {crest}");
+            }
+        }
+        assert_eq!(rise.crest_with_reflection(Time::from_si(1e-4), 0.0), rise.crest);
+    }
+
+    /// The tangent of a delayed rise is the greatest u/t, found here by trial.
+    #[test]
+    fn the_tangent_of_a_delayed_rise() {
+        let (current, frequency) = (ElectricCurrent::from_si(40e3), Frequency::from_si(60.0));
+        for nanofarad in [0.0, 1.0, 20.0, 500.0, 20_000.0] {
+            let capacitance = Capacitance::from_si(nanofarad * 1e-9);
+            let z = ElectricalResistance::from_si(101.6);
+            let rise = exponential_rise(kv(245.0), 1.3, current, frequency, z, capacitance, None);
+            let times = (1..200_000).map(|n| rise.time_constant * (f64::from(n) * 1e-4));
+            let greatest = times.map(|t| (rise.at(t) / t).si()).fold(0.0, f64::max);
+            let tangent = rise.tangent().si();
+            assert!((greatest / tangent - 1.0).abs() < 2e-4, "{nanofarad} nF: {greatest} {tangent}");
+        }
     }
 
     /// The factor of the tangent is the greatest of (1 - cos x)/x, found here by trial.

@@ -4,8 +4,7 @@ use super::{Check, EQUAL, Rule, add_line};
 use crate::case::Case;
 use crate::finding::{FindingKind, Findings};
 use crate::particular::{breaker, site};
-use crate::quantity::{ElectricCurrent, Frequency, Length, Physical, significant};
-use crate::standards::altitude_cooling;
+use crate::quantity::{ElectricCurrent, Frequency, Length, Physical};
 
 /// The rules of this subject.
 pub static ALL: &[&Rule] = &[&BAY_CURRENT_CHAIN, &COOLING_ALTITUDE, &OVERLOAD_INCOMPLETE, &TEMPERATURE_RISE_FREQUENCY];
@@ -78,8 +77,8 @@ fn cooling(case: &Case<'_>, findings: &mut Findings) {
     {
         return;
     }
-    let factor = altitude_cooling(altitude.value);
-    let left = factor.map(|factor| rated.value * factor);
+    let figure = case.duty.site.current_in_thin_air.as_ref();
+    let left = figure.map(|figure| figure.value);
     let load = case.duty.load_current.as_ref();
     if left.zip(load).is_some_and(|(left, load)| left.si() >= load.value.si() * (1.0 - EQUAL)) {
         return;
@@ -88,8 +87,8 @@ fn cooling(case: &Case<'_>, findings: &mut Findings) {
     let message = format!("at {} {} is cooled less than in the test{worth}", altitude.measure, rated.measure);
     let finding = findings.add(&COOLING_ALTITUDE, rated.place(), message);
     finding.label("cooled by thin air").stated(&rated.measure).beside(altitude.statement, "the altitude");
-    if let (Some(factor), Some(left)) = (factor, left) {
-        finding.working(format!("{} x {} = {}", rated.measure, significant(factor, 3), rated.like(left)));
+    if let Some(figure) = figure {
+        finding.working(figure.working.to_string());
     }
     for place in load.iter().flat_map(|load| load.places()) {
         finding.related(place, "the largest load");

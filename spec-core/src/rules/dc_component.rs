@@ -1,7 +1,7 @@
 //! Rules on the DC component of the breaking current.
 
 use super::short_circuit::decayed;
-use super::{Check, EQUAL, Rule, breaking_current};
+use super::{Check, EQUAL, Rule, breaking_current, rests_on_infeeds};
 use crate::case::Case;
 use crate::duty::percent;
 use crate::finding::{Datum, FindingKind, Findings};
@@ -78,6 +78,7 @@ fn time_constant(case: &Case<'_>, findings: &mut Findings) {
     for place in network.places() {
         finding.related(place, "the network's time constant follows from this");
     }
+    rests_on_infeeds(finding, network);
     if let (Some(system), Some(own)) = (case.duty.dc_share.as_ref(), case.duty.dc_share_rated.as_ref()) {
         let reduced = dc_component::reduced_current(isc.value, own.value, system.value);
         finding.working(format!(
@@ -398,6 +399,9 @@ fn delayed_zero(case: &Case<'_>, findings: &mut Findings) {
             .advice("ask for the proof that the arc forces current zeros, and for the generator-source DC component as a rating");
         return;
     }
+    if of_infeeds(case, findings) {
+        return;
+    }
     // The same from the network's own figures, where the decayed current is stated with its time.
     let (Some((decayed, delay)), Some(tau), Some(initial)) =
         (decayed(case), case.duty.time_constant.as_ref(), case.duty.short_circuit_current.as_ref())
@@ -421,6 +425,37 @@ fn delayed_zero(case: &Case<'_>, findings: &mut Findings) {
         .working(format!("sqrt2 Ik'' exp(-t/tau) = {}, sqrt2 Ib = {}", decayed.like(direct), decayed.like(crest)))
         .beside(delay.statement, "the time of contact separation")
         .advice("ask for the proof that the arc forces current zeros");
+}
+
+/// The same where the infeeds give both currents, and the system states neither; told whether it was found.
+fn of_infeeds(case: &Case<'_>, findings: &mut Findings) -> bool {
+    let infeeds = &case.duty.infeeds;
+    let states =
+        [&system::SHORT_CIRCUIT_CURRENT, &system::FAULT_LEVEL, &system::SYMMETRICAL_SHORT_CIRCUIT_BREAKING_CURRENT];
+    let stated = states.into_iter().any(|particular| case.system.mentions(particular));
+    let (Some(decayed), Some(direct), false) = (infeeds.breaking.as_ref(), infeeds.direct.as_ref(), stated) else {
+        return false;
+    };
+    let crest = dc_component::dc_current(decayed.value, short_circuit::ratio(1.0));
+    let rated = case.breaker.quantity::<Ratio>(&breaker::GENERATOR_SOURCE_DC_COMPONENT);
+    let share = direct.value.si() / crest.si();
+    if share <= 1.0 || rated.is_some_and(|rated| rated.value.value >= share - EQUAL) {
+        return false;
+    }
+    let place = breaking_current(case).map_or(case.sheet.heading, |isc| isc.place());
+    let message = format!(
+        "at contact separation the infeeds give a direct current of {}, above the peak {} of the decayed alternating current: current \
+         zeros are missing",
+        direct.value.show(),
+        crest.show()
+    );
+    let finding = findings.add(&DELAYED_CURRENT_ZERO, place, message);
+    finding.label("no current zeros").working(direct.working.to_string()).working(decayed.working.to_string());
+    rests_on_infeeds(finding, direct);
+    finding.advice(
+        "ask for the proof that the arc forces current zeros, and for the generator-source DC component as a rating",
+    );
+    true
 }
 
 #[cfg(test)]
@@ -559,5 +594,29 @@ mod tests {
         bay("110 %").set("breaker", "generator-source DC component", "130 %").silent("delayed-current-zero");
         bay("140 %").set("breaker", "generator-source DC component", "130 %").one("delayed-current-zero");
         Bay::new().silent("delayed-current-zero");
+    }
+
+    /// A generator of 150 MVA at its own voltage, xd'' 15 %, without a network: Ib falls to two thirds, and with 0.1 % of resistance
+    /// (478 ms) the direct current lasts.
+    #[test]
+    fn infeeds_without_current_zeros() {
+        let bay = |more: &str, resistance: &str| {
+            let system =
+                ["short-circuit current", "single-phase short-circuit current", "DC time constant", "X0/X1", "neutral"];
+            let bay = system.into_iter().fold(Bay::new(), |bay, label| bay.without("system", label));
+            bay.set("system", "nominal voltage", "15 kV").set("system", "highest voltage", "17.5 kV").and(&format!(
+                "infeed G into Ring\n    kind: generator\n    rated power: 150 MVA\n    rated voltage: 15 kV\n    subtransient reactance: 15 %\n    \
+                 armature resistance: {resistance}\n    power factor: 0.85\n    neutral: isolated\n{more}"
+            ))
+        };
+        let finding = bay("", "0.1 %").one("delayed-current-zero");
+        assert!(finding.working[0].contains("idc") && finding.working[1].contains("mu"), "{:?}", finding.working);
+        bay("", "3 %").silent("delayed-current-zero");
+        bay("", "0.1 %").set("breaker", "generator-source DC component", "150 %").silent("delayed-current-zero");
+        // A strong network beside it has zeros of its own.
+        let grid = "infeed Grid into Ring\n    kind: network\n    short-circuit current: 200 kA\n    X/R: 10\n    neutral: isolated\n";
+        bay(grid, "0.1 %").silent("delayed-current-zero");
+        // The stated level counts, and of that no decay is known.
+        bay("", "0.1 %").set("system", "short-circuit current", "40 kA").silent("delayed-current-zero");
     }
 }

@@ -1,5 +1,7 @@
 //! Deviations: findings that were accepted, by whom, why and until when.
 
+use std::sync::Arc;
+
 use super::{Check, Policy, Rule};
 use crate::finding::{Acceptance, Finding, FindingKind, Findings};
 use crate::particular::{SheetKind, deviation};
@@ -33,7 +35,13 @@ pub static DEVIATION_IDLE: Rule = Rule {
 };
 
 /// Marks the findings that deviations accept, and says which deviations accept nothing.
-pub fn apply(set: &Set, policy: &Policy, findings: &mut Findings) {
+pub(crate) fn apply(set: &Set, policy: &Policy, findings: &mut Vec<Arc<Finding>>) {
+    let mut own = Findings::new();
+    accept(set, policy, findings, &mut own);
+    findings.append(&mut own.shared());
+}
+
+fn accept(set: &Set, policy: &Policy, all: &mut [Arc<Finding>], findings: &mut Findings) {
     for sheet in set.of_kind(SheetKind::Deviation) {
         let facts = Facts::new(sheet.statements.clone());
         let missing = missing(&facts);
@@ -59,8 +67,8 @@ pub fn apply(set: &Set, policy: &Policy, findings: &mut Findings) {
             continue;
         }
         let mut matched = false;
-        for finding in findings.iter_mut().filter(|finding| finding.rule == rule && belongs(finding, sheet, set)) {
-            finding.accepted = Some(acceptance.clone());
+        for finding in all.iter_mut().filter(|finding| finding.rule == rule && belongs(finding, sheet, set)) {
+            Arc::make_mut(finding).accepted = Some(acceptance.clone());
             matched = true;
         }
         if !matched && known(sheet) {
@@ -111,8 +119,7 @@ fn belongs(finding: &Finding, deviation: &Sheet, set: &Set) -> bool {
     if target.kind == SheetKind::Breaker {
         return finding.sheet == Some(target.id);
     }
-    let range = target.heading.span.start..=target.end.span.end;
-    finding.place.file == target.file() && range.contains(&finding.place.span.start)
+    finding.place.block() == target.heading.block()
 }
 
 #[cfg(test)]

@@ -1,6 +1,6 @@
 //! Rules on the earthing of the neutral: first-pole-to-clear and out-of-phase factors.
 
-use super::{Check, Rule};
+use super::{Check, Rule, rests_on_infeeds};
 use crate::case::Case;
 use crate::duty::Figure;
 use crate::finding::{Datum, Finding, FindingKind, Findings};
@@ -74,6 +74,7 @@ fn rests_on(finding: &mut Finding, figure: &Figure<Ratio>) {
     for place in figure.places() {
         finding.related(place, "the factor follows from this");
     }
+    rests_on_infeeds(finding, figure);
 }
 
 /// From 245 kV a factor of 1.5 with nothing said of the neutral is a question worth asking.

@@ -2,9 +2,10 @@
 //!
 //! Nothing here is wrong. A reason given for the line silences each of them.
 
-use super::timing::{hundreds, operations};
+use super::timing::HOW_OFTEN;
 use super::{Check, EQUAL, Rule, breaking_current, voltage};
 use crate::case::Case;
+use crate::duty::hundreds;
 use crate::finding::{Datum, FindingKind, Findings};
 use crate::particular::{breaker, circuit, site, system, tender};
 use crate::quantity::{
@@ -313,7 +314,7 @@ fn endurance(case: &Case<'_>, findings: &mut Findings) {
             part.word(&circuit::KIND).is_some_and(|(kind, _)| matches!(kind, "bus coupler" | "bus section"))
         });
     let Some(operations) =
-        operations(case).filter(|operations| couplers && class_for_operations(operations.count) == Some(1))
+        case.duty.switching.operations.as_ref().filter(|n| couplers && class_for_operations(n.value.si()) == Some(1))
     else {
         return;
     };
@@ -324,15 +325,17 @@ fn endurance(case: &Case<'_>, findings: &mut Findings) {
         };
         let text = format!("{letter}1");
         let message =
-            format!("{class} is asked of a coupler with {} operations over its life", hundreds(operations.count));
-        findings
+            format!("{class} is asked of a coupler with {} operations over its life", hundreds(operations.value.si()));
+        let finding = findings
             .add(&ENDURANCE_EXCESS, class.place, message)
             .label("more than a coupler needs")
             .stated(class.to_string())
             .needed(text.as_str())
-            .working(operations.working.as_str())
-            .beside(operations.statement, "how often it is switched")
+            .working(operations.working.to_string())
             .replace_by(text);
+        for place in operations.places() {
+            finding.related(place, HOW_OFTEN);
+        }
     }
 }
 

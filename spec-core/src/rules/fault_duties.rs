@@ -1,6 +1,6 @@
 //! Rules on generators, motors, endurance and double earth faults.
 
-use super::{Check, EQUAL, Rule, breaking_current};
+use super::{Check, EQUAL, Rule, breaking_current, rests_on_infeeds};
 use crate::case::Case;
 use crate::finding::{FindingKind, Findings};
 use crate::particular::{breaker, circuit, system, tender};
@@ -60,14 +60,21 @@ pub static MOTOR_CONTRIBUTION: Rule = Rule {
     title: "The short-circuit level counts the motors where there are any.",
     kind: FindingKind::Caution,
     basis: "IEC 60909-0 (from memory)",
-    formula: "a motor circuit, and motors counted: no",
+    formula: "a motor circuit, and motors counted: no; or a level that follows from infeeds without a motor group",
     explanation: "High-voltage motors feed the first cycles of a fault and add to the peak. Where a breaker of the system switches \
-                  a motor and the level is said not to count motors, the peak is too low. Silent where nothing is said of it.",
+                  a motor and the level is said not to count motors, or follows from infeeds of which none is a motor group, the \
+                  peak is too low. Silent where the level is stated and nothing is said of motors.",
     check: Check::Case(motors),
 };
 
 fn motors(case: &Case<'_>, findings: &mut Findings) {
-    let Some((false, statement)) = case.system.yes_no(&system::MOTORS_COUNTED) else { return };
+    let said = case.system.yes_no(&system::MOTORS_COUNTED);
+    let Some((false, statement)) = said else {
+        if said.is_none() {
+            motors_among_infeeds(case, findings);
+        }
+        return;
+    };
     let Some(motor) = case.circuits_of(&["motor", "pumped storage"]).next() else { return };
     let message = "the short-circuit level leaves the motors out, and this system feeds motors: they add to the peak";
     let finding = findings.add(&MOTOR_CONTRIBUTION, statement.value, message);
@@ -75,6 +82,24 @@ fn motors(case: &Case<'_>, findings: &mut Findings) {
     if let Some((_, kind)) = motor.word(&circuit::KIND) {
         finding.beside(kind, "a motor");
     }
+}
+
+/// A level that follows from infeeds counts only the motors among them.
+fn motors_among_infeeds(case: &Case<'_>, findings: &mut Findings) {
+    let stated = [&system::SHORT_CIRCUIT_CURRENT, &system::FAULT_LEVEL].into_iter().any(|p| case.system.mentions(p));
+    let counted = case.infeeds.parts.iter().any(|part| part.is_motor);
+    let (Some(three), false, false) = (case.duty.infeeds.three_phase.as_ref(), stated, counted) else { return };
+    let Some((_, kind)) =
+        case.circuits_of(&["motor", "pumped storage"]).next().and_then(|motor| motor.word(&circuit::KIND))
+    else {
+        return;
+    };
+    let message = "this breaker feeds a motor, and no infeed of the system is a motor group: motors add to the peak";
+    let finding = findings.add(&MOTOR_CONTRIBUTION, kind.value, message);
+    finding.label("a motor that is not counted").advice(
+        "add an infeed of kind motor group, or motors counted: yes to the system where the motors are within another infeed",
+    );
+    rests_on_infeeds(finding, three);
 }
 
 /// An endurance demand can be verified.
@@ -203,6 +228,21 @@ mod tests {
         bay("yes").silent("motor-contribution");
         Bay::new().set("circuit", "kind", "motor").silent("motor-contribution");
         Bay::new().set("system", "motors counted", "no").silent("motor-contribution");
+    }
+
+    #[test]
+    fn motors_that_no_infeed_counts() {
+        let bay = |more: &str| {
+            let bay = Bay::new().without("system", "short-circuit current").set("circuit", "kind", "motor");
+            bay.and("infeed Grid into Ring\n    kind: network\n    short-circuit current: 28 kA\n    X/R: 13\n")
+                .and(more)
+        };
+        let motors = "infeed M into Ring\n    kind: motor group\n    rated voltage: 132 kV\n    rated power: 20 MVA\n    starting current ratio: 5\n";
+        bay("").one("motor-contribution");
+        bay(motors).silent("motor-contribution");
+        bay("").set("system", "motors counted", "yes").silent("motor-contribution");
+        bay("").set("system", "short-circuit current", "28 kA").silent("motor-contribution");
+        bay("").set("circuit", "kind", "transformer").silent("motor-contribution");
     }
 
     #[test]

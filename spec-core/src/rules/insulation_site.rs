@@ -2,19 +2,12 @@
 
 use super::{Check, EQUAL, Rule};
 use crate::case::Case;
+use crate::duty::{Figure, LevelOnSite, SiteDuty};
 use crate::finding::{Datum, FindingKind, Findings};
-use crate::particular::{Limit, Particular, breaker, site, system};
-use crate::physics::insulation_site::{
-    allowed_current, altitude_factor, creepage, needed_level, unified_of_between_phases, worth_on_site,
-};
-use crate::quantity::{
-    ElectricCurrent, ElectricPotential, Length, LengthPerVoltage, Physical, Qualifier, ThermodynamicTemperature,
-    significant,
-};
-use crate::sheet::Stated;
-use crate::standards::{
-    InsulationLevel, WithstandVoltage, altitude_exponent, insulation_levels, pollution_class, temperature_limits,
-};
+use crate::particular::{Particular, breaker, site, system};
+use crate::physics::insulation_site::{creepage, needed_level, unified_of_between_phases};
+use crate::quantity::{ElectricCurrent, ElectricPotential, Length, LengthPerVoltage, Physical, Qualifier};
+use crate::standards::{InsulationLevel, insulation_levels};
 
 /// The rules of this subject.
 pub static ALL: &[&Rule] = &[&INSULATION_ALTITUDE, &CREEPAGE_DISTANCE, &CREEPAGE_BASIS, &CONTINUOUS_CURRENT_AMBIENT];
@@ -37,7 +30,7 @@ type Levels = (
     &'static Particular,
     &'static Particular,
     &'static Particular,
-    WithstandVoltage,
+    fn(&SiteDuty) -> Option<&LevelOnSite>,
     fn(&InsulationLevel) -> Option<ElectricPotential>,
 );
 
@@ -46,58 +39,33 @@ static LEVELS: &[Levels] = &[
         &breaker::RATED_LIGHTNING_IMPULSE_WITHSTAND_VOLTAGE,
         &breaker::LIGHTNING_IMPULSE_LEVEL_NEEDED_ON_SITE,
         &system::LIGHTNING_IMPULSE_LEVEL_NEEDED_ON_SITE,
-        WithstandVoltage::LightningImpulse,
+        |duty| duty.lightning_level.as_ref(),
         |row| Some(row.lightning()),
     ),
     (
         &breaker::RATED_SHORT_DURATION_POWER_FREQUENCY_WITHSTAND_VOLTAGE,
         &breaker::POWER_FREQUENCY_LEVEL_NEEDED_ON_SITE,
         &system::POWER_FREQUENCY_LEVEL_NEEDED_ON_SITE,
-        WithstandVoltage::PowerFrequency,
+        |duty| duty.power_frequency_level.as_ref(),
         |row| Some(row.power_frequency()),
     ),
     (
         &breaker::RATED_SWITCHING_IMPULSE_WITHSTAND_VOLTAGE,
         &breaker::SWITCHING_IMPULSE_LEVEL_NEEDED_ON_SITE,
         &system::SWITCHING_IMPULSE_LEVEL_NEEDED_ON_SITE,
-        WithstandVoltage::SwitchingToEarth,
+        |duty| duty.switching_level.as_ref(),
         InsulationLevel::switching,
     ),
 ];
 
-/// Whether insulation stands in the air of the site: by the line of its own, else by the construction.
-fn stands_in_air(case: &Case<'_>) -> bool {
-    match case.breaker.word(&breaker::EXTERNAL_INSULATION) {
-        Some(("none", _)) => return false,
-        Some(_) => return true,
-        None => {}
-    }
-    let enclosed = ["gas-insulated", "metal-clad", "metal-enclosed", "withdrawable"];
-    let indoors = case.site.word(&site::INSTALLATION).is_some_and(|(word, _)| word == "indoor");
-    let shut_in = indoors && enclosed.iter().any(|word| case.is_built(word));
-    !shut_in && !case.is_built("gas-insulated")
-}
-
 fn altitude(case: &Case<'_>, findings: &mut Findings) {
     let Some(height) = case.site.quantity::<Length>(&site::ALTITUDE) else { return };
-    let for_site = case.breaker.word(&breaker::INSULATION_STATED_FOR).is_some_and(|(word, _)| word == "site altitude");
     let mut asked = false;
-    for (rated, needed, of_system, kind, of_row) in LEVELS {
-        let Some(exponent) = altitude_exponent(*kind) else { continue };
-        let factor = altitude_factor(height.value, exponent);
+    for (rated, needed, of_system, on_site, of_row) in LEVELS {
         let Some(stated) = case.breaker.quantity::<ElectricPotential>(rated) else { continue };
-        if factor <= 1.0 + EQUAL || for_site || !stands_in_air(case) {
-            continue;
-        }
-        let worth = worth_on_site(stated.value, factor);
-        let working = format!(
-            "Ka = exp({} x ({} - 1000 m)/8150 m) = {}; {} / Ka = {}",
-            significant(exponent, 2),
-            height.measure,
-            significant(factor, 4),
-            stated.measure,
-            stated.like(worth)
-        );
+        let Some(level) = on_site(&case.duty.site).filter(|level| level.factor > 1.0 + EQUAL) else { continue };
+        let (factor, worth) = (level.factor, level.worth.value);
+        let working = level.worth.working.to_string();
         let site_level = case
             .breaker
             .quantity::<ElectricPotential>(needed)
@@ -191,20 +159,15 @@ pub static CREEPAGE_DISTANCE: Rule = Rule {
 const LENGTH_SLACK: f64 = 0.01;
 
 fn distance(case: &Case<'_>, findings: &mut Findings) {
-    let (Some(stated), Some((class, said)), Some(rated)) = (
+    let (Some(stated), Some((class, said)), Some(rated), Some(figure)) = (
         case.breaker.quantity::<Length>(&breaker::CREEPAGE_DISTANCE),
         case.site.word(&site::POLLUTION),
         case.rated_voltage(),
+        case.duty.site.creepage.as_ref(),
     ) else {
         return;
     };
-    let indoors = case.site.word(&site::INSTALLATION).is_some_and(|(word, _)| word == "indoor");
-    let Some(row) = pollution_class(class).filter(|_| !indoors) else { return };
-    let factor = case
-        .breaker
-        .quantity::<crate::quantity::Ratio>(&breaker::DIAMETER_CORRECTION_FACTOR)
-        .map_or(1.0, |k| k.value.value);
-    let needed = creepage(row.unified(), rated.value) * factor;
+    let needed = figure.value;
     if stated.value.si() >= needed.si() * (1.0 - LENGTH_SLACK) {
         return;
     }
@@ -221,12 +184,7 @@ fn distance(case: &Case<'_>, findings: &mut Findings) {
         .label("too little for the pollution of the site")
         .stated(&stated.measure)
         .needed(Datum { text: text.clone(), si: Some(needed.si()) })
-        .working(format!(
-            "USCD Ur/sqrt3 = {} mm/kV x {}/1.732 = {}",
-            significant(row.unified().si() * 1e6, 3),
-            rated.measure,
-            stated.like(needed)
-        ))
+        .working(figure.working.to_string())
         .beside(said, "the pollution of the site")
         .beside(rated.statement, "the rated voltage")
         .replace_by(text);
@@ -297,12 +255,7 @@ pub static CONTINUOUS_CURRENT_AMBIENT: Rule = Rule {
     check: Check::Case(ambient),
 };
 
-/// The ambient temperature that ratings hold at, K, and the limit that counts where none is stated (from memory of the standards).
-const RATED_AMBIENT: f64 = 313.15;
-
 fn ambient(case: &Case<'_>, findings: &mut Findings) {
-    let own = case.site.quantity::<ThermodynamicTemperature>(&site::HIGHEST_AMBIENT);
-    let Some(hottest) = own.or_else(|| case.site.side(&site::AMBIENT, Limit::Greatest)) else { return };
     let (Some(rated), Some(load)) =
         (case.breaker.quantity::<ElectricCurrent>(&breaker::RATED_CONTINUOUS_CURRENT), case.duty.load_current.as_ref())
     else {
@@ -312,25 +265,20 @@ fn ambient(case: &Case<'_>, findings: &mut Findings) {
         .breaker
         .quantity::<ElectricCurrent>(&breaker::TEMPERATURE_RISE_TEST_CURRENT)
         .is_some_and(|test| test.value.si() >= load.value.si());
-    if hottest.value.si() <= RATED_AMBIENT + EQUAL || proven || rated.value.si() < load.value.si() {
+    let Some(heat) = case.duty.site.current_in_heat.as_ref() else { return };
+    let covers = |left: &Figure<ElectricCurrent>| left.value.si() >= load.value.si() * (1.0 - EQUAL);
+    // Thin air that is too little by itself is told by cooling-altitude.
+    let air = case.duty.site.current_in_thin_air.as_ref().filter(|air| covers(air));
+    let both = air.and(case.duty.site.continuous_current.as_ref());
+    let allowed = both.unwrap_or(heat);
+    if proven || rated.value.si() < load.value.si() || covers(allowed) {
         return;
     }
-    let stated: Option<Stated<'_, ThermodynamicTemperature>> = case.breaker.quantity(&breaker::LIMITING_TEMPERATURE);
-    let usual = temperature_limits().iter().map(crate::standards::TemperatureLimit::greatest).min_by(|a, b| {
-        let far = |t: &ThermodynamicTemperature| (t.si() - USUAL_LIMIT).abs();
-        far(a).total_cmp(&far(b))
-    });
-    let Some(greatest) = stated.map(|s| s.value).or(usual) else { return };
-    let rise = crate::quantity::TemperatureInterval::from_si(greatest.si() - RATED_AMBIENT);
-    let allowed = allowed_current(rated.value, hottest.value, greatest, rise);
-    if allowed.si() >= load.value.si() * (1.0 - EQUAL) {
-        return;
-    }
+    let hottest = heat.working.inputs.iter().find(|input| input.symbol == "Ta").map_or("", |input| &input.text);
     let message = format!(
-        "at {} {} carries {}, and the largest load is {}",
-        hottest.measure,
+        "at {hottest} {} carries {}, and the largest load is {}",
         rated.measure,
-        rated.like(allowed),
+        rated.like(allowed.value),
         rated.like(load.value)
     );
     let finding = findings.add(&CONTINUOUS_CURRENT_AMBIENT, rated.place(), message);
@@ -338,20 +286,18 @@ fn ambient(case: &Case<'_>, findings: &mut Findings) {
         .label("too little in the heat")
         .stated(&rated.measure)
         .needed(Datum { text: rated.like(load.value), si: Some(load.value.si()) });
-    finding.working(format!(
-        "Ir (({0} - {1})/({0} - 40))^(1/1.8) with limits in degC",
-        significant(greatest.si() - 273.15, 4),
-        significant(hottest.value.si() - 273.15, 4)
-    ));
-    finding.beside(hottest.statement, "the highest ambient temperature");
+    finding.working(heat.working.to_string());
+    if let (Some(air), Some(both)) = (air, both) {
+        finding.working(air.working.to_string()).working(both.working.to_string());
+    }
+    for place in heat.places().filter(|place| *place != rated.place()) {
+        finding.related(place, "the heat of the site");
+    }
     for place in load.places() {
         finding.related(place, "the largest load");
     }
     finding.advice("take the next preferred current, or ask for a temperature-rise test at the site's temperature");
 }
-
-/// The limit of silver-plated contacts in air, K, which governs where none is stated (particulars: limiting temperature, from memory).
-const USUAL_LIMIT: f64 = 378.15;
 
 #[cfg(test)]
 mod tests {

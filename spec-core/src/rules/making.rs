@@ -1,6 +1,6 @@
 //! Rules on making and peak withstand currents.
 
-use super::{Check, EQUAL, Rule, breaking_current};
+use super::{Check, EQUAL, Rule, breaking_current, rests_on_infeeds};
 use crate::case::Case;
 use crate::duty::making_factor_of;
 use crate::finding::{Datum, FindingKind, Findings};
@@ -133,6 +133,7 @@ fn below_duty(case: &Case<'_>, findings: &mut Findings) {
     for place in peak.places() {
         finding.related(place, "the peak follows from this");
     }
+    rests_on_infeeds(finding, peak);
     finding.advice("take the next breaking current, or a special time constant, which brings the factor 2.7");
 }
 

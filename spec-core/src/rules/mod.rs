@@ -4,6 +4,7 @@
 //! to findings. The same texts answer `firstpole clause`, the reference page and the hover.
 
 use crate::case::Case;
+use crate::duty::Figure;
 use crate::finding::{Finding, FindingKind, Findings};
 use crate::particular::{Particular, breaker, site};
 use crate::quantity::{ElectricCurrent, Physical, Ratio, significant};
@@ -12,6 +13,7 @@ use crate::source::Place;
 
 pub mod auxiliary;
 pub mod bay_current;
+pub mod capacitive;
 pub mod climate;
 pub mod completeness;
 pub mod continuous_current;
@@ -22,17 +24,23 @@ pub mod excess;
 pub mod fault_duties;
 pub mod gas;
 pub mod gas_law;
+pub mod infeeds;
+pub mod inrush;
 pub mod insulation_details;
 pub mod insulation_site;
 pub mod making;
 pub mod mechanical;
+pub mod network_trv;
 pub mod reading;
 pub mod sequence;
 pub mod several_breakers;
 pub mod short_circuit;
+#[cfg(test)]
+mod silence;
 pub mod special_faults;
 pub mod standards_cited;
 pub mod statements;
+pub mod surges;
 pub mod switching_special;
 #[cfg(test)]
 pub mod testing;
@@ -66,8 +74,12 @@ pub struct Rule {
 pub enum Check {
     /// While the text is read, or by another rule of its subject.
     Elsewhere,
-    /// On the sheets of the whole set.
+    /// On the whole set. It is done anew with every change of the text, so that nothing belongs here that can be said sheet by sheet.
     Set(fn(&Set, &Policy, &mut Findings)),
+    /// On each sheet, with those that it is linked to.
+    Sheet(fn(&Set, &Sheet, &Policy, &mut Findings)),
+    /// On the whole set, and on each sheet.
+    Both(fn(&Set, &Policy, &mut Findings), fn(&Set, &Sheet, &Policy, &mut Findings)),
     /// On each breaker with its duty.
     Case(fn(&Case<'_>, &mut Findings)),
 }
@@ -83,6 +95,8 @@ pub struct Policy {
     pub time_constant_tolerance: f64,
     /// Relative difference up to which a fault level in MVA and one in kA agree.
     pub fault_level_tolerance: f64,
+    /// Relative difference up to which a time constant or X0/X1 may be more favourable than that of the infeeds.
+    pub infeed_constant_tolerance: f64,
     /// How far a making or peak current may lie below its factor times the breaking current.
     pub making_below: f64,
     /// How far it may lie above before it is an excess.
@@ -101,6 +115,8 @@ pub struct Policy {
     pub extremes: usize,
     /// Least ratio of a reduced lightning impulse level to the protective level of the arresters.
     pub lightning_margin: f64,
+    /// Length from which a line of 300 kV and above asks for a study of its switching overvoltage, m.
+    pub long_line: f64,
     /// Whether the tender counts as issued whatever its status says.
     pub issued: bool,
     /// The day on which deviations are held against their expiry; without one, none expires.
@@ -114,6 +130,7 @@ impl Default for Policy {
             dual_temperature_tolerance: 0.5,
             time_constant_tolerance: 0.05,
             fault_level_tolerance: 0.05,
+            infeed_constant_tolerance: 0.10,
             making_below: 0.02,
             making_above: 0.05,
             trv_tolerance: 0.02,
@@ -123,6 +140,7 @@ impl Default for Policy {
             service_life: 30.0,
             extremes: 5,
             lightning_margin: 1.2,
+            long_line: 200e3,
             issued: false,
             today: None,
         }
@@ -135,6 +153,13 @@ const EQUAL: f64 = 1e-4;
 /// The rated short-circuit breaking current, on which many ratings hang.
 fn breaking_current<'a>(case: &'a Case<'_>) -> Option<Stated<'a, ElectricCurrent>> {
     case.breaker.quantity(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT)
+}
+
+/// The infeeds that a figure rests on, told by the first of them; the working has them all.
+fn rests_on_infeeds<Q>(finding: &mut Finding, figure: &Figure<Q>) {
+    if let [first, others @ ..] = figure.working.infeeds.as_slice() {
+        finding.related(*first, format!("the first of {} infeeds that it follows from", others.len() + 1));
+    }
 }
 
 /// A count as it is shown: without the blank that stands where a unit would be.
@@ -152,10 +177,8 @@ fn add_line(finding: &mut Finding, sheet: &Sheet, particular: &Particular, value
 }
 
 /// The place just behind, to insert at.
-fn after(place: Place) -> Place {
-    let mut after = place;
-    after.span.start = after.span.end;
-    after
+const fn after(place: Place) -> Place {
+    place.end()
 }
 
 /// Whether the site lies in the open, with the line that says so.
@@ -174,6 +197,7 @@ pub fn standard() -> Vec<&'static Rule> {
         insulation_details::ALL,
         continuous_current::ALL,
         bay_current::ALL,
+        infeeds::ALL,
         short_circuit::ALL,
         dc_component::ALL,
         fault_duties::ALL,
@@ -181,8 +205,12 @@ pub fn standard() -> Vec<&'static Rule> {
         thermal::ALL,
         earthing::ALL,
         trv::ALL,
+        network_trv::ALL,
         special_faults::ALL,
+        capacitive::ALL,
+        inrush::ALL,
         switching_special::ALL,
+        surges::ALL,
         sequence::ALL,
         times::ALL,
         timing::ALL,

@@ -15,8 +15,8 @@ pub static ALL: &[&Rule] = &[&BUS_DUTY, &COUPLER_CURRENT, &SPARE_ENVELOPE, &COPI
 fn neighbours<'a>(case: &'a Case<'_>) -> Vec<(&'a Sheet, &'a Facts)> {
     let Some(system) = case.sheet.target("on") else { return Vec::new() };
     case.set
-        .of_kind(SheetKind::Breaker)
-        .filter(|sheet| sheet.id != case.sheet.id && sheet.target("on") == Some(system))
+        .pointing_at(system, "on")
+        .filter(|sheet| sheet.id != case.sheet.id && sheet.kind == SheetKind::Breaker)
         .map(|sheet| (sheet, case.set.facts(sheet.id)))
         .collect()
 }
@@ -89,7 +89,7 @@ fn coupler(case: &Case<'_>, findings: &mut Findings) {
     };
     let mut largest: Option<(ElectricCurrent, String, crate::source::Place, String)> = None;
     for (sheet, _) in neighbours(case) {
-        let circuits = case.set.of_kind(SheetKind::Circuit).filter(|circuit| circuit.target("for") == Some(sheet.id));
+        let circuits = case.set.pointing_at(sheet.id, "for").filter(|circuit| circuit.kind == SheetKind::Circuit);
         for facts in circuits.map(|circuit| case.set.facts(circuit.id)) {
             for particular in [&circuit::LOAD_CURRENT, &circuit::EMERGENCY_LOAD_CURRENT] {
                 let Some(load) = facts.quantity::<ElectricCurrent>(particular) else { continue };
@@ -336,33 +336,34 @@ pub static SPLIT_BUS: Rule = Rule {
     formula: "level valid with: bus section open -> interlocked: yes",
     explanation: "Somebody will close the section, and then both sides feed the fault. Silent where the text says that it is \
                   interlocked, and where the level holds with everything closed.",
-    check: Check::Set(split_bus),
+    check: Check::Sheet(split_bus),
 };
 
-fn split_bus(set: &Set, _: &Policy, findings: &mut Findings) {
-    for sheet in set.of_kind(SheetKind::System) {
-        let facts = set.facts(sheet.id);
-        let Some(("bus section open", statement)) = facts.word(&system::LEVEL_VALID_WITH) else { continue };
-        let interlocked = facts.yes_no(&system::INTERLOCKED);
-        if interlocked.is_some_and(|(yes, _)| yes) || (interlocked.is_none() && facts.mentions(&system::INTERLOCKED)) {
-            continue;
-        }
-        let level = facts.statement(&system::SHORT_CIRCUIT_CURRENT).or_else(|| facts.statement(&system::FAULT_LEVEL));
-        let shown = facts.quantity::<ElectricCurrent>(&system::SHORT_CIRCUIT_CURRENT).map(|ik| ik.measure.to_string());
-        let message = format!(
-            "{} holds with the bus section open only, and no interlock keeps it open",
-            shown.unwrap_or_else(|| "the short-circuit level".to_owned())
-        );
-        let finding = findings.add(&SPLIT_BUS, statement.value, message);
-        finding.label("who keeps it open?").stated("bus section open");
-        if let Some(level) = level {
-            finding.beside(level, "the level");
-        }
-        if let Some((_, statement)) = interlocked {
-            finding.beside(statement, "not interlocked");
-        }
-        finding.advice("add interlocked: yes if the section cannot be closed, or state the level with it closed");
+fn split_bus(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    if sheet.kind != SheetKind::System {
+        return;
     }
+    let facts = set.facts(sheet.id);
+    let Some(("bus section open", statement)) = facts.word(&system::LEVEL_VALID_WITH) else { return };
+    let interlocked = facts.yes_no(&system::INTERLOCKED);
+    if interlocked.is_some_and(|(yes, _)| yes) || (interlocked.is_none() && facts.mentions(&system::INTERLOCKED)) {
+        return;
+    }
+    let level = facts.statement(&system::SHORT_CIRCUIT_CURRENT).or_else(|| facts.statement(&system::FAULT_LEVEL));
+    let shown = facts.quantity::<ElectricCurrent>(&system::SHORT_CIRCUIT_CURRENT).map(|ik| ik.measure.to_string());
+    let message = format!(
+        "{} holds with the bus section open only, and no interlock keeps it open",
+        shown.unwrap_or_else(|| "the short-circuit level".to_owned())
+    );
+    let finding = findings.add(&SPLIT_BUS, statement.value, message);
+    finding.label("who keeps it open?").stated("bus section open");
+    if let Some(level) = level {
+        finding.beside(level, "the level");
+    }
+    if let Some((_, statement)) = interlocked {
+        finding.beside(statement, "not interlocked");
+    }
+    finding.advice("add interlocked: yes if the section cannot be closed, or state the level with it closed");
 }
 
 #[cfg(test)]

@@ -1,6 +1,6 @@
 //! Rules on the breaking current and the fault level.
 
-use super::{Check, EQUAL, Rule, breaking_current};
+use super::{Check, EQUAL, Rule, breaking_current, rests_on_infeeds};
 use crate::case::Case;
 use crate::duty::percent;
 use crate::finding::{Datum, FindingKind, Findings};
@@ -66,6 +66,11 @@ fn below_duty(case: &Case<'_>, findings: &mut Findings) {
     finding.working(duty.working.to_string());
     for place in duty.places() {
         finding.related(place, "a fault current of the system");
+    }
+    rests_on_infeeds(finding, duty);
+    // Who relies on the decay states it with its time.
+    if let Some(decayed) = case.duty.infeeds.breaking.as_ref().filter(|_| !duty.working.infeeds.is_empty()) {
+        finding.working(decayed.working.to_string());
     }
     if let Some(needed) = needed {
         let text = rated.like(needed);

@@ -1,14 +1,16 @@
 //! Rules on faults beside the terminal fault: on lines, behind reactors and transformers, out of phase.
 
+use super::network_trv::is_studied;
 use super::several_breakers::copied_lines;
 use super::switching_special::kind_of;
 use super::{Check, EQUAL, Rule, add_line, breaking_current};
 use crate::case::{Case, Part};
+use crate::duty::limited;
 use crate::finding::{Datum, FindingKind, Findings};
 use crate::particular::{breaker, circuit, system};
 use crate::quantity::{
-    Capacitance, ElectricCurrent, ElectricPotential, ElectricalResistance, Length, Physical, Power, Ratio, Time,
-    significant,
+    Capacitance, ElectricCurrent, ElectricPotential, ElectricalResistance, Frequency, Length, Physical, Power, Ratio,
+    Time, significant,
 };
 use crate::sheet::Statement;
 use crate::standards::{Duty, out_of_phase_factor};
@@ -199,10 +201,10 @@ pub static SERIES_REACTOR_TRV: Rule = Rule {
     title: "A series reactor beside the breaker has a capacitance that slows its oscillation.",
     kind: FindingKind::Caution,
     basis: "IEEE C37.011 (from memory); public literature on current-limiting reactors (2007)",
-    formula: "1/(2 f) of the reactor with its capacitance >= time to peak of the envelope at that current",
+    formula: "1/(2 f) of the reactor with its capacitance, or by its own frequency, >= time to peak of the envelope at that current",
     explanation: "With its stray capacitance a reactor oscillates at tens of kilohertz, far faster than any terminal fault duty. Silent \
                   where a capacitor to earth or across the reactor, or the class for fast transients, is asked for, and where the \
-                  stated capacitance is enough.",
+                  stated capacitance is enough or the stated natural frequency low enough.",
     check: Check::Case(series_reactor),
 };
 
@@ -232,14 +234,15 @@ fn series_reactor(case: &Case<'_>, findings: &mut Findings) {
     if reactor_measure(case) {
         return;
     }
-    for part in &case.circuits {
+    for part in case.circuits.iter().filter(|part| !is_studied(part)) {
         let Some(reactor) = part.quantity::<ElectricalResistance>(&circuit::SERIES_REACTOR) else { continue };
         let working = match oscillation(case, part, reactor.value) {
             Ok(slow) if slow.is_empty() => continue,
             Ok(fast) => Some(fast),
             Err(()) => None,
         };
-        if working.is_none() && part.mentions(&circuit::SERIES_REACTOR_CAPACITANCE) {
+        let said = [&circuit::SERIES_REACTOR_CAPACITANCE, &circuit::NATURAL_FREQUENCY];
+        if working.is_none() && said.into_iter().any(|particular| part.mentions(particular)) {
             continue;
         }
         let message = format!(
@@ -260,7 +263,11 @@ fn series_reactor(case: &Case<'_>, findings: &mut Findings) {
 
 /// The working where the oscillation is too fast, nothing where it is slow enough; an error where it cannot be reckoned.
 fn oscillation(case: &Case<'_>, part: &Part<'_>, reactance: ElectricalResistance) -> Result<String, ()> {
-    let capacitance = part.quantity::<Capacitance>(&circuit::SERIES_REACTOR_CAPACITANCE).ok_or(())?;
+    let capacitance = part.quantity::<Capacitance>(&circuit::SERIES_REACTOR_CAPACITANCE);
+    let natural = part.quantity::<Frequency>(&circuit::NATURAL_FREQUENCY).filter(|stated| stated.value.si() > 0.0);
+    if capacitance.is_none() && natural.is_none() {
+        return Err(());
+    }
     let omega = 2.0 * std::f64::consts::PI * case.frequency().ok_or(())?.si();
     let isc = breaking_current(case).ok_or(())?;
     let nominal = case.system.quantity::<ElectricPotential>(&system::NOMINAL_VOLTAGE).ok_or(())?;
@@ -270,15 +277,20 @@ fn oscillation(case: &Case<'_>, part: &Part<'_>, reactance: ElectricalResistance
     let duty = duty_of(current / isc.value.si());
     let (envelope, _) = case.duty.trv.envelope(duty).ok_or(())?;
     let needed = envelope.t3.or(envelope.t2).unwrap_or(envelope.uc / envelope.rate);
-    let time = std::f64::consts::PI * (reactance.si() / omega * capacitance.value.si()).sqrt();
+    // A stated capacitance counts before the reactor's own frequency, of which it may be the cure.
+    let of_capacitance = capacitance.map(|stated| {
+        let time = std::f64::consts::PI * (reactance.si() / omega * stated.value.si()).sqrt();
+        (time, format!("pi sqrt(L C) with {}", stated.measure))
+    });
+    let of_frequency = || natural.map(|stated| (0.5 / stated.value.si(), format!("1/(2 f) of {}", stated.measure)));
+    let (time, how) = of_capacitance.or_else(of_frequency).ok_or(())?;
     if time >= needed.si() {
         return Ok(String::new());
     }
     let us = |time: f64| format!("{} us", significant(time * 1e6, 3));
     Ok(format!(
-        "pi sqrt(L C) = {} with {} ({} kHz) < {} of {} for {} kA",
+        "{how} = {} ({} kHz) < {} of {} for {} kA",
         us(time),
-        capacitance.measure,
         significant(0.5e-3 / time, 3),
         us(Time::si(needed)),
         duty.word(),
@@ -302,7 +314,7 @@ fn compensation(case: &Case<'_>, findings: &mut Findings) {
     let told = case.system.mentions(&system::PROSPECTIVE_TRV_PEAK) || case.breaker.mentions(&breaker::TRV_MITIGATION);
     for part in &case.circuits {
         let Some(share) = part.quantity::<Ratio>(&circuit::SERIES_COMPENSATION) else { continue };
-        if told || share.value.si() <= 0.0 {
+        if told || is_studied(part) || share.value.si() <= 0.0 {
             continue;
         }
         let message = format!(
@@ -327,9 +339,10 @@ pub static TRANSFORMER_LIMITED_FAULT: Rule = Rule {
     kind: FindingKind::Caution,
     basis: "IEEE C37.011, IEC 62271-100:2008 annex M (from memory)",
     formula: "I = Sr/(sqrt3 U uk), 7 to 60 % of Isc, connection by bars of at most 50 m",
-    explanation: "A transformer with little capacitance beside it swings faster than T10 and T30. Silent where the connection is long, of \
-                  cable or gas-insulated duct, or its length is not stated; where the current lies outside of 7 to 60 %; and where \
-                  the rating, or the class for fast transients, is answered.",
+    explanation: "A transformer with little capacitance beside it swings faster than T10 and T30. Where its natural frequency or its \
+                  capacitance to earth is stated, its rate of rise is held against the envelope at that current. Silent where that \
+                  covers it; where the connection is long, of cable or gas-insulated duct, or its length is not stated; where the \
+                  current lies outside of 7 to 60 %; and where the rating, or the class for fast transients, is answered.",
     check: Check::Case(limited_fault),
 };
 
@@ -352,7 +365,7 @@ fn limited_fault(case: &Case<'_>, findings: &mut Findings) {
     if answered.into_iter().any(|particular| case.breaker.mentions(particular)) {
         return;
     }
-    for part in case.circuits_of(&["transformer"]) {
+    for part in case.circuits_of(&["transformer"]).filter(|part| !is_studied(part)) {
         let (Some(power), Some(impedance), Some(length)) = (
             part.quantity::<Power>(&circuit::RATED_POWER),
             part.quantity::<Ratio>(&circuit::IMPEDANCE_VOLTAGE),
@@ -369,6 +382,16 @@ fn limited_fault(case: &Case<'_>, findings: &mut Findings) {
         if !(LIMITED_FROM..=LIMITED_TO).contains(&share) {
             continue;
         }
+        // Where the transformer's own oscillation is known, it is held against the envelope at that current.
+        let reactance = nominal.value / (3f64.sqrt() * current);
+        let (natural, capacitance) = (
+            part.quantity::<Frequency>(&circuit::NATURAL_FREQUENCY),
+            part.quantity::<Capacitance>(&circuit::CAPACITANCE_TO_EARTH),
+        );
+        let known = limited(case, current, reactance, natural.map(|s| s.value), capacitance.map(|s| s.value));
+        if known.as_ref().is_some_and(|(covered, _)| *covered) {
+            continue;
+        }
         let shown = isc.like(current);
         let percent = crate::duty::percent(share);
         let message = format!(
@@ -381,6 +404,7 @@ fn limited_fault(case: &Case<'_>, findings: &mut Findings) {
             .label("a fast recovery voltage")
             .needed(Datum { text: shown.clone(), si: Some(current.si()) })
             .working(format!("{} / (sqrt3 x {} x {}) = {shown}", power.measure, nominal.measure, impedance.measure))
+            .working(known.map(|(_, working)| working).unwrap_or_default())
             .beside(length.statement, "a short connection")
             .beside(isc.statement, "the breaking current")
             .advice("add transformer-limited fault: yes with its current, or ask for the class for fast transients");
@@ -454,7 +478,10 @@ mod tests {
         bay.clone().set("breaker", "fast TRV class", "yes").silent("series-reactor-trv");
         let small = bay.clone().set("circuit", "series reactor capacitance", "2 nF").one("series-reactor-trv");
         assert!(small.working[0].contains("kHz"), "{:?}", small.working);
-        bay.set("circuit", "series reactor capacitance", "500 nF").silent("series-reactor-trv");
+        bay.clone().set("circuit", "series reactor capacitance", "500 nF").silent("series-reactor-trv");
+        let own = bay.clone().set("circuit", "natural frequency", "20 kHz").one("series-reactor-trv");
+        assert!(own.working[0].contains("1/(2 f) of 20 kHz = 25 us"), "{:?}", own.working);
+        bay.set("circuit", "natural frequency", "1 kHz").silent("series-reactor-trv");
         Bay::new().silent("series-reactor-trv");
     }
 
@@ -482,6 +509,14 @@ mod tests {
         bay.clone().set("circuit", "connection by", "cable").silent("transformer-limited-fault");
         bay.clone().set("circuit", "rated power", "60 MVA").silent("transformer-limited-fault");
         bay.clone().set("breaker", "transformer-limited fault", "no").silent("transformer-limited-fault");
-        bay.without("circuit", "connection length").silent("transformer-limited-fault");
+        bay.clone().without("circuit", "connection length").silent("transformer-limited-fault");
+        // Where its oscillation is known the envelope decides: 20.9 ohm at 50 Hz are 66.6 mH, which 5 nF slow to 8.7 kHz.
+        bay.clone().set("circuit", "capacitance to earth", "5 nF").silent("transformer-limited-fault");
+        let fast = bay.clone().set("circuit", "capacitance to earth", "1 nF").one("transformer-limited-fault");
+        assert!(fast.working[1].contains("19.5 kHz"), "{:?}", fast.working);
+        bay.clone().set("circuit", "natural frequency", "9 kHz").silent("transformer-limited-fault");
+        bay.clone().set("circuit", "natural frequency", "14 kHz").one("transformer-limited-fault");
+        // A study of the circuit is held against the envelope by another rule.
+        bay.set("circuit", "prospective TRV peak", "150 kV").silent("transformer-limited-fault");
     }
 }

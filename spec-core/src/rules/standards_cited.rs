@@ -1,5 +1,7 @@
 //! Rules on the standards that a text cites.
 
+use std::sync::Arc;
+
 use super::{Check, Policy, Rule, add_line};
 use crate::finding::{FindingKind, Findings};
 use crate::particular::{SheetKind, breaker, tender};
@@ -18,41 +20,41 @@ struct Cited<'a> {
     items: &'a [Item],
 }
 
-/// Every list of standards of the set, in the order of the text.
-fn lists(set: &Set) -> Vec<Cited<'_>> {
-    let of = |sheet: &'_ Sheet| match sheet.kind {
+/// The lists of standards of a sheet.
+fn lists(sheet: &Sheet) -> impl Iterator<Item = Cited<'_>> {
+    let particular = match sheet.kind {
         SheetKind::Tender => Some(&tender::STANDARDS),
         SheetKind::Breaker | SheetKind::Family => Some(&breaker::STANDARDS),
         _ => None,
     };
-    set.sheets
-        .iter()
-        .filter_map(|sheet| of(sheet).map(|particular| (sheet, particular)))
-        .flat_map(|(sheet, particular)| {
-            sheet.statements.iter().filter(|s| s.states(particular)).map(move |s| (sheet, s))
-        })
-        .filter_map(|(sheet, statement)| match &statement.reading {
-            Reading::List(items) => Some(Cited { sheet, statement, items }),
-            _ => None,
-        })
-        .collect()
+    let stated = move |statement: &&Arc<Statement>| particular.is_some_and(|particular| statement.states(particular));
+    sheet.statements.iter().filter(stated).filter_map(move |statement| match &statement.reading {
+        Reading::List(items) => Some(Cited { sheet, statement, items }),
+        _ => None,
+    })
 }
 
 /// The breakers for which a list holds: of a tender those without a list of their own, else those that state or take it over.
 fn breakers_of<'a>(set: &'a Set, list: &Cited<'_>) -> Vec<&'a Facts> {
-    set.of_kind(SheetKind::Breaker)
-        .filter_map(|sheet| {
-            let facts = set.facts(sheet.id);
-            let governs = match facts.statement(&breaker::STANDARDS) {
-                Some(own) => own.value == list.statement.value,
-                None => {
-                    let tender = set.in_reach(sheet.file(), SheetKind::Tender).next();
-                    tender.is_some_and(|tender| tender.id == list.sheet.id)
-                }
-            };
-            governs.then_some(facts)
-        })
-        .collect()
+    if list.sheet.kind == SheetKind::Tender {
+        let governed = |sheet: &&Sheet| {
+            let tender = set.in_reach(sheet.file(), SheetKind::Tender).next();
+            tender.is_some_and(|tender| tender.id == list.sheet.id)
+        };
+        let breakers = set.of_kind(SheetKind::Breaker).filter(governed).map(|sheet| set.facts(sheet.id));
+        return breakers.filter(|facts| !facts.mentions(&breaker::STANDARDS)).collect();
+    }
+    let mut takers: Vec<&Sheet> = set.sheet(list.sheet.id).into_iter().collect();
+    let mut at = 0;
+    // Circles of `like` were cut when links were resolved.
+    while let Some(sheet) = takers.get(at) {
+        takers.extend(set.pointing_at(sheet.id, "like"));
+        at += 1;
+    }
+    let breakers = takers.into_iter().filter(|sheet| sheet.kind == SheetKind::Breaker).map(|sheet| set.facts(sheet.id));
+    let states =
+        |facts: &&Facts| facts.statement(&breaker::STANDARDS).is_some_and(|own| own.value == list.statement.value);
+    breakers.filter(states).collect()
 }
 
 /// No standard that is cited has been replaced.
@@ -65,11 +67,11 @@ pub static SUPERSEDED_STANDARD: Rule = Rule {
     explanation: "Ratings, classes and tests of the old text differ, and reports are no longer written to it. Only standards under \
                   another number are told; an older edition may be meant. Write the replacement, or delete the line where that is \
                   cited already.",
-    check: Check::Set(superseded),
+    check: Check::Sheet(superseded),
 };
 
-fn superseded(set: &Set, _: &Policy, findings: &mut Findings) {
-    for list in lists(set) {
+fn superseded(_: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    for list in lists(sheet) {
         let cited: Vec<String> = list.items.iter().filter_map(|i| Citation::read(&i.text)).map(|c| c.number).collect();
         for item in list.items {
             let Some((replacement, since)) = Citation::read(&item.text).and_then(|c| replacement_of(&c.number)) else {
@@ -97,11 +99,11 @@ pub static STANDARD_SCOPE: Rule = Rule {
     formula: "-200 up to 52 kV; -203, -205 and -108 above 52 kV",
     explanation: "A bidder cannot comply with a standard that does not apply. A list that holds for several breakers is right where \
                   it suits one of them, and where the rated voltage of one is not known.",
-    check: Check::Set(scope),
+    check: Check::Sheet(scope),
 };
 
-fn scope(set: &Set, _: &Policy, findings: &mut Findings) {
-    for list in lists(set) {
+fn scope(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    for list in lists(sheet) {
         let breakers = breakers_of(set, &list);
         for item in list.items {
             let Some(scope) = Citation::read(&item.text).and_then(|c| StandardScope::of(&c.number)) else { continue };
@@ -137,11 +139,11 @@ pub static MIXED_REGIMES: Rule = Rule {
     explanation: "The same words mean different values in the two: insulation levels, capacitive currents, TRV, short-time duration. \
                   Guides do not count, and joint IEC/IEEE standards belong to both. Silent where the order of precedence names IEC \
                   or IEEE, and where every breaker has a list of its own. Say which governs, or mark each dual value.",
-    check: Check::Set(mixed),
+    check: Check::Sheet(mixed),
 };
 
-fn mixed(set: &Set, _: &Policy, findings: &mut Findings) {
-    for list in lists(set) {
+fn mixed(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    for list in lists(sheet) {
         let of = |regime: Regime| {
             list.items
                 .iter()
@@ -158,7 +160,7 @@ fn mixed(set: &Set, _: &Policy, findings: &mut Findings) {
         if unused || decided {
             continue;
         }
-        let (first, second) = if iec.place.span.start < ieee.place.span.start { (iec, ieee) } else { (ieee, iec) };
+        let (first, second) = if iec.place < ieee.place { (iec, ieee) } else { (ieee, iec) };
         let message = format!(
             "{} and {} both set ratings, and differ in insulation levels, capacitive currents and TRV",
             first.text, second.text
@@ -194,11 +196,11 @@ pub static UNDATED_STANDARD: Rule = Rule {
     explanation: "The edition may change between tender and test, and the latest edition is another one each year. Silent where the \
                   tender's reference date of standards is a date or the tender date. One finding for each list, and none for \
                   standards that were replaced.",
-    check: Check::Set(editions),
+    check: Check::Sheet(editions),
 };
 
-fn editions(set: &Set, _: &Policy, findings: &mut Findings) {
-    for list in lists(set) {
+fn editions(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    for list in lists(sheet) {
         let tender = set.in_reach(list.sheet.file(), SheetKind::Tender).next();
         let facts = tender.map(|sheet| set.facts(sheet.id));
         let without: Vec<&Item> = list.items.iter().filter(|item| undated(item)).collect();
@@ -243,38 +245,35 @@ pub static EDITION_VOCABULARY: Rule = Rule {
     formula: "rated normal current -> rated continuous current; rated TRV, rated break time, rated opening time: no ratings any more",
     explanation: "A heading of an older edition shows that the text was carried along; the value may be of it too. Harmless by itself. \
                   Silent where no edition with the new word is cited.",
-    check: Check::Set(vocabulary),
+    check: Check::Sheet(vocabulary),
 };
 
-fn vocabulary(set: &Set, _: &Policy, findings: &mut Findings) {
-    let lists = lists(set);
-    for sheet in set.sheets.iter().filter(|sheet| matches!(sheet.kind, SheetKind::Breaker | SheetKind::Family)) {
-        for statement in sheet.statements.iter().filter(|s| s.about == About::Value) {
-            let wording = statement.wording.to_lowercase();
-            let Some(old) = old_wordings().find(|old| old.wording == wording) else { continue };
-            let edition = lists
-                .iter()
-                .filter(|list| list.sheet.kind == SheetKind::Tender || list.sheet.id == sheet.id)
-                .flat_map(|list| list.items)
-                .find(|item| {
-                    Citation::read(&item.text).is_some_and(|cited| {
-                        rating_structure(&cited.number) == Some(old.regime)
-                            && cited.year.is_some_and(|year| year >= old.since)
-                    })
-                });
-            let Some(edition) = edition else { continue };
-            let label = statement.particular.label;
-            let message =
-                format!("\"{}\" is of an older edition: {} says {}", statement.wording, edition.text, old.instead);
-            findings
-                .add(&EDITION_VOCABULARY, statement.label, message)
-                .label("a word of an older edition")
-                .stated(statement.wording.as_str())
-                .needed(label)
-                .related(edition.place, "the edition that is cited")
-                .advice("harmless; look whether the value is of the older edition too")
-                .replace_by(label);
-        }
+fn vocabulary(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    if !matches!(sheet.kind, SheetKind::Breaker | SheetKind::Family) {
+        return;
+    }
+    let tenders = set.in_reach(sheet.file(), SheetKind::Tender);
+    let lists: Vec<_> = tenders.chain([sheet]).flat_map(lists).collect();
+    for statement in sheet.statements.iter().filter(|s| s.about == About::Value) {
+        let wording = statement.wording.to_lowercase();
+        let Some(old) = old_wordings().find(|old| old.wording == wording) else { continue };
+        let edition = lists.iter().flat_map(|list| list.items).find(|item| {
+            Citation::read(&item.text).is_some_and(|cited| {
+                rating_structure(&cited.number) == Some(old.regime) && cited.year.is_some_and(|year| year >= old.since)
+            })
+        });
+        let Some(edition) = edition else { continue };
+        let label = statement.particular.label;
+        let message =
+            format!("\"{}\" is of an older edition: {} says {}", statement.wording, edition.text, old.instead);
+        findings
+            .add(&EDITION_VOCABULARY, statement.label, message)
+            .label("a word of an older edition")
+            .stated(statement.wording.as_str())
+            .needed(label)
+            .related(edition.place, "the edition that is cited")
+            .advice("harmless; look whether the value is of the older edition too")
+            .replace_by(label);
     }
 }
 

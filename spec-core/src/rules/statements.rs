@@ -22,39 +22,34 @@ pub static STATED_TWICE: Rule = Rule {
     explanation: "Of two values nothing is chosen silently: the checks take the more onerous one, and both places are shown. Equal \
                   values in two units are no trouble, and a minimum and a maximum of one label are two bounds. A value that \
                   replaces one taken over through like is meant to.",
-    check: Check::Set(twice),
+    check: Check::Sheet(twice),
 };
 
-fn twice(set: &Set, _: &Policy, findings: &mut Findings) {
-    for sheet in &set.sheets {
-        for (at, second) in sheet.statements.iter().enumerate() {
-            let earlier = sheet.statements.get(..at).unwrap_or(&[]);
-            let first = earlier.iter().find(|first| {
-                first.particular.is(second.particular) && first.about == second.about && first.limit == second.limit
-            });
-            let Some(first) = first.filter(|first| !agree(&first.reading, &second.reading)) else { continue };
-            let message = format!("{} is stated twice in {}, with two values", second.particular.label, sheet.title());
-            findings
-                .add(&STATED_TWICE, second.value, message)
-                .label("the second value")
-                .related(first.value, "the first value")
-                .advice("keep one place, and refer to it from the other; until then the more onerous value is checked");
-        }
-        for statement in &sheet.statements {
-            let Reading::Classes(classes) = &statement.reading else { continue };
-            for (at, class) in classes.iter().enumerate() {
-                let earlier = classes
-                    .get(..at)
-                    .unwrap_or(&[])
-                    .iter()
-                    .find(|c| c.letter == class.letter && c.grade != class.grade);
-                if let Some(first) = earlier {
-                    findings
-                        .add(&STATED_TWICE, class.place, format!("the classes {first} and {class} are both asked for"))
-                        .label("a second grade of this letter")
-                        .stated(class.to_string())
-                        .related(first.place, "the first");
-                }
+fn twice(_: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    for (at, second) in sheet.statements.iter().enumerate() {
+        let earlier = sheet.statements.get(..at).unwrap_or(&[]);
+        let first = earlier.iter().find(|first| {
+            first.particular.is(second.particular) && first.about == second.about && first.limit == second.limit
+        });
+        let Some(first) = first.filter(|first| !agree(&first.reading, &second.reading)) else { continue };
+        let message = format!("{} is stated twice in {}, with two values", second.particular.label, sheet.title());
+        findings
+            .add(&STATED_TWICE, second.value, message)
+            .label("the second value")
+            .related(first.value, "the first value")
+            .advice("keep one place, and refer to it from the other; until then the more onerous value is checked");
+    }
+    for statement in &sheet.statements {
+        let Reading::Classes(classes) = &statement.reading else { continue };
+        for (at, class) in classes.iter().enumerate() {
+            let earlier =
+                classes.get(..at).unwrap_or(&[]).iter().find(|c| c.letter == class.letter && c.grade != class.grade);
+            if let Some(first) = earlier {
+                findings
+                    .add(&STATED_TWICE, class.place, format!("the classes {first} and {class} are both asked for"))
+                    .label("a second grade of this letter")
+                    .stated(class.to_string())
+                    .related(first.place, "the first");
             }
         }
     }
@@ -98,21 +93,19 @@ pub static DUAL_UNITS_DISAGREE: Rule = Rule {
     formula: "within 1 %, or half a unit of the last digit written; 0.5 K for temperatures",
     explanation: "Gauge pressures agree if they do at 101.3 kPa, at 100 kPa, or at the pressure of the site's air. Cycles and \
                   milliseconds are compared by cycles-disagree, which knows the frequency.",
-    check: Check::Set(dual),
+    check: Check::Sheet(dual),
 };
 
 /// The flat reference that documents of the trade often use for gauge pressures, Pa (common practice, no source).
 const FLAT_REFERENCE: f64 = 100_000.0;
 
-fn dual(set: &Set, policy: &Policy, findings: &mut Findings) {
-    for sheet in &set.sheets {
-        let air = air_of(set, sheet);
-        for statement in &sheet.statements {
-            let Some(quantity) = statement.quantity() else { continue };
-            for again in &quantity.again {
-                for (first, second) in pairs(quantity, again) {
-                    compare(findings, policy, statement, (quantity, first), (again, second), air);
-                }
+fn dual(set: &Set, sheet: &Sheet, policy: &Policy, findings: &mut Findings) {
+    let air = air_of(set, sheet);
+    for statement in &sheet.statements {
+        let Some(quantity) = statement.quantity() else { continue };
+        for again in &quantity.again {
+            for (first, second) in pairs(quantity, again) {
+                compare(findings, policy, statement, (quantity, first), (again, second), air);
             }
         }
     }
@@ -199,11 +192,11 @@ pub static BASIS_MISSING: Rule = Rule {
     formula: "specific creepage: phase-to-phase or phase-to-earth; supply voltage: DC or AC",
     explanation: "31 mm/kV is class e on the phase-to-phase voltage and below class c on the phase-to-earth voltage. A supply of \
                   110 V may be a battery or a transformer. Whether a pressure is absolute or gauge is asked by pressure-reference.",
-    check: Check::Set(basis),
+    check: Check::Sheet(basis),
 };
 
-fn basis(set: &Set, _: &Policy, findings: &mut Findings) {
-    for statement in set.sheets.iter().flat_map(|sheet| &sheet.statements).filter(|s| s.about == About::Value) {
+fn basis(_: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    for statement in sheet.statements.iter().filter(|s| s.about == About::Value) {
         let (Some(reading), Kind::Quantity(kind)) = (statement.quantity(), &statement.particular.kind) else {
             continue;
         };
@@ -236,28 +229,29 @@ pub static OPEN_POINT: Rule = Rule {
     explanation: "An omission while the tender is a draft or for review, a contradiction once its status is issued (or with \
                   --issued). A point with an owner and a date, open point \"who, until when\", stays an omission. The rules that need \
                   the value are silent until it is there.",
-    check: Check::Set(open),
+    check: Check::Sheet(open),
 };
 
-fn open(set: &Set, policy: &Policy, findings: &mut Findings) {
+fn open(set: &Set, sheet: &Sheet, policy: &Policy, findings: &mut Findings) {
     // What is missing of a deviation is told by deviation-incomplete.
-    for sheet in set.sheets.iter().filter(|sheet| sheet.kind != SheetKind::Deviation) {
-        for statement in &sheet.statements {
-            let Reading::Open(who) = &statement.reading else { continue };
-            let owned = who.as_ref().is_some_and(|who| !who.trim().is_empty());
-            let label = statement.particular.label;
-            let message = match who.as_ref().filter(|_| owned) {
-                Some(who) => format!("{label} is an open point: {who}"),
-                None => format!("{label} has no value"),
-            };
-            let place = if statement.value.span.is_empty() { statement.label } else { statement.value };
-            let finding = findings.add(&OPEN_POINT, place, message);
-            finding.label(if owned { "open" } else { "no value" });
-            if issued(set, sheet, policy) && !owned {
-                finding.kind(FindingKind::Contradiction).advice("the tender is issued: state the value");
-            } else if !owned {
-                finding.advice("state the value, or write open point \"who, until when\"");
-            }
+    if sheet.kind == SheetKind::Deviation {
+        return;
+    }
+    for statement in &sheet.statements {
+        let Reading::Open(who) = &statement.reading else { continue };
+        let owned = who.as_ref().is_some_and(|who| !who.trim().is_empty());
+        let label = statement.particular.label;
+        let message = match who.as_ref().filter(|_| owned) {
+            Some(who) => format!("{label} is an open point: {who}"),
+            None => format!("{label} has no value"),
+        };
+        let place = if statement.value.is_empty() { statement.label } else { statement.value };
+        let finding = findings.add(&OPEN_POINT, place, message);
+        finding.label(if owned { "open" } else { "no value" });
+        if issued(set, sheet, policy) && !owned {
+            finding.kind(FindingKind::Contradiction).advice("the tender is issued: state the value");
+        } else if !owned {
+            finding.advice("state the value, or write open point \"who, until when\"");
         }
     }
 }
@@ -280,39 +274,36 @@ pub static BOUNDS_ORDER: Rule = Rule {
     explanation: "A range whose first value is the greater, a minimum above the maximum of the same label, a lowest ambient \
                   temperature that is not below the highest one or that is hotter than the standard's maximum: two lines or two \
                   labels were swapped.",
-    check: Check::Set(bounds),
+    check: Check::Sheet(bounds),
 };
 
 /// The highest ambient temperature of normal service, K (IEC 62271-1 4.1, from memory).
 const NORMAL_HIGHEST: f64 = 313.15;
 
-fn bounds(set: &Set, _: &Policy, findings: &mut Findings) {
-    for sheet in &set.sheets {
-        for statement in sheet.statements.iter().filter(|s| s.about == About::Value) {
-            let Some(reading) = statement.quantity() else { continue };
-            if let (true, Some((_, second))) = (reading.is_range(), reading.second)
-                && second.si < reading.measure.si
-            {
-                let message =
-                    format!("this range begins with the greater value: {second} to {} is meant", reading.measure);
-                let text = format!("{second} to {}", reading.measure);
-                findings.add(&BOUNDS_ORDER, reading.place, message).label("greater value first").edit(
-                    format!("write {text}"),
-                    reading.place,
-                    text,
-                );
-            }
+fn bounds(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    for statement in sheet.statements.iter().filter(|s| s.about == About::Value) {
+        let Some(reading) = statement.quantity() else { continue };
+        if let (true, Some((_, second))) = (reading.is_range(), reading.second)
+            && second.si < reading.measure.si
+        {
+            let message = format!("this range begins with the greater value: {second} to {} is meant", reading.measure);
+            let text = format!("{second} to {}", reading.measure);
+            findings.add(&BOUNDS_ORDER, reading.place, message).label("greater value first").edit(
+                format!("write {text}"),
+                reading.place,
+                text,
+            );
         }
-        let facts = set.facts(sheet.id);
-        for statement in &sheet.statements {
-            opposite_bounds(facts, statement, findings);
-        }
-        if sheet.kind == SheetKind::Site {
-            ambients(facts, &site::LOWEST_AMBIENT, &site::HIGHEST_AMBIENT, findings);
-        }
-        if sheet.kind == SheetKind::Breaker {
-            ambients(facts, &breaker::LOWEST_SERVICE_TEMPERATURE, &breaker::HIGHEST_SERVICE_TEMPERATURE, findings);
-        }
+    }
+    let facts = set.facts(sheet.id);
+    for statement in &sheet.statements {
+        opposite_bounds(facts, statement, findings);
+    }
+    if sheet.kind == SheetKind::Site {
+        ambients(facts, &site::LOWEST_AMBIENT, &site::HIGHEST_AMBIENT, findings);
+    }
+    if sheet.kind == SheetKind::Breaker {
+        ambients(facts, &breaker::LOWEST_SERVICE_TEMPERATURE, &breaker::HIGHEST_SERVICE_TEMPERATURE, findings);
     }
 }
 
@@ -372,7 +363,7 @@ pub static MAGNITUDE: Rule = Rule {
     explanation: "Catches a unit slipped by a thousand: a closing time of 100 s, a rated voltage of 145 V. The bands are wide and say \
                   nothing of what is reasonable. Where the same number in another unit of the label falls into the band, that is \
                   the repair.",
-    check: Check::Set(magnitude),
+    check: Check::Sheet(magnitude),
 };
 
 /// Bands in SI base units, of the particulars in which a slip of the unit is known to happen (common practice, no source).
@@ -401,8 +392,8 @@ static BANDS: &[(&Particular, f64, f64)] = &[
     (&site::HIGHEST_AMBIENT, 233.15, 353.15),
 ];
 
-fn magnitude(set: &Set, _: &Policy, findings: &mut Findings) {
-    for statement in set.sheets.iter().flat_map(|sheet| &sheet.statements).filter(|s| s.about == About::Value) {
+fn magnitude(_: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    for statement in sheet.statements.iter().filter(|s| s.about == About::Value) {
         let Some((_, least, greatest)) = BANDS.iter().find(|(particular, _, _)| particular.is(statement.particular))
         else {
             continue;

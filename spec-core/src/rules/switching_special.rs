@@ -1,9 +1,10 @@
 //! Rules on what is switched beside plain lines: reactors, filters, transformers, motors, compensated and reclosing circuits.
 
 use super::several_breakers::copied_lines;
-use super::timing::{FREQUENT, hundreds, operations};
+use super::timing::FREQUENT;
 use super::{Check, EQUAL, Rule, add_line, after};
 use crate::case::{Case, Part};
+use crate::duty::hundreds;
 use crate::finding::{FindingKind, Findings};
 use crate::particular::{Particular, breaker, circuit, system, tender};
 use crate::quantity::{ElectricCurrent, ElectricPotential, ElectricalResistance, Length, Physical, Power, significant};
@@ -30,14 +31,14 @@ pub(super) fn kind_of<'a>(part: &'a Part<'_>) -> Option<(&'static str, &'a State
 }
 
 /// Measures against overvoltages, of the breaker or at the circuit.
-fn mitigation(case: &Case<'_>, part: &Facts) -> bool {
+pub(super) fn mitigation(case: &Case<'_>, part: &Facts) -> bool {
     case.breaker.mentions(&breaker::OVERVOLTAGE_MITIGATION)
         || part.mentions(&circuit::SURGE_PROTECTION)
         || case.breaker.word(&breaker::CONTROLLED_SWITCHING).is_some_and(|(word, _)| word != "none")
 }
 
 /// Whether one of these words stands among the measures of the breaker or of the circuit.
-fn has_measure(case: &Case<'_>, part: &Facts, wanted: &[&str]) -> bool {
+pub(super) fn has_measure(case: &Case<'_>, part: &Facts, wanted: &[&str]) -> bool {
     let among = |found: Option<(&[&'static str], &Statement)>| {
         found.is_some_and(|(words, _)| words.iter().any(|w| wanted.contains(w)))
     };
@@ -48,10 +49,6 @@ fn has_measure(case: &Case<'_>, part: &Facts, wanted: &[&str]) -> bool {
 fn voltage(case: &Case<'_>) -> Option<ElectricPotential> {
     let nominal = case.system.quantity::<ElectricPotential>(&system::NOMINAL_VOLTAGE).map(|u| u.value);
     nominal.or_else(|| case.duty.system_voltage.as_ref().map(|figure| figure.value))
-}
-
-fn phase_current(power: Power, voltage: ElectricPotential) -> ElectricCurrent {
-    power / (3f64.sqrt() * voltage)
 }
 
 /// The bay of a shunt reactor has its standard and its measures.
@@ -98,10 +95,12 @@ fn reactor(case: &Case<'_>, findings: &mut Findings) {
     let message = format!("a shunt reactor is switched without {}", missing.join(" and without "));
     let finding = findings.add(&SHUNT_REACTOR_STANDARD, kind.value, message);
     finding.label("not a duty of part 100").needed(missing.join(" and ")).related(case.sheet.heading, "the breaker");
-    if let (Some(power), Some(nominal)) = (part.quantity::<Power>(&circuit::BANK_POWER), voltage(case)) {
-        let at = part.quantity::<ElectricPotential>(&circuit::BANK_VOLTAGE).map_or(nominal, |u| u.value);
-        let current = phase_current(power.value, at);
-        finding.working(format!("{} / (sqrt3 x {}) = {} A", power.measure, at.show(), significant(current.si(), 3)));
+    let switching = &case.duty.switching;
+    if let Some(current) = switching.reactor_current.as_ref() {
+        finding.working(current.working.to_string());
+    }
+    if let Some(overvoltage) = switching.chopping_overvoltage.as_ref() {
+        finding.working(overvoltage.working.to_string());
     }
     if let (false, Some((_, list))) = (cited, standards(case)) {
         finding.edit(format!("cite {standard}"), after(list.value), format!(", {standard}"));
@@ -195,43 +194,30 @@ fn energising(case: &Case<'_>, findings: &mut Findings) {
 /// Motors have their breaking current.
 pub static MOTOR_SWITCHING: Rule = Rule {
     name: "motor-switching",
-    title: "A breaker of a motor states the motor current that it breaks, and with vacuum the surge protection.",
+    title: "A breaker of a motor states the motor current that it breaks.",
     kind: FindingKind::Omission,
     basis: "IEC 62271-110 (from memory)",
-    formula: "motor breaking current stated; with a vacuum interrupter, surge protection too",
+    formula: "motor breaking current stated",
     explanation: "Breaking a starting or stalled motor is the hardest of its duties, with reignitions up to the insulation of the first \
-                  turns. Silent where no circuit is a motor.",
+                  turns. Silent where no circuit is a motor; of surges by vacuum speaks vacuum-surge-protection.",
     check: Check::Case(motor),
 };
 
 fn motor(case: &Case<'_>, findings: &mut Findings) {
-    let vacuum = case.breaker.words(&breaker::INTERRUPTER).is_some_and(|(words, _)| words.contains(&"vacuum"));
+    if case.breaker.mentions(&breaker::MOTOR_BREAKING_CURRENT) {
+        return;
+    }
     for part in case.circuits_of(&["motor"]) {
         let Some((_, kind)) = kind_of(part) else { continue };
-        let current = !case.breaker.mentions(&breaker::MOTOR_BREAKING_CURRENT);
-        let surge = vacuum && !mitigation(case, part);
-        let missing: Vec<&str> =
-            [current.then_some("its breaking current"), surge.then_some("surge protection for a vacuum interrupter")]
-                .into_iter()
-                .flatten()
-                .collect();
-        if missing.is_empty() {
-            continue;
-        }
-        let message = format!("a motor is switched without {}", missing.join(" and without "));
-        let finding = findings.add(&MOTOR_SWITCHING, kind.value, message);
+        let finding = findings.add(&MOTOR_SWITCHING, kind.value, "a motor is switched without its breaking current");
         finding.label("a starting motor may have to be broken").related(case.sheet.heading, "the breaker");
-        let start = part.quantity::<ElectricCurrent>(&circuit::STARTING_CURRENT);
-        match start.filter(|_| current) {
+        match part.quantity::<ElectricCurrent>(&circuit::STARTING_CURRENT) {
             Some(start) => {
                 finding.needed(&start.measure).beside(start.statement, "the starting current");
                 add_line(finding, case.sheet, &breaker::MOTOR_BREAKING_CURRENT, &start.measure.to_string());
             }
-            None if current => {
-                finding.advice("add motor breaking current with the starting current of the motor");
-            }
             None => {
-                finding.advice("add surge protection to the motor: surge arresters, or RC snubber");
+                finding.advice("add motor breaking current with the starting current of the motor");
             }
         }
     }
@@ -255,8 +241,13 @@ const COMPENSATED: f64 = 0.5;
 fn charging_power(case: &Case<'_>, part: &Facts) -> Option<(Power, String)> {
     let nominal = voltage(case)?;
     if let Some(current) = part.quantity::<ElectricCurrent>(&circuit::CHARGING_CURRENT) {
-        let power: Power = nominal * current.value * 3f64.sqrt();
-        return Some((power, format!("sqrt3 x {} x {}", nominal.show(), current.measure)));
+        // In a mixed circuit it is that of the overhead part.
+        let cable = part.quantity::<ElectricCurrent>(&circuit::CABLE_SECTION_CHARGING_CURRENT);
+        let whole = cable.as_ref().map_or(current.value, |cable| current.value + cable.value);
+        let shown = cable
+            .map_or_else(|| current.measure.to_string(), |cable| format!("({} + {})", current.measure, cable.measure));
+        let power: Power = nominal * whole * 3f64.sqrt();
+        return Some((power, format!("sqrt3 x {} x {shown}", nominal.show())));
     }
     let length = part.quantity::<Length>(&circuit::LENGTH)?;
     let (capacitance, _) = part.quantity_reading(&circuit::CAPACITANCE_PER_LENGTH)?;
@@ -395,7 +386,7 @@ pub static OPERATIONS_ENDURANCE: Rule = Rule {
 
 fn endurance(case: &Case<'_>, findings: &mut Findings) {
     let Some((kind, statement)) = case.circuits_of(&FREQUENT).next().and_then(kind_of) else { return };
-    let Some(operations) = operations(case) else {
+    let Some(operations) = case.duty.switching.operations.as_ref() else {
         if case.circuits.iter().any(|part| part.mentions(&circuit::OPERATIONS_PER_DAY)) {
             return;
         }
@@ -408,17 +399,17 @@ fn endurance(case: &Case<'_>, findings: &mut Findings) {
             .advice("add operations per day to the circuit");
         return;
     };
-    if crate::standards::class_for_operations(operations.count).is_some() {
+    if crate::standards::class_for_operations(operations.value.si()).is_some() {
         return;
     }
     let message = format!(
         "{} operations over the life are more than any class is tested for: a special endurance has to be agreed",
-        hundreds(operations.count)
+        hundreds(operations.value.si())
     );
     findings
-        .add(&OPERATIONS_ENDURANCE, operations.statement.value, message)
+        .add(&OPERATIONS_ENDURANCE, operations.places().next().unwrap_or(statement.value), message)
         .label("beyond class M2")
-        .working(operations.working)
+        .working(operations.working.to_string())
         .beside(statement, "what is switched")
         .related(case.sheet.heading, "the breaker")
         .advice("state the number of operations before maintenance, and ask for the test; vacuum or a contactor may do better");
@@ -579,9 +570,8 @@ mod tests {
         assert_eq!(bay.one("motor-switching").edits[0].text, "\n    motor breaking current: 900 A");
         let stated = bay.set("breaker", "motor breaking current", "900 A");
         stated.silent("motor-switching");
-        let vacuum = stated.set("breaker", "interrupter", "vacuum");
-        assert!(vacuum.one("motor-switching").message.contains("surge protection"));
-        vacuum.set("circuit", "surge protection", "RC snubber").silent("motor-switching");
+        Bay::new().silent("motor-switching");
+        assert!(switching("motor").one("motor-switching").edits.is_empty());
     }
 
     #[test]
@@ -600,6 +590,14 @@ mod tests {
         bay("30 Mvar").set("circuit", "compensation switched with the circuit", "no").silent("compensated-cable");
         bay("30 Mvar").set("breaker", "controlled switching", "closing").silent("compensated-cable");
         bay("30 Mvar").set("breaker", "overvoltage mitigation", "staggered switching").silent("compensated-cable");
+        // Of a mixed circuit both parts count: 132 kV and 100 A are 22.9 Mvar, 200 A 45.7 Mvar.
+        let mixed = switching("overhead line with cable").set("circuit", "charging current", "100 A").set(
+            "circuit",
+            "shunt compensation",
+            "20 Mvar",
+        );
+        mixed.one("compensated-cable");
+        mixed.set("circuit", "cable section charging current", "100 A").silent("compensated-cable");
     }
 
     #[test]

@@ -196,7 +196,9 @@ impl Bay {
             .with_policy(policy)
             .assess(&Sources::of("bay.cbspec", self.text.as_str()))
             .findings()
-            .to_vec()
+            .iter()
+            .map(|finding| Finding::clone(finding))
+            .collect()
     }
 
     /// The findings of one rule.

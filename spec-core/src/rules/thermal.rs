@@ -1,6 +1,6 @@
 //! Rules on the short-time withstand current, its duration, and the heat of a fault.
 
-use super::{Check, EQUAL, Rule, breaking_current};
+use super::{Check, EQUAL, Rule, breaking_current, rests_on_infeeds};
 use crate::case::Case;
 use crate::finding::{Datum, FindingKind, Findings};
 use crate::particular::{breaker, system};
@@ -79,6 +79,7 @@ fn heat(case: &Case<'_>, findings: &mut Findings) {
     finding.working(duty.working.to_string()).working(rated.working.to_string());
     if let Some(thermal) = &case.duty.thermal_current {
         finding.working(thermal.working.to_string());
+        rests_on_infeeds(finding, thermal);
     }
     if let Some(clearing) = case.system.quantity::<Time>(&system::BACKUP_CLEARING_TIME) {
         finding.beside(clearing.statement, "the longest fault");

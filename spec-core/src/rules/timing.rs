@@ -2,8 +2,9 @@
 
 use super::{Check, EQUAL, Rule, add_line, after};
 use crate::case::Case;
+use crate::duty::hundreds;
 use crate::finding::{Datum, Finding, FindingKind, Findings};
-use crate::particular::{Particular, breaker, circuit, system, tender};
+use crate::particular::{Particular, breaker, circuit, system};
 use crate::quantity::{Measure, Physical, Time, significant};
 use crate::sheet::{Stated, Statement};
 use crate::source::Place;
@@ -49,6 +50,7 @@ fn clearing(case: &Case<'_>, findings: &mut Findings) {
     else {
         return;
     };
+    let Some(chain) = case.duty.site.clearing_time.as_ref() else { return };
     let margin = case.policy.clearing_margin;
     let limits = [
         (&system::CRITICAL_CLEARING_TIME, 1.0, "relay + break + margin", "the critical clearing time"),
@@ -61,7 +63,8 @@ fn clearing(case: &Case<'_>, findings: &mut Findings) {
     ];
     for (particular, breaks, formula, name) in limits {
         let Some(limit) = case.system.quantity::<Time>(particular) else { continue };
-        let sum = relay.value.si() + breaks * total.value.si() + margin;
+        // After a failure the neighbours need a break time of their own.
+        let sum = chain.value.si() + (breaks - 1.0) * total.value.si();
         if sum <= limit.value.si() * (1.0 + EQUAL) {
             continue;
         }
@@ -228,40 +231,8 @@ fn recharge(case: &Case<'_>, findings: &mut Findings) {
         .replace_by(pause.to_string());
 }
 
-/// The operations of a breaker over its life.
-pub(super) struct Operations<'a> {
-    /// How many.
-    pub count: f64,
-    /// What says how often.
-    pub statement: &'a Statement,
-    /// How it came about.
-    pub working: String,
-}
-
-/// The operations of the circuit that is switched most often, over the service life.
-pub(super) fn operations<'a>(case: &'a Case<'_>) -> Option<Operations<'a>> {
-    let (measure, statement) = case
-        .circuits
-        .iter()
-        .filter_map(|part| part.quantity_reading(&circuit::OPERATIONS_PER_DAY))
-        .map(|(reading, statement)| (*reading.upper(), statement))
-        .max_by(|a, b| a.0.si.unwrap_or(0.0).total_cmp(&b.0.si.unwrap_or(0.0)))?;
-    let life = case.tender.quantity::<Time>(&tender::SERVICE_LIFE);
-    let years = life.as_ref().map_or(case.policy.service_life, |life| (life.value.si() / YEAR).round());
-    let count = measure.si? * DAY * DAYS * years;
-    let working = format!("{measure} x 365 x {} years = {}", significant(years, 3), hundreds(count));
-    Some(Operations { count, statement, working })
-}
-
-const DAY: f64 = 86_400.0;
-const DAYS: f64 = 365.0;
-/// A year in seconds, as the unit of the text has it.
-const YEAR: f64 = 365.25 * DAY;
-
-/// To hundreds: the count is no better known.
-pub(super) fn hundreds(count: f64) -> String {
-    significant((count / 100.0).round() * 100.0, 3)
-}
+/// Why a figure of operations belongs to a finding, beside the line that says how often.
+pub(super) const HOW_OFTEN: &str = "how often it is switched";
 
 /// The class of mechanical endurance covers the operations.
 pub static MECHANICAL_CLASS: Rule = Rule {
@@ -283,16 +254,17 @@ fn mechanical(case: &Case<'_>, findings: &mut Findings) {
     if case.circuits_of(&FREQUENT).next().is_some() {
         return;
     }
-    let Some(operations) = operations(case) else { return };
+    let Some(operations) = case.duty.switching.operations.as_ref() else { return };
     let class = case.breaker.class(&breaker::CLASSES, 'M');
     let unreadable = case.breaker.mentions(&breaker::CLASSES) && case.breaker.classes(&breaker::CLASSES).is_none();
     let grade = class.map_or(1, |(class, _)| class.grade);
     let Some(covered) = operations_of_class(grade).filter(|_| !unreadable) else { return };
-    if operations.count <= covered {
+    let (count, how_often) = (operations.value.si(), operations.places().next());
+    if count <= covered {
         return;
     }
-    let shown = hundreds(operations.count);
-    let needed = class_for_operations(operations.count);
+    let shown = hundreds(count);
+    let needed = class_for_operations(count);
     let stated = if class.is_some() { format!("M{grade}") } else { "no class M".to_owned() };
     let message = match needed {
         Some(needed) => format!("{shown} operations over the life are more than {stated} is tested for: M{needed}"),
@@ -300,11 +272,11 @@ fn mechanical(case: &Case<'_>, findings: &mut Findings) {
             format!("{shown} operations over the life are more than M2 is tested for, 10 000: no class covers them")
         }
     };
-    let place = class.map_or(operations.statement.value, |(class, _)| class.place);
+    let place = class.map(|(class, _)| class.place).or(how_often).unwrap_or(case.sheet.heading);
     let finding = findings.add(&MECHANICAL_CLASS, place, message);
-    finding.label("more operations than tested").stated(stated).working(operations.working);
-    if class.is_some() {
-        finding.beside(operations.statement, "how often it is switched");
+    finding.label("more operations than tested").stated(stated).working(operations.working.to_string());
+    if let Some(place) = how_often.filter(|_| class.is_some()) {
+        finding.related(place, HOW_OFTEN);
     }
     match needed {
         Some(needed) => set_class(finding, case, class.map(|(class, _)| class.place), &format!("M{needed}")),

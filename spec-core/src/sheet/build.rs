@@ -4,43 +4,103 @@ use firstpole_grammar::{
     Heading, Line, LineKind, Look, Name, Particular as WrittenParticular, Span, ValueForm, ValueText,
 };
 
+use std::sync::{Arc, OnceLock};
+
 use super::read_value::Reader;
-use super::{OwnLine, Reading, Set, Sheet, SheetId, Statement, link, name_of};
-use crate::finding::Findings;
+use super::{OwnLine, Reading, Set, Sheet, SheetId, Slot, Statement, link, name_of};
+use crate::finding::{Finding, Findings};
 use crate::particular::{self, Lookup, SheetKind, breaker};
 use crate::rules::reading as rules;
-use crate::source::{FileId, LoadFault, Loader, Place, SourceFile, Sources};
+use crate::source::{BlockAt, BlockId, FileId, LoadFault, Loader, Place, Sources};
 
 /// The edition of the language that is read.
 const EDITION: u32 = 1;
 
-/// Reads every file of `sources`, and those that they use, into sheets, and resolves their links.
+/// Reads every file of `sources`, and those that they use, into sheets, and resolves their links. What was read of blocks that
+/// stand in the set `before` too is taken over.
 ///
 /// `rule_names` are the names that a deviation may speak of.
-pub fn build(sources: &mut Sources, loader: &dyn Loader, rule_names: &[&'static str], findings: &mut Findings) -> Set {
-    let mut set = Set::default();
+pub(crate) fn build(
+    sources: &mut Sources,
+    loader: &dyn Loader,
+    rule_names: &[&'static str],
+    before: Option<&Set>,
+    findings: &mut Findings,
+) -> Set {
+    let mut set = Set { age: before.map_or(0, |before| before.age + 1), ..Set::default() };
     let mut uses = Vec::new();
+    let mut same = before.is_some();
     let mut next = 0;
     // Files that `use` brings in are appended, and so are read in turn.
-    while let Some(file) = sources.file(FileId(next)).cloned() {
+    while let Some(file) = sources.shared(FileId(next)) {
         let id = FileId(next);
-        let mut reader =
-            FileReader { id, file: &file, findings, sheets: &mut set.sheets, current: None, silent: false };
-        let paths = reader.read();
-        for (path, place) in paths {
-            match load(sources, loader, &file.name, &path) {
-                Ok(used) => uses.push((id, used, place)),
-                Err(fault) => {
-                    let message = format!("{path} cannot be used: {}", fault.sentence);
-                    findings.add(&rules::USE_UNREADABLE, place, message).label("cannot be used").stated(path.as_str());
+        let mut head = Head::default();
+        for at in &file.blocks {
+            let slot = before.and_then(|before| before.taken_over(id, at)).unwrap_or_else(|| {
+                let slot = read_block(id, &file.text, at, set.age);
+                let earlier = before.and_then(|before| before.peek(SheetId(at.id.0)));
+                same &= match (&slot.sheet, earlier) {
+                    (Some(sheet), Some(earlier)) => sheet.is_headed_like(earlier),
+                    (None, None) => true,
+                    _ => false,
+                };
+                Arc::new(slot)
+            });
+            findings.extend(&slot.read.findings);
+            head.note(&slot.read);
+            for (path, place) in &slot.read.uses {
+                match load(sources, loader, &file.name, path) {
+                    Ok(used) => uses.push((id, used, *place)),
+                    Err(fault) => {
+                        let message = format!("{path} cannot be used: {}", fault.sentence);
+                        let finding = findings.add(&rules::USE_UNREADABLE, *place, message);
+                        finding.label("cannot be used").stated(path.as_str());
+                    }
                 }
             }
+            set.put(at.id, slot);
         }
+        head.check(findings);
         next += 1;
     }
-    set.scope = link::scope(next as usize, &uses, findings);
-    link::resolve(&mut set, rule_names, findings);
+    match before.filter(|before| same && before.order == set.order && before.web.uses == uses) {
+        Some(before) => set.hang_together_like(before),
+        None => link::resolve(&mut set, uses, next as usize, rule_names),
+    }
+    set.drop_stale_facts();
+    findings.extend(&set.web.findings);
     set
+}
+
+impl Set {
+    /// What was made of a block, where it still stands in the same file.
+    fn taken_over(&self, file: FileId, at: &BlockAt) -> Option<Arc<Slot>> {
+        let slot = self.slots.get(at.id.0 as usize)?.as_ref()?;
+        (slot.file == file && Arc::ptr_eq(&slot.block, &at.block)).then(|| slot.clone())
+    }
+
+    /// Takes the links over from a set with the same headings.
+    fn hang_together_like(&mut self, before: &Self) {
+        self.web = before.web.clone();
+        let changed = |id: &SheetId| self.slot(*id).is_some_and(|slot| slot.changed == self.age);
+        let read: Vec<SheetId> = self.order.iter().copied().filter(changed).collect();
+        for id in read {
+            self.take_targets(id, before.peek(id).map(|sheet| sheet.targets.clone()).unwrap_or_default());
+        }
+    }
+
+    fn put(&mut self, id: BlockId, slot: Arc<Slot>) {
+        let at = id.0 as usize;
+        if slot.sheet.is_some() {
+            self.order.push(SheetId(id.0));
+        }
+        if self.slots.len() <= at {
+            self.slots.resize_with(at + 1, || None);
+        }
+        if let Some(place) = self.slots.get_mut(at) {
+            *place = Some(slot);
+        }
+    }
 }
 
 fn load(sources: &mut Sources, loader: &dyn Loader, from: &str, path: &str) -> Result<FileId, LoadFault> {
@@ -56,35 +116,103 @@ fn load(sources: &mut Sources, loader: &dyn Loader, from: &str, path: &str) -> R
     Ok(sources.add(name, text))
 }
 
-struct FileReader<'a> {
-    id: FileId,
-    file: &'a SourceFile,
+/// What was read of a block beside its sheet.
+#[derive(Debug, Default)]
+pub(super) struct BlockReading {
+    findings: Vec<Arc<Finding>>,
+    /// The files that it uses.
+    uses: Vec<(String, Place)>,
+    /// The lines that state an edition, with the number where it can be read.
+    editions: Vec<Edition>,
+    /// Its first line that is neither blank nor a comment.
+    first: Option<Place>,
+}
+
+#[derive(Clone, Copy, Debug)]
+struct Edition {
+    number: Option<u32>,
+    place: Place,
+    /// Whether it is the first line of its block that says something.
+    leads: bool,
+    /// Whether the line could not be read, of which a finding has told.
+    broken: bool,
+}
+
+/// The edition is stated once, at the head of a file.
+#[derive(Debug, Default)]
+struct Head {
+    first: Option<Place>,
+    editions: Vec<Edition>,
+}
+
+impl Head {
+    fn note(&mut self, read: &BlockReading) {
+        let leads = self.first.is_none();
+        self.editions.extend(read.editions.iter().map(|edition| Edition { leads: edition.leads && leads, ..*edition }));
+        self.first = self.first.or(read.first);
+    }
+
+    fn check(&self, findings: &mut Findings) {
+        for edition in self.editions.iter().filter(|edition| !edition.broken) {
+            if edition.number != Some(EDITION) {
+                let message = "this edition of the language is not known; edition 1 is, and the text is read as that";
+                findings
+                    .add(&rules::EDITION_UNKNOWN, edition.place, message)
+                    .label("unknown edition")
+                    .replace_by(EDITION.to_string());
+            } else if !edition.leads {
+                let message = "the edition belongs on the first line that is neither blank nor a comment";
+                findings.add(&rules::EDITION_MISSING, edition.place, message).label("not on the first line");
+            }
+        }
+        if let (Some(first), true) = (self.first, self.editions.is_empty()) {
+            findings
+                .add(&rules::EDITION_MISSING, first, "the edition of the language is not stated; edition 1 is assumed")
+                .label("cbspec 1 is missing before this")
+                .edit("state the edition", first.start(), "cbspec 1\n\n");
+        }
+    }
+}
+
+fn read_block(file: FileId, text: &str, at: &BlockAt, age: u64) -> Slot {
+    let text = Span::new(at.start, at.start + at.block.len).of(text);
+    let mut findings = Findings::new();
+    let mut reader = BlockReader { file, id: at.id, text, findings: &mut findings, sheet: None, silent: false };
+    let mut read = reader.read(&at.block.lines);
+    let sheet = reader.sheet.take().map(|mut sheet| {
+        sheet.statements.shrink_to_fit();
+        Arc::new(sheet)
+    });
+    read.findings = findings.shared();
+    let block = at.block.clone();
+    Slot { file, block, read: Arc::new(read), sheet, changed: age, facts: OnceLock::new() }
+}
+
+struct BlockReader<'a> {
+    file: FileId,
+    id: BlockId,
+    text: &'a str,
     findings: &'a mut Findings,
-    sheets: &'a mut Vec<Sheet>,
-    current: Option<SheetId>,
+    sheet: Option<Sheet>,
     /// Whether the lines stand under a heading that could not be taken, of which a finding has told.
     silent: bool,
 }
 
-impl FileReader<'_> {
-    /// Reads the file; what it uses comes back, with places.
-    fn read(&mut self) -> Vec<(String, Place)> {
-        let mut uses = Vec::new();
-        let mut edition = None;
-        let mut first = None;
-        for line in &self.file.document.lines {
-            if !matches!(line.kind, LineKind::Blank) {
-                first = first.or(Some(line));
+impl BlockReader<'_> {
+    fn read(&mut self, lines: &[Line]) -> BlockReading {
+        let mut read = BlockReading::default();
+        for line in lines {
+            let leads = read.first.is_none();
+            if leads && !matches!(line.kind, LineKind::Blank) {
+                read.first = Some(self.place(line, Span::new(0, line.len)));
             }
             match &line.kind {
                 LineKind::Blank => {}
                 LineKind::Edition { number, span } => {
                     let place = self.place(line, *span);
-                    let is_first = first.is_some_and(|f| std::ptr::eq(f, line));
-                    self.edition(*number, place, is_first);
-                    edition = Some(());
+                    read.editions.push(Edition { number: *number, place, leads, broken: false });
                 }
-                LineKind::Use { path, span } => uses.push((path.clone(), self.place(line, *span))),
+                LineKind::Use { path, span } => read.uses.push((path.clone(), self.place(line, *span))),
                 LineKind::Heading(heading) => self.heading(line, heading),
                 LineKind::Particular(particular) => self.particular(line, particular),
                 LineKind::Broken { fault, at, look } => {
@@ -92,41 +220,16 @@ impl FileReader<'_> {
                     self.findings.add(&rules::UNREADABLE_LINE, place, fault.sentence()).label("cannot be read");
                     self.broken(line, look);
                     if matches!(fault, firstpole_grammar::Fault::Edition) {
-                        edition = Some(());
+                        read.editions.push(Edition { number: None, place, leads, broken: true });
                     }
                 }
             }
         }
-        if let (Some(line), None) = (first, edition) {
-            let place = self.place(line, Span::new(0, line.len));
-            self.findings
-                .add(&rules::EDITION_MISSING, place, "the edition of the language is not stated; edition 1 is assumed")
-                .label("cbspec 1 is missing before this")
-                .edit("state the edition", place.start(), "cbspec 1\n\n");
-        }
-        uses
+        read
     }
 
     const fn place(&self, line: &Line, span: Span) -> Place {
         Place::new(self.id, line.place(span))
-    }
-
-    fn edition(&mut self, number: Option<u32>, place: Place, first: bool) {
-        if number != Some(EDITION) {
-            let message = "this edition of the language is not known; edition 1 is, and the text is read as that";
-            self.findings
-                .add(&rules::EDITION_UNKNOWN, place, message)
-                .label("unknown edition")
-                .replace_by(EDITION.to_string());
-        } else if !first {
-            let message = "the edition belongs on the first line that is neither blank nor a comment";
-            self.findings.add(&rules::EDITION_MISSING, place, message).label("not on the first line");
-        }
-    }
-
-    fn sheet(&mut self) -> Option<&mut Sheet> {
-        let id = self.current?;
-        self.sheets.get_mut(id.0 as usize)
     }
 
     /// What can still be done with a line that cannot be read, so that the lines after it land where they belong, and no
@@ -135,7 +238,7 @@ impl FileReader<'_> {
         match look {
             Look::Particular { label, rest } => {
                 let text = self.text(line, *label).to_owned();
-                let Some(sheet) = self.sheet().map(|sheet| sheet.kind) else { return };
+                let Some(sheet) = self.sheet.as_ref().map(|sheet| sheet.kind) else { return };
                 if let Lookup::Found(found) = particular::find(sheet, &text) {
                     let (particular, about, limit) = Statement::of(&found);
                     let statement = Statement {
@@ -162,14 +265,14 @@ impl FileReader<'_> {
     }
 
     fn text(&self, line: &Line, span: Span) -> &str {
-        line.place(span).of(&self.file.text)
+        line.place(span).of(self.text)
     }
 
     fn heading(&mut self, line: &Line, heading: &Heading) {
         let kind_place = self.place(line, heading.kind_span);
         let kind = match SheetKind::read(&heading.kind) {
             Some(kind) => kind,
-            None => match nearest_kind(&heading.kind) {
+            None => match SheetKind::nearest(&heading.kind) {
                 Some(near) => {
                     let message = format!(
                         "no sheet is called {}; {} is near, and the lines below are read so",
@@ -194,15 +297,16 @@ impl FileReader<'_> {
     fn missing_colon(&mut self, line: &Line, heading: &Heading) {
         let place = self.place(line, Span::new(heading.kind_span.start, line.len));
         let text = self.text(line, Span::new(heading.kind_span.start, line.len)).trim_end().to_owned();
-        let place = Place::new(place.file, Span::new(place.span.start, place.span.start + text.len() as u32));
-        let label = self.sheet().map(|sheet| sheet.kind).and_then(|kind| {
+        let start = place.within().start;
+        let place = Place::new(self.id, Span::new(start, start + text.len() as u32));
+        let label = self.sheet.as_ref().map(|sheet| sheet.kind).and_then(|kind| {
             let words: Vec<&str> = text.split_whitespace().collect();
             (1..=words.len()).rev().find(|count| {
                 let label = words.get(..*count).unwrap_or(&[]).join(" ");
                 matches!(particular::find(kind, &label), Lookup::Found(_))
             })
         });
-        let sheet = self.sheet().map(|sheet| sheet.kind);
+        let sheet = self.sheet.as_ref().map(|sheet| sheet.kind);
         let finding =
             self.findings.add(&rules::UNREADABLE_LINE, place, firstpole_grammar::Fault::MissingColon.sentence());
         finding.label("neither a heading nor a particular");
@@ -237,15 +341,9 @@ impl FileReader<'_> {
         name: Option<&Name>,
         links: Vec<(firstpole_grammar::Link, Place)>,
     ) {
-        let heading = self.place(line, Span::new(0, line.len));
-        let start = kind_place.span.start;
-        let end = links
-            .iter()
-            .map(|(_, place)| place.span.end)
-            .chain(name.map(|name| line.place(name.span).end))
-            .max()
-            .unwrap_or(kind_place.span.end);
-        let id = SheetId(self.sheets.len() as u32);
+        let whole = self.place(line, Span::new(0, line.len));
+        let last = links.last().map(|(_, place)| *place);
+        let end = last.or(name.map(|name| self.place(line, name.span))).unwrap_or(kind_place);
         let name_place = name.map_or(kind_place, |name| self.place(line, name.span));
         if kind.named() && name.is_none() {
             let message = format!("a {} needs a name", kind.word());
@@ -254,19 +352,19 @@ impl FileReader<'_> {
             let message = format!("a {} has no name of its own: {}", kind.word(), name.text);
             self.findings.add(&rules::UNREADABLE_LINE, name_place, message).label("does not belong here");
         }
-        self.sheets.push(Sheet {
-            id,
+        self.sheet = Some(Sheet {
+            id: SheetId(self.id.0),
+            file: self.file,
             kind,
             name: name_of(name),
             name_place,
-            heading: Place::new(self.id, Span::new(start, end)),
+            heading: kind_place.to(end),
             links,
             targets: Vec::new(),
             statements: Vec::new(),
             own: Vec::new(),
-            end: Place::new(self.id, Span::new(heading.span.end, heading.span.end)),
+            end: whole.end(),
         });
-        self.current = Some(id);
         self.silent = false;
     }
 
@@ -288,7 +386,7 @@ impl FileReader<'_> {
     fn particular(&mut self, line: &Line, written: &WrittenParticular) {
         let label_place = self.place(line, written.label_span);
         let value_place = self.place(line, written.value.span);
-        let Some(kind) = self.sheet().map(|sheet| sheet.kind) else {
+        let Some(kind) = self.sheet.as_ref().map(|sheet| sheet.kind) else {
             if !self.silent {
                 let message = "this stands before the first heading and belongs to no sheet";
                 self.findings.add(&rules::OUTSIDE_SHEET, label_place, message).label("belongs to no sheet");
@@ -297,9 +395,9 @@ impl FileReader<'_> {
             return;
         };
         if written.own {
-            let text = value_place.span.of(&self.file.text).trim_matches('"').to_owned();
+            let text = value_place.within().of(self.text).trim_matches('"').to_owned();
             let end = self.place(line, Span::new(line.len, line.len));
-            if let Some(sheet) = self.sheet() {
+            if let Some(sheet) = &mut self.sheet {
                 sheet.own.push(OwnLine { label: written.label.clone(), text, place: value_place });
                 sheet.end = end;
             }
@@ -329,8 +427,9 @@ impl FileReader<'_> {
                 for reading in readings {
                     finding.edit(format!("write {}", reading.label), label_place, reading.label);
                 }
-                if let Some(sheet) = self.sheet() {
-                    sheet.end = Place::new(sheet.end.file, Span::new(line.start + line.len, line.start + line.len));
+                let end = self.place(line, Span::new(line.len, line.len));
+                if let Some(sheet) = &mut self.sheet {
+                    sheet.end = end;
                 }
             }
             Lookup::Unknown => self.unknown_label(kind, &written.label, label_place),
@@ -365,7 +464,7 @@ impl FileReader<'_> {
         place: Place,
         written: &ValueText,
     ) -> Reading {
-        let text = place.span.of(&self.file.text);
+        let text = place.within().of(self.text);
         if about == super::About::Reason {
             return match &written.form {
                 ValueForm::Missing => Reading::Open(None),
@@ -393,20 +492,10 @@ impl FileReader<'_> {
                 ..statement.clone()
             })
         });
-        if let Some(sheet) = self.sheet() {
-            sheet.statements.push(statement);
-            sheet.statements.extend(duration);
+        if let Some(sheet) = &mut self.sheet {
+            sheet.statements.push(Arc::new(statement));
+            sheet.statements.extend(duration.map(Arc::new));
             sheet.end = end;
         }
     }
-}
-
-fn nearest_kind(word: &str) -> Option<SheetKind> {
-    let lower = word.to_lowercase();
-    SheetKind::ALL
-        .into_iter()
-        .map(|kind| (strsim::normalized_damerau_levenshtein(kind.word(), &lower), kind))
-        .filter(|(near, _)| *near >= 0.7)
-        .max_by(|a, b| a.0.total_cmp(&b.0))
-        .map(|(_, kind)| kind)
 }

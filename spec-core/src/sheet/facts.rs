@@ -1,5 +1,7 @@
 //! What a sheet states, as rules ask for it.
 
+use std::sync::Arc;
+
 use firstpole_grammar::value::Bound;
 
 use super::{About, Class, Date, Item, Mixture, QuantityReading, Reading, Sequence, Statement};
@@ -10,7 +12,7 @@ use crate::source::Place;
 /// What a sheet states, with what it takes over from others.
 #[derive(Clone, Debug, Default)]
 pub struct Facts {
-    statements: Vec<Statement>,
+    statements: Vec<Arc<Statement>>,
 }
 
 /// A value with the statement that states it.
@@ -40,28 +42,31 @@ impl<Q: Physical> Stated<'_, Q> {
 
 impl Facts {
     /// The facts of these statements.
-    pub const fn new(statements: Vec<Statement>) -> Self {
+    pub const fn new(statements: Vec<Arc<Statement>>) -> Self {
         Self { statements }
     }
 
     /// All statements, those of the sheet itself first.
-    pub fn statements(&self) -> &[Statement] {
+    pub fn statements(&self) -> &[Arc<Statement>] {
         &self.statements
     }
 
-    /// All statements, to be changed.
-    pub(crate) fn statements_mut(&mut self) -> &mut [Statement] {
-        &mut self.statements
+    /// The statements that `which` picks, to be changed.
+    pub(crate) fn statements_mut(
+        &mut self,
+        which: impl Fn(&Statement) -> bool,
+    ) -> impl Iterator<Item = &mut Statement> {
+        self.statements.iter_mut().filter(move |statement| which(statement)).map(Arc::make_mut)
     }
 
     /// The statements of a particular, in the order of the text.
     pub fn all<'a>(&'a self, particular: &'a Particular) -> impl Iterator<Item = &'a Statement> {
-        self.statements.iter().filter(|statement| statement.states(particular))
+        self.statements.iter().map(Arc::as_ref).filter(|statement| statement.states(particular))
     }
 
     /// The statement of a particular, the first where there are several.
     pub fn statement(&self, particular: &Particular) -> Option<&Statement> {
-        self.statements.iter().find(|statement| statement.states(particular))
+        self.statements.iter().map(Arc::as_ref).find(|statement| statement.states(particular))
     }
 
     /// Whether anything at all is stated of it, readable or not.
@@ -95,7 +100,7 @@ impl Facts {
     /// The value on one side, where that side is stated.
     pub fn side<Q: Physical>(&self, particular: &Particular, limit: Limit) -> Option<Stated<'_, Q>> {
         let mut found: Option<Stated<'_, Q>> = None;
-        for statement in self.statements.iter().filter(|s| s.states(particular)) {
+        for statement in self.statements.iter().map(Arc::as_ref).filter(|s| s.states(particular)) {
             let Some(reading) = statement.quantity() else { continue };
             let other = match limit {
                 Limit::Least => statement.limit == Some(Limit::Greatest) || reading.bound == Some(Bound::Greatest),
@@ -117,7 +122,7 @@ impl Facts {
         larger: bool,
     ) -> Option<Stated<'a, Q>> {
         let mut found = None;
-        for statement in self.statements.iter().filter(|s| s.states(particular)) {
+        for statement in self.statements.iter().map(Arc::as_ref).filter(|s| s.states(particular)) {
             let measure = statement.quantity().and_then(&side);
             found = better(found, measure.and_then(|m| stated(statement, m)), larger);
         }
@@ -132,6 +137,7 @@ impl Facts {
     ) -> Option<(T, &'a Statement)> {
         self.statements
             .iter()
+            .map(Arc::as_ref)
             .filter(|s| s.states(particular))
             .find_map(|statement| read(&statement.reading).map(|value| (value, statement)))
     }
@@ -198,7 +204,8 @@ impl Facts {
 
     /// Turns every time in cycles into seconds.
     pub(crate) fn set_frequency(&mut self, frequency: Frequency) {
-        for statement in &mut self.statements {
+        let in_cycles = |statement: &Statement| statement.quantity().is_some_and(QuantityReading::counts_cycles);
+        for statement in self.statements_mut(in_cycles) {
             if let Reading::Quantity(quantity) = &mut statement.reading {
                 quantity.set_frequency(frequency);
             }

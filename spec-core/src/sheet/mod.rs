@@ -6,29 +6,37 @@ mod link;
 mod read_quantity;
 mod read_value;
 mod reading;
+mod watch;
 
-pub use build::build;
+pub(crate) use build::build;
 pub use facts::{Facts, Stated};
 pub use link::{LinkTarget, Scope};
 pub use reading::{Class, Date, Item, Mixture, Pause, QuantityReading, Reading, Sequence, SequenceStep, Share};
 
+pub(crate) use watch::{Seen, watch};
+
 use std::collections::BTreeMap;
-use std::sync::OnceLock;
+use std::sync::{Arc, OnceLock};
 
 use firstpole_grammar::{Link, Name};
 
+use crate::finding::Finding;
 use crate::particular::{Found, Limit, Particular, SheetKind};
-use crate::source::{FileId, Place};
+use crate::source::{Block, BlockId, FileId, Place};
+use build::BlockReading;
+use watch::Question;
 
-/// A sheet of the set.
+/// A sheet of the set, by the number of its block.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
-pub struct SheetId(pub u32);
+pub struct SheetId(pub(crate) u32);
 
 /// A sheet: its heading and what stands under it.
 #[derive(Clone, Debug)]
 pub struct Sheet {
     /// Which one it is.
     pub id: SheetId,
+    /// The file that it stands in.
+    file: FileId,
     /// What it describes.
     pub kind: SheetKind,
     /// Its name; for a tender its title, empty where it is missing.
@@ -42,7 +50,7 @@ pub struct Sheet {
     /// What the links point at, as far as they could be resolved, with the word of each.
     pub targets: Vec<(&'static str, LinkTarget)>,
     /// The particulars, in the order of the text.
-    pub statements: Vec<Statement>,
+    pub statements: Vec<Arc<Statement>>,
     /// The buyer's own labels, with their texts.
     pub own: Vec<OwnLine>,
     /// The end of the sheet's last line that says something: where a new particular is put.
@@ -52,15 +60,19 @@ pub struct Sheet {
 impl Sheet {
     /// The file that it stands in.
     pub const fn file(&self) -> FileId {
-        self.heading.file
+        self.file
     }
 
     /// The sheet that the link `word` points at.
     pub fn target(&self, word: &str) -> Option<SheetId> {
-        self.targets.iter().find(|(w, _)| *w == word).and_then(|(_, target)| match target {
-            LinkTarget::Sheet(id) => Some(*id),
-            LinkTarget::Rule(_) => None,
-        })
+        link::sheet_of(&self.targets, word)
+    }
+
+    /// Whether the heading is the same, and stands at the same place.
+    fn is_headed_like(&self, other: &Self) -> bool {
+        (self.kind, self.file, &self.name, self.name_place, self.heading)
+            == (other.kind, other.file, &other.name, other.name_place, other.heading)
+            && self.links == other.links
     }
 
     /// `breaker LineBay`: how messages call it.
@@ -138,11 +150,39 @@ impl Statement {
 /// The sheets of a set of files, resolved.
 #[derive(Debug, Default)]
 pub struct Set {
+    /// What was made of each block, by its number.
+    slots: Vec<Option<Arc<Slot>>>,
     /// The sheets, file by file, in the order of the text.
-    pub sheets: Vec<Sheet>,
+    order: Vec<SheetId>,
+    web: Arc<Web>,
+    /// Counts up from one set to the next that takes over from it.
+    age: u64,
+}
+
+/// How the files and sheets of a set hang together. It is the same as long as no heading and no `use` changes.
+#[derive(Debug, Default)]
+struct Web {
+    /// Which file uses which, and where.
+    uses: Vec<(FileId, FileId, Place)>,
     /// Which files each file can refer to, itself first.
-    pub scope: Scope,
+    scope: Scope,
     index: Index,
+    /// What is wrong with the links.
+    findings: Vec<Arc<Finding>>,
+}
+
+/// What was made of a block.
+#[derive(Clone, Debug)]
+struct Slot {
+    file: FileId,
+    block: Arc<Block>,
+    read: Arc<BlockReading>,
+    /// The sheet with its resolved links; a block before the first heading has none.
+    sheet: Option<Arc<Sheet>>,
+    /// The age of the set in which the sheet or one of its links was last another.
+    changed: u64,
+    /// What the sheet states, made when it is first asked for.
+    facts: OnceLock<Arc<Facts>>,
 }
 
 /// Where sheets are found without looking through all of them.
@@ -151,67 +191,142 @@ struct Index {
     by_kind: BTreeMap<SheetKind, Vec<SheetId>>,
     by_file: BTreeMap<(FileId, SheetKind), Vec<SheetId>>,
     pointing: BTreeMap<(SheetId, &'static str), Vec<SheetId>>,
-    /// What each sheet states, made when it is first asked for.
-    facts: Vec<OnceLock<Facts>>,
 }
 
 impl Set {
     /// A sheet.
     pub fn sheet(&self, id: SheetId) -> Option<&Sheet> {
-        self.sheets.get(id.0 as usize)
+        watch::sheet(id);
+        self.peek(id)
+    }
+
+    /// A sheet, without a note of it.
+    fn peek(&self, id: SheetId) -> Option<&Sheet> {
+        self.slot(id)?.sheet.as_deref()
+    }
+
+    fn slot(&self, id: SheetId) -> Option<&Slot> {
+        self.slots.get(id.0 as usize).and_then(Option::as_deref)
+    }
+
+    fn slot_mut(&mut self, id: SheetId) -> Option<&mut Slot> {
+        self.slots.get_mut(id.0 as usize).and_then(Option::as_mut).map(Arc::make_mut)
+    }
+
+    /// The sheet of a block.
+    pub fn sheet_of(&self, block: BlockId) -> Option<&Sheet> {
+        self.sheet(SheetId(block.0))
+    }
+
+    /// All sheets, file by file, in the order of the text.
+    pub fn sheets(&self) -> impl DoubleEndedIterator<Item = &Sheet> {
+        watch::question(Question::All);
+        self.order.iter().filter_map(|id| self.sheet(*id))
     }
 
     /// What a sheet states, with what it takes over through `like`, as rules ask for it.
     pub fn facts(&self, id: SheetId) -> &Facts {
         static NONE: Facts = Facts::new(Vec::new());
-        let slot = self.index.facts.get(id.0 as usize);
-        slot.map_or(&NONE, |slot| slot.get_or_init(|| Facts::new(self.resolved(id))))
+        // Whoever asks depends on the whole chain, also where the answer is there already.
+        self.chain(id).for_each(|sheet| watch::sheet(sheet.id));
+        let slot = self.slot(id).filter(|slot| slot.sheet.is_some());
+        slot.map_or(&NONE, |slot| slot.facts.get_or_init(|| Arc::new(Facts::new(self.resolved(id)))))
     }
 
     /// The sheets of one kind that `file` can refer to, in the order of the text, its own first.
     pub fn in_reach(&self, file: FileId, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
-        let ids = self.scope.of(file).iter().filter_map(move |file| self.index.by_file.get(&(*file, kind)));
+        watch::question(Question::InReach(file, kind));
+        let ids = self.web.scope.of(file).iter().filter_map(move |file| self.web.index.by_file.get(&(*file, kind)));
         ids.flatten().filter_map(|id| self.sheet(*id))
     }
 
     /// The sheets of one kind.
     pub fn of_kind(&self, kind: SheetKind) -> impl Iterator<Item = &Sheet> {
-        self.index.by_kind.get(&kind).into_iter().flatten().filter_map(|id| self.sheet(*id))
+        watch::question(Question::OfKind(kind));
+        self.web.index.by_kind.get(&kind).into_iter().flatten().filter_map(|id| self.sheet(*id))
     }
 
     /// The sheets whose link `word` points at `target`, in the order of the text.
     pub fn pointing_at(&self, target: SheetId, word: &'static str) -> impl Iterator<Item = &Sheet> {
-        self.index.pointing.get(&(target, word)).into_iter().flatten().filter_map(|id| self.sheet(*id))
+        watch::question(Question::Pointing(target, word));
+        self.web.index.pointing.get(&(target, word)).into_iter().flatten().filter_map(|id| self.sheet(*id))
     }
 
-    /// Takes the sheets into the index, as far as their kinds and files go.
-    fn index_sheets(&mut self) {
-        for sheet in &self.sheets {
-            self.index.by_kind.entry(sheet.kind).or_default().push(sheet.id);
-            self.index.by_file.entry((sheet.file(), sheet.kind)).or_default().push(sheet.id);
-        }
+    /// How many numbers of blocks are in use.
+    pub(crate) const fn numbers(&self) -> usize {
+        self.slots.len()
     }
 
-    /// Takes the links into the index, once they are resolved.
-    fn index_links(&mut self) {
-        self.index.facts.resize_with(self.sheets.len(), OnceLock::new);
-        for sheet in &self.sheets {
-            for (word, target) in &sheet.targets {
-                if let LinkTarget::Sheet(target) = target {
-                    self.index.pointing.entry((*target, word)).or_default().push(sheet.id);
-                }
+    /// The sheets that a question is answered with.
+    fn answer(&self, question: &Question) -> Vec<SheetId> {
+        match question {
+            Question::All => self.order.clone(),
+            Question::OfKind(kind) => self.web.index.by_kind.get(kind).cloned().unwrap_or_default(),
+            Question::InReach(file, kind) => {
+                let ids =
+                    self.web.scope.of(*file).iter().filter_map(|file| self.web.index.by_file.get(&(*file, *kind)));
+                ids.flatten().copied().collect()
+            }
+            Question::Pointing(target, word) => {
+                self.web.index.pointing.get(&(*target, word)).cloned().unwrap_or_default()
             }
         }
     }
 
+    /// Which sets came before this one, in a row in which each took over from the last.
+    pub(crate) const fn age(&self) -> u64 {
+        self.age
+    }
+
+    /// The sheets by kind and by file.
+    fn indexed(&self) -> Index {
+        let mut index = Index::default();
+        for sheet in self.order.iter().filter_map(|id| self.peek(*id)) {
+            index.by_kind.entry(sheet.kind).or_default().push(sheet.id);
+            index.by_file.entry((sheet.file, sheet.kind)).or_default().push(sheet.id);
+        }
+        index
+    }
+
+    /// Takes the resolved links of a sheet in.
+    fn take_targets(&mut self, id: SheetId, targets: Vec<(&'static str, LinkTarget)>) {
+        if self.peek(id).is_none_or(|sheet| sheet.targets == targets) {
+            return;
+        }
+        let age = self.age;
+        if let Some(slot) = self.slot_mut(id)
+            && let Some(sheet) = &mut slot.sheet
+        {
+            Arc::make_mut(sheet).targets = targets;
+            slot.changed = age;
+        }
+    }
+
+    /// Facts that were taken over from an earlier set hold as long as no sheet of their chain has changed. The slots of the others
+    /// are no longer shared with that set.
+    fn drop_stale_facts(&mut self) {
+        let changed = |id: SheetId| self.slot(id).is_some_and(|slot| slot.changed == self.age);
+        let is_stale = |id: &SheetId| self.chain(*id).any(|sheet| changed(sheet.id));
+        let stale: Vec<SheetId> = self.order.iter().copied().filter(is_stale).collect();
+        for id in stale {
+            if let Some(slot) = self.slot_mut(id) {
+                slot.facts.take();
+            }
+        }
+    }
+
+    /// A sheet and those that it takes over from through `like`, the nearest first.
+    fn chain(&self, id: SheetId) -> impl Iterator<Item = &Sheet> {
+        // Circles are cut when links are resolved.
+        std::iter::successors(self.peek(id), |sheet| sheet.target("like").and_then(|id| self.peek(id)))
+    }
+
     /// What a sheet states, with what it takes over through `like`: its own statements first, then those of the sheets that it
     /// is like, nearest first, for particulars that were not stated before.
-    pub fn resolved(&self, id: SheetId) -> Vec<Statement> {
-        let mut all: Vec<Statement> = Vec::new();
-        let mut next = Some(id);
-        let mut seen = Vec::new();
-        while let Some(sheet) = next.filter(|id| !seen.contains(id)).and_then(|id| self.sheet(id)) {
-            seen.push(sheet.id);
+    pub fn resolved(&self, id: SheetId) -> Vec<Arc<Statement>> {
+        let mut all: Vec<Arc<Statement>> = Vec::new();
+        for sheet in self.chain(id) {
+            watch::sheet(sheet.id);
             let above = all.len();
             for statement in &sheet.statements {
                 let nearer = all.get(..above).unwrap_or(&[]);
@@ -222,9 +337,42 @@ impl Set {
                     all.push(statement.clone());
                 }
             }
-            next = sheet.target("like");
         }
         all
+    }
+}
+
+/// Whether what somebody made of an earlier set still holds in one that took over from it.
+#[derive(Debug)]
+pub(crate) struct Comparison<'a> {
+    now: &'a Set,
+    before: &'a Set,
+    /// Whether every question is answered as before.
+    all_alike: bool,
+    /// Whether questions are still answered as before, as far as somebody wanted to know.
+    same: BTreeMap<Question, bool>,
+}
+
+impl<'a> Comparison<'a> {
+    /// Of a set with the one that it took over from.
+    pub fn new(now: &'a Set, before: &'a Set) -> Self {
+        Self { now, before, all_alike: Arc::ptr_eq(&now.web, &before.web), same: BTreeMap::new() }
+    }
+
+    /// Whether all that was seen, when a set of this age was the newest, is still the same.
+    pub fn holds(&mut self, seen: &Seen, age: u64) -> bool {
+        let unchanged = |id: &SheetId| self.now.slot(*id).is_some_and(|slot| slot.changed <= age);
+        seen.sheets.iter().all(unchanged)
+            && (self.all_alike || seen.questions.iter().all(|question| self.is_answered_alike(question)))
+    }
+
+    fn is_answered_alike(&mut self, question: &Question) -> bool {
+        if let Some(same) = self.same.get(question) {
+            return *same;
+        }
+        let same = self.now.answer(question) == self.before.answer(question);
+        self.same.insert(question.clone(), same);
+        same
     }
 }
 

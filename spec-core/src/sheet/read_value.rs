@@ -329,7 +329,7 @@ impl Reader<'_> {
 
     /// A place within the value.
     pub const fn at(&self, span: Span) -> Place {
-        Place::new(self.place.file, span.shifted(self.place.span.start))
+        Place::new(self.place.block(), span.shifted(self.place.within().start))
     }
 
     /// A finding.

@@ -138,6 +138,14 @@ impl QuantityReading {
         })
     }
 
+    /// Whether a time in it is written in cycles.
+    pub fn counts_cycles(&self) -> bool {
+        let second = self.second.as_ref().map(|(_, second)| second);
+        let own = [Some(&self.measure), second, self.lasting.as_ref()];
+        own.into_iter().flatten().any(|measure| measure.unit.counts_cycles())
+            || self.again.iter().any(Self::counts_cycles)
+    }
+
     /// The same with its cycles turned into seconds.
     pub fn set_frequency(&mut self, frequency: Frequency) {
         self.measure = self.measure.with_frequency(frequency);

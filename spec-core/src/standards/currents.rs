@@ -22,6 +22,15 @@ pub(super) struct Row {
     rating: RatingSeries,
     regime: Regime,
     ampere: f64,
+    offered: Offered,
+}
+
+/// Whether breakers are made for a value of the series.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Deserialize)]
+#[serde(rename_all = "lowercase")]
+enum Offered {
+    Yes,
+    No,
 }
 
 static ROWS: LazyLock<Vec<Row>> = LazyLock::new(|| table::rows(include_str!("../../data/preferred_currents.csv")));
@@ -39,42 +48,49 @@ pub(super) fn all() -> &'static [Row] {
 }
 
 /// The preferred currents of one rating, as the families cited have them.
+///
+/// The series holds more values than breakers are made for: all of them are preferred, and only those that are offered are chosen
+/// and counted as steps.
 #[derive(Clone, Debug)]
 pub struct PreferredCurrents {
     values: Vec<f64>,
+    not_offered: Vec<f64>,
 }
 
 impl PreferredCurrents {
     /// The series of a rating.
     pub fn of(rating: RatingSeries, regimes: &[Regime]) -> Self {
-        let mut values: Vec<f64> = ROWS
-            .iter()
-            .filter(|row| row.rating == rating && regimes.contains(&row.regime))
-            .map(|row| row.ampere)
-            .collect();
-        values.sort_by(f64::total_cmp);
-        values.dedup_by(|a, b| same(*a, *b));
-        Self { values }
+        let rows = |offered| {
+            let mut values: Vec<f64> = ROWS
+                .iter()
+                .filter(|row| row.rating == rating && regimes.contains(&row.regime) && row.offered == offered)
+                .map(|row| row.ampere)
+                .collect();
+            values.sort_by(f64::total_cmp);
+            values.dedup_by(|a, b| same(*a, *b));
+            values
+        };
+        Self { values: rows(Offered::Yes), not_offered: rows(Offered::No) }
     }
 
-    /// Whether a current is on it.
+    /// Whether a current is on it, offered or not.
     pub fn has(&self, current: ElectricCurrent) -> bool {
-        self.values.iter().any(|value| same(*value, current.si()))
+        self.values.iter().chain(&self.not_offered).any(|value| same(*value, current.si()))
     }
 
-    /// The lowest value that is not below `current`.
+    /// The lowest value offered that is not below `current`.
     pub fn at_or_above(&self, current: ElectricCurrent) -> Option<ElectricCurrent> {
         let found = self.values.iter().find(|value| **value >= current.si() || same(**value, current.si()));
         found.map(|value| ElectricCurrent::from_si(*value))
     }
 
-    /// The next value above `current`.
+    /// The next value offered above `current`.
     pub fn above(&self, current: ElectricCurrent) -> Option<ElectricCurrent> {
         let found = self.values.iter().find(|value| **value > current.si() && !same(**value, current.si()));
         found.map(|value| ElectricCurrent::from_si(*value))
     }
 
-    /// How many steps of the series lie between two currents; negative where `to` is the lower.
+    /// How many steps between values offered lie between two currents; negative where `to` is the lower.
     pub fn steps(&self, from: ElectricCurrent, to: ElectricCurrent) -> i64 {
         let at = |v: f64| self.values.iter().filter(|value| **value < v && !same(**value, v)).count() as i64;
         at(to.si()) - at(from.si())
@@ -99,6 +115,30 @@ pub(super) fn usual() -> &'static [Usual] {
 pub fn usual_continuous_current(rated: ElectricPotential) -> Option<ElectricCurrent> {
     let kv = rated.si() / 1e3;
     USUAL.iter().find(|row| kv <= row.to_kv || same(kv, row.to_kv)).map(|row| ElectricCurrent::from_si(row.ampere))
+}
+
+#[derive(Clone, Debug, Deserialize)]
+pub(super) struct Preferred {
+    number: f64,
+}
+
+static NUMBERS: LazyLock<Vec<Preferred>> =
+    LazyLock::new(|| table::rows(include_str!("../../data/preferred_numbers.csv")));
+
+#[cfg(test)]
+pub(super) fn preferred_numbers() -> usize {
+    NUMBERS.len()
+}
+
+/// The least number of the R10 series that is not below `number`; none for what is not a positive number. ISO 3.
+pub fn preferred_number(number: f64) -> Option<f64> {
+    if !number.is_finite() || number <= 0.0 {
+        return None;
+    }
+    let decade = 10f64.powf(number.log10().floor());
+    let decades = [decade / 10.0, decade, decade * 10.0];
+    let mut series = decades.into_iter().flat_map(|decade| NUMBERS.iter().map(move |row| row.number * decade));
+    series.find(|value| *value >= number || same(*value, number))
 }
 
 /// The standard durations of short-circuit.
@@ -136,6 +176,30 @@ mod tests {
         assert!(PreferredCurrents::of(RatingSeries::Continuous, &[Regime::Ieee]).has(current(1200.0)));
         assert!(!PreferredCurrents::of(RatingSeries::Continuous, &[Regime::Iec]).has(current(1200.0)));
         assert!(PreferredCurrents::of(RatingSeries::Continuous, &[Regime::Iec]).has(current(3150.0)));
+    }
+
+    /// ISO 3: every current of the R10 series is preferred; 250, 315, 500 and 1000 A are hardly offered, so that none is chosen.
+    #[test]
+    fn preferred_and_not_chosen() {
+        let current = |a: f64| ElectricCurrent::from_si(a);
+        let series = PreferredCurrents::of(RatingSeries::Continuous, &[Regime::Iec]);
+        for (rare, chosen) in [(250.0, 400.0), (315.0, 400.0), (500.0, 630.0), (1000.0, 1250.0)] {
+            assert!(series.has(current(rare)));
+            assert_eq!(series.at_or_above(current(rare)), Some(current(chosen)));
+        }
+        assert!(!series.has(current(1200.0)) && !series.has(current(300.0)));
+        assert_eq!(series.steps(current(800.0), current(1250.0)), 1);
+    }
+
+    #[test]
+    fn preferred_numbers_of_any_size() {
+        for (number, preferred) in
+            [(164.0, 200.0), (200.0, 200.0), (200.1, 250.0), (0.9, 1.0), (8.1e3, 10e3), (1.0, 1.0)]
+        {
+            let found = preferred_number(number).expect("a preferred number");
+            assert!(same(found, preferred), "{number}: {found}");
+        }
+        assert_eq!(preferred_number(0.0), None);
     }
 
     #[test]

@@ -6,11 +6,13 @@
 
 mod capacitive;
 mod cited;
+mod clearances;
 mod cooling;
 mod currents;
 mod earthing;
 mod endurance;
 mod gas_law;
+mod generator_breaker;
 mod insulation;
 mod line_side;
 mod making;
@@ -28,11 +30,15 @@ pub use capacitive::{
     BankAllowance, CapacitiveCircuit, CapacitiveRating, bank_allowance, capacitive_rating, capacitive_voltage_factor,
 };
 pub use cited::{Citation, OldWording, StandardScope, old_wordings, rating_structure, replacement_of};
+pub use clearances::clearance;
 pub use cooling::altitude_cooling;
-pub use currents::{PreferredCurrents, RatingSeries, durations, is_duration, usual_continuous_current};
+pub use currents::{
+    PreferredCurrents, RatingSeries, durations, is_duration, preferred_number, usual_continuous_current,
+};
 pub use earthing::{first_pole_factors, out_of_phase_factor};
 pub use endurance::{class_for_operations, operations_of_class};
 pub use gas_law::{CountsFrom, ForbiddenGases, GasLaw, gas_law, is_fluorinated};
+pub use generator_breaker::{GeneratorBreakerTrv, GeneratorFault, generator_breaker_trv};
 pub use insulation::{InsulationLevel, insulation_levels};
 pub use line_side::{
     InitialTrvRow, LineSideRow, ShortLineDuty, ShortLineRow, initial_trv_row, line_side, short_line_faults_apply,

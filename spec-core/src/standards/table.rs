@@ -31,12 +31,23 @@ mod tests {
             ("superseded", include_str!("../../data/superseded_standards.csv"), super::super::cited::counts().1),
             ("vocabulary", include_str!("../../data/edition_vocabulary.csv"), super::super::cited::counts().2),
             ("rating standards", include_str!("../../data/rating_standards.csv"), super::super::cited::counts().3),
+            (
+                "generator breakers",
+                include_str!("../../data/generator_breaker_trv.csv"),
+                super::super::generator_breaker::all().len(),
+            ),
             ("endurance", include_str!("../../data/mechanical_classes.csv"), super::super::endurance::all().len()),
             (
                 "usual currents",
                 include_str!("../../data/usual_continuous_currents.csv"),
                 super::super::currents::usual().len(),
             ),
+            (
+                "preferred numbers",
+                include_str!("../../data/preferred_numbers.csv"),
+                super::super::currents::preferred_numbers(),
+            ),
+            ("clearances", include_str!("../../data/clearances.csv"), super::super::clearances::all().len()),
             ("cooling", include_str!("../../data/altitude_cooling.csv"), super::super::cooling::all().len()),
             ("coil ranges", include_str!("../../data/coil_ranges.csv"), super::super::supply::counts().1),
             ("making", include_str!("../../data/peak_factors.csv"), super::super::making::all().len()),

@@ -125,10 +125,7 @@ fn summary(assessment: &Assessment, gate: &[FindingKind], out: &mut dyn Write) -
         .into_iter()
         .map(|kind| (assessment.count(kind), kind))
         .filter(|(count, _)| *count > 0)
-        .map(|(count, kind)| match kind {
-            FindingKind::Excess => counted(count, "excess", "excesses"),
-            _ => counted(count, kind.word(), &format!("{}s", kind.word())),
-        })
+        .map(|(count, kind)| kind.counted(count))
         .collect();
     if parts.is_empty() {
         parts.push("nothing found".to_owned());

@@ -1,9 +1,11 @@
 //! Code actions: the repairs of findings, a deviation for a finding, and `from duty` written out.
 
+use std::sync::Arc;
+
 use firstpole_core::particular::SheetKind;
 use firstpole_core::rules::reading;
 use firstpole_core::sheet::Sheet;
-use firstpole_core::{Assessment, Edit, FileId, Finding, Place, Span};
+use firstpole_core::{Assessment, Edit, FileId, Finding, Span};
 
 use super::hints::hints;
 use super::spot::{sheet_at, statement_at};
@@ -14,7 +16,7 @@ pub struct Action<'a> {
     /// What it does.
     pub title: String,
     /// The finding that it mends.
-    pub finding: Option<&'a Finding>,
+    pub finding: Option<&'a Arc<Finding>>,
     /// The one thing to do about it.
     pub preferred: bool,
     /// The change.
@@ -24,10 +26,12 @@ pub struct Action<'a> {
 /// What can be done within a part of a file.
 pub fn actions(assessment: &Assessment, file: FileId, within: Span) -> Vec<Action<'_>> {
     let mut actions = Vec::new();
-    let here = |finding: &&Finding| {
-        finding.place.file == file && finding.place.span.start <= within.end && within.start <= finding.place.span.end
+    let here = |finding: &&Arc<Finding>| {
+        let at = assessment.at(finding.place);
+        at.file == file && at.span.start <= within.end && within.start <= at.span.end
     };
-    for finding in assessment.findings().iter().filter(here) {
+    let findings = || assessment.findings().iter().filter(here);
+    for finding in findings() {
         for edit in &finding.edits {
             actions.push(Action {
                 title: edit.title.clone(),
@@ -37,7 +41,7 @@ pub fn actions(assessment: &Assessment, file: FileId, within: Span) -> Vec<Actio
             });
         }
     }
-    for finding in assessment.findings().iter().filter(here) {
+    for finding in findings() {
         if let Some(edit) = deviation(assessment, finding) {
             actions.push(Action { title: edit.title.clone(), finding: Some(finding), preferred: false, edit });
         }
@@ -49,9 +53,10 @@ pub fn actions(assessment: &Assessment, file: FileId, within: Span) -> Vec<Actio
 /// `from duty` replaced by what it chose.
 fn written_out<'a>(assessment: &Assessment, file: FileId, within: Span) -> Option<Action<'a>> {
     let sheet = sheet_at(assessment, file, within.start)?;
-    let (statement, _) = statement_at(sheet, within.start)?;
+    let (statement, _) = statement_at(assessment, sheet, within.start)?;
     let value = statement.value;
-    let chosen = hints(assessment, file, Span::new(value.span.end, value.span.end));
+    let end = assessment.span(value).end;
+    let chosen = hints(assessment, file, Span::new(end, end));
     // Where several breakers take the line over and chose differently, no one value is right.
     let [hint] = chosen.as_slice() else { return None };
     let text = hint.value.clone();
@@ -80,7 +85,7 @@ fn deviation(assessment: &Assessment, finding: &Finding) -> Option<Edit> {
     ];
     Some(Edit {
         title: format!("add a deviation from {} in {}", finding.rule, sheet.name),
-        place: Place::new(sheet.file(), Span::new(end, end)),
+        place: assessment.sources.place(sheet.file(), Span::new(end, end))?,
         text: lines.join(newline),
     })
 }
@@ -90,7 +95,8 @@ fn sheet_of<'a>(assessment: &'a Assessment, finding: &Finding) -> Option<&'a She
     if let Some(id) = finding.sheet {
         return assessment.set.sheet(id);
     }
-    let sheet = sheet_at(assessment, finding.place.file, finding.place.span.start)?;
+    let at = assessment.at(finding.place);
+    let sheet = sheet_at(assessment, at.file, at.span.start)?;
     let fits = matches!(sheet.kind, SheetKind::Breaker | SheetKind::System | SheetKind::Site | SheetKind::Tender);
     // What is no breaker's finding can only be accepted in the sheet that it stands in.
     fits.then_some(sheet)
@@ -110,9 +116,10 @@ mod tests {
     use super::*;
     use crate::features::testing::{BAY, assessed, at_cursor};
 
-    fn applied(text: &str, edit: &Edit) -> String {
+    fn applied(assessment: &Assessment, text: &str, edit: &Edit) -> String {
         let mut text = text.to_owned();
-        text.replace_range(edit.place.span.start as usize..edit.place.span.end as usize, &edit.text);
+        let span = assessment.span(edit.place);
+        text.replace_range(span.start as usize..span.end as usize, &edit.text);
         text
     }
 
@@ -124,7 +131,7 @@ mod tests {
         let actions = actions(&assessment, FileId(0), Span::new(at, at));
         let action = actions.first().expect("a repair");
         assert_eq!(action.finding.expect("a finding").rule, "unknown-label");
-        assert_eq!(applied(&text, &action.edit), BAY);
+        assert_eq!(applied(&assessment, &text, &action.edit), BAY);
     }
 
     #[test]
@@ -133,9 +140,9 @@ mod tests {
             let text = BAY.replace("145 kV", "150 kV").replace("LineBay", named).replace('\n', newline);
             let assessment = assessed(&text);
             let finding = assessment.findings().iter().find(|f| f.rule == "rated-voltage-not-preferred").expect("one");
-            let actions = actions(&assessment, FileId(0), finding.place.span);
+            let actions = actions(&assessment, FileId(0), assessment.span(finding.place));
             let action = actions.iter().find(|a| a.title.starts_with("add a deviation from rated-v")).expect("offered");
-            let after = applied(&text, &action.edit)
+            let after = applied(&assessment, &text, &action.edit)
                 .replacen("\"\"", "\"as before\"", 2)
                 .replace("until:", "until: 2099-12-31");
             let accepted = assessed(&after);
@@ -150,9 +157,9 @@ mod tests {
         let (assessment, at) = at_cursor(&BAY.replace("from duty", "from| duty"));
         let actions = actions(&assessment, FileId(0), Span::new(at, at));
         let action = actions.iter().find(|action| action.finding.is_none()).expect("offered");
-        let after = assessed(&applied(BAY, &action.edit));
+        let after = assessed(&applied(&assessment, BAY, &action.edit));
         assert!(
-            after.findings().iter().all(|f| f.place.span.start != action.edit.place.span.start),
+            after.findings().iter().all(|f| after.at(f.place).span.start != assessment.span(action.edit.place).start),
             "{:?}",
             action.edit
         );

@@ -151,9 +151,8 @@ impl At<'_> {
         }
         if self
             .source
-            .document
-            .lines
-            .iter()
+            .lines()
+            .take_while(|line| line.start < self.start)
             .all(|line| line.start >= self.start || text_of(self.source, line).trim().is_empty())
         {
             proposals.insert(0, plain("cbspec 1", ProposalKind::Keyword, "the edition of the language", replaces));
@@ -223,7 +222,8 @@ impl At<'_> {
         let line = Span::new(self.start, self.offset() + self.after.len() as u32);
         let missing = |particular: &&&Particular| {
             !stated.iter().any(|statement| {
-                let own_line = statement.label.file == self.file && line.touches(statement.label.span.start);
+                let label = self.assessment.at(statement.label);
+                let own_line = label.file == self.file && line.touches(label.span.start);
                 statement.states(particular) && !own_line
             })
         };
@@ -231,7 +231,7 @@ impl At<'_> {
             .assessment
             .findings()
             .iter()
-            .filter(|finding| finding.place.file == self.file)
+            .filter(|finding| self.assessment.at(finding.place).file == self.file)
             .flat_map(|finding| finding.edits.iter().map(|edit| edit.text.as_str()))
             .collect();
         let mut proposals: Vec<(u8, Proposal)> = declared(sheet.kind)
@@ -255,10 +255,9 @@ impl At<'_> {
             let column = sheet
                 .statements
                 .iter()
-                .filter(|statement| {
-                    statement.label.file == self.file && statement.value.span.start > statement.label.span.end
-                })
-                .map(|statement| (statement.value.span.start - statement.label.span.start) as usize)
+                .map(|statement| (statement.label.within(), statement.value.within()))
+                .filter(|(label, value)| value.start > label.end)
+                .map(|(label, value)| (value.start - label.start) as usize)
                 .max()
                 .unwrap_or(0);
             let width = column.max(particular.label.len() + 2);

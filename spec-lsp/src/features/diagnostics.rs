@@ -1,7 +1,6 @@
 //! Findings as an editor shows them.
 
-use firstpole_core::finding::Related;
-use firstpole_core::{Assessment, Edit, FileId, Finding, FindingKind, Place};
+use firstpole_core::{Finding, FindingKind};
 
 /// How grave it is to an editor.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -16,31 +15,8 @@ pub enum Severity {
     Hint,
 }
 
-/// A finding as an editor shows it.
-#[derive(Clone, Debug)]
-pub struct Diagnostic<'a> {
-    /// Where.
-    pub place: Place,
-    /// How grave.
-    pub severity: Severity,
-    /// The name of its rule.
-    pub rule: &'static str,
-    /// What is wrong, and what to do about it.
-    pub message: String,
-    /// What it rests on.
-    pub related: &'a [Related],
-    /// What mends it.
-    pub edits: &'a [Edit],
-    /// Whether the text there does nothing.
-    pub idle: bool,
-}
-
-/// The findings in one file, in the order of the text.
-pub fn diagnostics(assessment: &Assessment, file: FileId) -> Vec<Diagnostic<'_>> {
-    assessment.findings().iter().filter(|finding| finding.place.file == file).map(diagnostic).collect()
-}
-
-fn diagnostic(finding: &Finding) -> Diagnostic<'_> {
+/// What is wrong, what to do about it, and on what basis.
+pub fn message(finding: &Finding) -> String {
     let mut message = finding.message.clone();
     if let Some(acceptance) = &finding.accepted {
         let told = format!("\naccepted by {} until {}: {}", acceptance.approved, acceptance.until, acceptance.reason);
@@ -53,18 +29,16 @@ fn diagnostic(finding: &Finding) -> Diagnostic<'_> {
         message.push_str("\nbasis: ");
         message.push_str(&finding.basis);
     }
-    Diagnostic {
-        place: finding.place,
-        severity: severity(finding),
-        rule: finding.rule,
-        message,
-        related: &finding.related,
-        edits: &finding.edits,
-        idle: finding.rule == "deviation-idle",
-    }
+    message
 }
 
-fn severity(finding: &Finding) -> Severity {
+/// Whether it is about text that does nothing.
+pub fn is_idle(finding: &Finding) -> bool {
+    matches!(finding.rule, "deviation-idle" | "override-idle")
+}
+
+/// How grave it is to an editor.
+pub fn severity(finding: &Finding) -> Severity {
     if finding.accepted.is_some() {
         return Severity::Hint;
     }
@@ -83,10 +57,10 @@ mod tests {
     #[test]
     fn the_kind_gives_the_severity() {
         let assessment = assessed(&BAY.replace("145 kV", "150 kV"));
-        for diagnostic in diagnostics(&assessment, FileId(0)) {
-            let finding = assessment.findings().iter().find(|f| f.rule == diagnostic.rule).expect("its finding");
-            assert_eq!(diagnostic.severity == Severity::Error, finding.kind.blocks(), "{}", diagnostic.rule);
-            assert!(diagnostic.message.contains("basis: "), "{}", diagnostic.message);
+        assert!(!assessment.findings().is_empty());
+        for finding in assessment.findings() {
+            assert_eq!(severity(finding) == Severity::Error, finding.kind.blocks(), "{}", finding.rule);
+            assert!(message(finding).contains("basis: "), "{}", finding.rule);
         }
     }
 
@@ -95,9 +69,8 @@ mod tests {
         let text = BAY.replace("145 kV", "150 kV")
             + "deviation from rated-voltage-not-preferred in LineBay\n    reason: \"as the old bays\"\n    approved: \"H\"\n    until: 2099-12-31\n";
         let assessment = assessed(&text);
-        let all = diagnostics(&assessment, FileId(0));
-        let accepted = all.iter().find(|d| d.rule == "rated-voltage-not-preferred").expect("the finding");
-        assert_eq!(accepted.severity, Severity::Hint);
-        assert!(accepted.message.contains("accepted by H until 2099-12-31: as the old bays"));
+        let accepted = assessment.findings().iter().find(|f| f.rule == "rated-voltage-not-preferred").expect("one");
+        assert_eq!(severity(accepted), Severity::Hint);
+        assert!(message(accepted).contains("accepted by H until 2099-12-31: as the old bays"));
     }
 }

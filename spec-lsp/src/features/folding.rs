@@ -1,7 +1,8 @@
 //! Folding: every sheet, and every run of comments.
 
+use firstpole_core::source::LineAt;
 use firstpole_core::{Assessment, FileId, Span};
-use firstpole_grammar::{Line, LineKind};
+use firstpole_grammar::LineKind;
 
 use super::spot::{sheets_of, text_of};
 
@@ -17,12 +18,16 @@ pub struct Fold {
 /// The parts of a file that can be folded, in the order of the text.
 pub fn folds(assessment: &Assessment, file: FileId) -> Vec<Fold> {
     let Some(source) = assessment.sources.file(file) else { return Vec::new() };
-    let sheets = sheets_of(assessment, file)
-        .map(|sheet| Fold { span: Span::new(sheet.heading.span.start, sheet.end.span.end), comment: false });
+    let sheets = sheets_of(assessment, file).map(|sheet| Fold {
+        span: Span::new(assessment.span(sheet.heading).start, assessment.span(sheet.end).end),
+        comment: false,
+    });
     let mut folds: Vec<Fold> = sheets.collect();
-    let is_comment =
-        |line: &Line| matches!(line.kind, LineKind::Blank) && text_of(source, line).trim_start().starts_with('#');
-    for run in source.document.lines.chunk_by(|a, b| is_comment(a) == is_comment(b)) {
+    let is_comment = |line: &LineAt<'_>| {
+        matches!(line.kind, LineKind::Blank) && text_of(source, *line).trim_start().starts_with('#')
+    };
+    let lines: Vec<LineAt<'_>> = source.lines().collect();
+    for run in lines.chunk_by(|a, b| is_comment(a) == is_comment(b)) {
         if let (Some(first), Some(last), true) = (run.first(), run.last(), run.first().is_some_and(is_comment)) {
             folds.push(Fold { span: Span::new(first.start, last.start + last.len), comment: true });
         }

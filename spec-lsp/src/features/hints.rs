@@ -3,7 +3,7 @@
 use firstpole_core::case::Case;
 use firstpole_core::particular::SheetKind;
 use firstpole_core::rules::Policy;
-use firstpole_core::{Assessment, FileId, Span};
+use firstpole_core::{Assessment, FileId, Place, Span};
 
 /// A hint in the text.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -23,12 +23,14 @@ pub fn hints(assessment: &Assessment, file: FileId, within: Span) -> Vec<Hint> {
     let policy = Policy::default();
     let Some(source) = assessment.sources.file(file) else { return Vec::new() };
     let mut hints: Vec<Hint> = Vec::new();
+    let here = |place: Place| {
+        let at = assessment.at(place);
+        at.file == file && within.touches(at.span.end)
+    };
     for sheet in assessment.set.of_kind(SheetKind::Breaker) {
         // Most sheets leave nothing to the duty, and a case is the dearest thing there is.
         let asks = assessment.set.resolved(sheet.id).iter().any(|statement| {
-            statement.value.file == file
-                && within.touches(statement.value.span.end)
-                && matches!(statement.reading, firstpole_core::sheet::Reading::FromDuty)
+            here(statement.value) && matches!(statement.reading, firstpole_core::sheet::Reading::FromDuty)
         });
         if !asks {
             continue;
@@ -36,16 +38,13 @@ pub fn hints(assessment: &Assessment, file: FileId, within: Span) -> Vec<Hint> {
         let case = Case::new(&assessment.set, sheet, &policy);
         for statement in case.breaker.statements() {
             let (Some(working), Some(quantity)) = (&statement.chosen, statement.quantity()) else { continue };
-            let here = statement.value.file == file && within.touches(statement.value.span.end);
-            if !here {
+            if !here(statement.value) {
                 continue;
             }
-            let own = sheet.file() == file
-                && sheet.heading.span.start <= statement.value.span.start
-                && statement.value.span.start <= sheet.end.span.end;
+            let own = statement.value.block() == sheet.heading.block();
             let value = quantity.shown();
             let text = if own { value.clone() } else { format!("{value} in {}", sheet.name) };
-            let hint = Hint { at: statement.value.span.end, text, value, working: working.clone() };
+            let hint = Hint { at: assessment.span(statement.value).end, text, value, working: working.clone() };
             if !hints.contains(&hint) {
                 hints.push(hint);
             }

@@ -23,17 +23,17 @@ pub struct Hover {
 /// What there is to say at an offset.
 pub fn hover(assessment: &Assessment, file: FileId, offset: u32) -> Option<Hover> {
     if let Some(named) = name_at(assessment, file, offset) {
-        return Some(Hover { span: named.place.span, text: of_sheet(assessment, named.sheet) });
+        return Some(Hover { span: assessment.span(named.place), text: of_sheet(assessment, named.sheet) });
     }
     let sheet = sheet_at(assessment, file, offset)?;
-    if let Some(hover) = of_rule(sheet, offset) {
+    if let Some(hover) = of_rule(assessment, sheet, offset) {
         return Some(hover);
     }
-    if let Some((statement, value)) = statement_at(sheet, offset) {
+    if let Some((statement, value)) = statement_at(assessment, sheet, offset) {
         return Some(if value {
-            Hover { span: statement.value.span, text: of_value(assessment, sheet, statement) }
+            Hover { span: assessment.span(statement.value), text: of_value(assessment, sheet, statement) }
         } else {
-            Hover { span: statement.label.span, text: of_label(statement.about, statement.particular) }
+            Hover { span: assessment.span(statement.label), text: of_label(statement.about, statement.particular) }
         });
     }
     // A label whose line cannot be kept, for the second of two of one kind or so.
@@ -242,7 +242,7 @@ fn figures(assessment: &Assessment, place: Place) -> Text {
 fn of_sheet(assessment: &Assessment, sheet: &Sheet) -> Text {
     let file = assessment.sources.file(sheet.file());
     let place = file.map_or_else(String::new, |file| {
-        format!("{}, line {}", file.name, file.position(sheet.heading.span.start).line)
+        format!("{}, line {}", file.name, file.position(assessment.span(sheet.heading).start).line)
     });
     let rows = sheet
         .statements
@@ -255,8 +255,8 @@ fn of_sheet(assessment: &Assessment, sheet: &Sheet) -> Text {
 }
 
 /// The rule that a deviation speaks of.
-fn of_rule(sheet: &Sheet, offset: u32) -> Option<Hover> {
-    let (link, place) = sheet.links.iter().find(|(_, place)| place.span.touches(offset))?;
+fn of_rule(assessment: &Assessment, sheet: &Sheet, offset: u32) -> Option<Hover> {
+    let (link, place) = sheet.links.iter().find(|(_, place)| assessment.span(*place).touches(offset))?;
     let LinkTarget::Rule(name) = sheet.targets.iter().find(|(word, _)| *word == link.word).map(|(_, target)| target)?
     else {
         return None;
@@ -267,7 +267,7 @@ fn of_rule(sheet: &Sheet, offset: u32) -> Option<Hover> {
         .sentence(rule.title)
         .table(vec![("compares".to_owned(), rule.formula.to_owned()), ("basis".to_owned(), rule.basis.to_owned())])
         .sentence(rule.explanation);
-    Some(Hover { span: place.span, text })
+    Some(Hover { span: assessment.span(*place), text })
 }
 
 #[cfg(test)]

@@ -18,11 +18,9 @@ pub struct FileLink {
 pub fn links(assessment: &Assessment, file: FileId) -> Vec<FileLink> {
     let Some(source) = assessment.sources.file(file) else { return Vec::new() };
     source
-        .document
-        .lines
-        .iter()
+        .lines()
         .filter_map(|line| {
-            let LineKind::Use { path, span } = &line.kind else { return None };
+            let LineKind::Use { path, span } = line.kind else { return None };
             let name = shown(&target(&source.name, path).ok()?);
             let quoted = line.place(*span);
             Some(FileLink {

@@ -7,7 +7,10 @@ pub mod diagnostics;
 pub mod folding;
 pub mod hints;
 pub mod hover;
+pub mod lens;
 pub mod links;
+pub mod rename;
+pub mod selection;
 pub mod spot;
 pub mod symbols;
 #[cfg(test)]

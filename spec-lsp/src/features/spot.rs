@@ -1,21 +1,21 @@
 //! What stands at an offset.
 
+use std::sync::Arc;
+
 use firstpole_core::particular::{Lookup, SheetKind, find};
 use firstpole_core::sheet::{Sheet, Statement};
-use firstpole_core::source::SourceFile;
+use firstpole_core::source::{LineAt, SourceFile};
 use firstpole_core::{Assessment, FileId, Place, Span};
-use firstpole_grammar::{Line, LineKind, Look};
+use firstpole_grammar::{LineKind, Look};
 
 /// The line of a file that holds an offset.
-pub fn line_at(file: &SourceFile, offset: u32) -> Option<&Line> {
-    let lines = &file.document.lines;
-    let after = lines.partition_point(|line| line.start <= offset);
-    lines.get(after.checked_sub(1)?)
+pub fn line_at(file: &SourceFile, offset: u32) -> Option<LineAt<'_>> {
+    file.lines_touching(Span::new(offset, offset)).last()
 }
 
 /// The text of a line, without its ending.
-pub fn text_of<'a>(file: &'a SourceFile, line: &Line) -> &'a str {
-    Span::new(line.start, line.start + line.len).of(&file.text)
+pub fn text_of<'a>(file: &'a SourceFile, line: LineAt<'_>) -> &'a str {
+    line.span().of(&file.text)
 }
 
 /// The sheet that an offset stands in: the last one that begins before it, the line of its heading included.
@@ -23,24 +23,21 @@ pub fn sheet_at(assessment: &Assessment, file: FileId, offset: u32) -> Option<&S
     let source = assessment.sources.file(file)?;
     let line = line_at(source, offset)?;
     let end = line.start + line.len;
-    sheets_of(assessment, file).take_while(|sheet| sheet.heading.span.start <= end).last()
+    sheets_of(assessment, file).take_while(|sheet| assessment.span(sheet.heading).start <= end).last()
 }
 
 /// The sheets of one file.
 pub fn sheets_of(assessment: &Assessment, file: FileId) -> impl Iterator<Item = &Sheet> {
-    assessment.set.sheets.iter().filter(move |sheet| sheet.file() == file)
+    assessment.set.sheets().filter(move |sheet| sheet.file() == file)
 }
 
 /// The statement whose label or value an offset touches, and whether it is the value.
-pub fn statement_at(sheet: &Sheet, offset: u32) -> Option<(&Statement, bool)> {
-    let label = |statement: &&Statement| statement.label.span.touches(offset);
-    let value = |statement: &&Statement| statement.value.span.touches(offset) && !statement.value.span.is_empty();
-    sheet
-        .statements
-        .iter()
-        .find(value)
-        .map(|statement| (statement, true))
-        .or_else(|| sheet.statements.iter().find(label).map(|statement| (statement, false)))
+pub fn statement_at<'a>(assessment: &Assessment, sheet: &'a Sheet, offset: u32) -> Option<(&'a Statement, bool)> {
+    let touches = |place: Place| assessment.span(place).touches(offset);
+    let statements = || sheet.statements.iter().map(Arc::as_ref);
+    let value = statements().find(|statement| !statement.value.is_empty() && touches(statement.value));
+    let label = || statements().find(|statement| touches(statement.label));
+    value.map(|statement| (statement, true)).or_else(|| label().map(|statement| (statement, false)))
 }
 
 /// A name of a sheet in a heading.
@@ -56,7 +53,7 @@ pub struct Named<'a> {
 
 /// Every name of a sheet in the headings of the set, file by file.
 pub fn names(assessment: &Assessment) -> impl Iterator<Item = Named<'_>> {
-    assessment.set.sheets.iter().flat_map(move |sheet| {
+    assessment.set.sheets().flat_map(move |sheet| {
         let own = (!sheet.name.is_empty()).then_some(Named { sheet, place: sheet.name_place, own: true });
         let links = sheet.links.iter().filter_map(move |(link, place)| {
             let target = sheet.target(&link.word).and_then(|id| assessment.set.sheet(id))?;
@@ -69,12 +66,15 @@ pub fn names(assessment: &Assessment) -> impl Iterator<Item = Named<'_>> {
 
 /// The name of a sheet that an offset touches.
 pub fn name_at(assessment: &Assessment, file: FileId, offset: u32) -> Option<Named<'_>> {
-    names(assessment).find(|named| named.place.file == file && named.place.span.touches(offset))
+    names(assessment).find(|named| {
+        let at = assessment.at(named.place);
+        at.file == file && at.span.touches(offset)
+    })
 }
 
 /// The label and the text of the value of a line, broken or not; places are in the text.
-pub fn label_and_value(line: &Line) -> Option<(Span, Span)> {
-    match &line.kind {
+pub fn label_and_value(line: LineAt<'_>) -> Option<(Span, Span)> {
+    match line.kind {
         LineKind::Particular(particular) if !particular.own => {
             Some((line.place(particular.label_span), line.place(particular.value.span)))
         }
@@ -114,9 +114,9 @@ mod tests {
     fn labels_and_values_are_told_apart() {
         let (assessment, at) = bay_after("DC time");
         let sheet = sheet_at(&assessment, FileId(0), at).expect("a sheet");
-        let (statement, value) = statement_at(sheet, at).expect("a statement");
+        let (statement, value) = statement_at(&assessment, sheet, at).expect("a statement");
         assert_eq!((statement.particular.label, value), ("DC time constant", false));
-        assert!(statement_at(sheet, at + 17).expect("a statement").1);
+        assert!(statement_at(&assessment, sheet, at + 17).expect("a statement").1);
     }
 
     #[test]

@@ -29,18 +29,19 @@ pub fn symbols(assessment: &Assessment, file: FileId) -> Vec<Symbol> {
                 .statements
                 .iter()
                 .map(|statement| {
-                    let label = statement.label.span;
+                    let label = assessment.span(statement.label);
                     let name = match statement.about {
                         About::Value => statement.particular.label.to_owned(),
                         About::Reason => format!("reason for {}", statement.particular.label),
                         About::Tested => format!("type-tested {}", statement.particular.label),
                     };
-                    let detail = statement.value.span.of(&source.text).to_owned();
-                    let span = Span::new(label.start, label.end.max(statement.value.span.end));
+                    let value = assessment.span(statement.value);
+                    let detail = value.of(&source.text).to_owned();
+                    let span = Span::new(label.start, label.end.max(value.end));
                     Symbol { name, detail, span, selection: label, children: Vec::new() }
                 })
                 .chain(sheet.own.iter().map(|own| {
-                    let value = own.place.span;
+                    let value = assessment.span(own.place);
                     let start = line_at(source, value.start).map_or(value.start, |line| line.start);
                     let (name, detail) = (own.label.clone(), own.text.clone());
                     Symbol { name, detail, span: Span::new(start, value.end), selection: value, children: Vec::new() }
@@ -49,12 +50,13 @@ pub fn symbols(assessment: &Assessment, file: FileId) -> Vec<Symbol> {
             children.sort_by_key(|symbol| symbol.span.start);
             // A client refuses an entry without a name.
             children.retain(|symbol| !symbol.name.trim().is_empty());
-            let links = source.text.get(sheet.name_place.span.end as usize..sheet.heading.span.end as usize);
+            let (name, heading) = (assessment.span(sheet.name_place), assessment.span(sheet.heading));
+            let links = source.text.get(name.end as usize..heading.end as usize);
             Symbol {
                 name: sheet.title(),
                 detail: links.unwrap_or("").trim().to_owned(),
-                span: Span::new(sheet.heading.span.start, sheet.end.span.end.max(sheet.heading.span.end)),
-                selection: sheet.name_place.span,
+                span: Span::new(heading.start, assessment.span(sheet.end).end.max(heading.end)),
+                selection: name,
                 children,
             }
         })

@@ -1,8 +1,9 @@
 //! Semantic tokens: what every word of a line is.
 
 use firstpole_core::particular::SheetKind;
+use firstpole_core::source::LineAt;
 use firstpole_core::{Assessment, FileId, Span};
-use firstpole_grammar::{Line, LineKind, Look, ValueForm};
+use firstpole_grammar::{LineKind, Look, ValueForm};
 
 use super::spot::{particular_of, sheet_at, text_of};
 
@@ -47,10 +48,10 @@ pub fn tokens(assessment: &Assessment, file: FileId) -> Vec<Token> {
     let Some(source) = assessment.sources.file(file) else { return Vec::new() };
     let mut tokens = Vec::new();
     let mut kind = None;
-    for line in &source.document.lines {
+    for line in source.lines() {
         let text = text_of(source, line);
         let mut row = Row { line, text, tokens: &mut tokens, at: 0 };
-        match &line.kind {
+        match line.kind {
             LineKind::Blank => {}
             LineKind::Edition { span, .. } => {
                 row.word("cbspec");
@@ -100,7 +101,7 @@ pub fn tokens(assessment: &Assessment, file: FileId) -> Vec<Token> {
 }
 
 struct Row<'a> {
-    line: &'a Line,
+    line: LineAt<'a>,
     text: &'a str,
     tokens: &'a mut Vec<Token>,
     /// The end of the last token, within the line.

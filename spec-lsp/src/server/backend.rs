@@ -12,6 +12,7 @@ use tower_lsp::jsonrpc::{Error, Request, Response, Result};
 use tower_lsp::{Client, LanguageServer, LspService, Server};
 
 use super::documents::Documents;
+use super::mouth;
 use super::names::name_of;
 use super::protocol::{self, Abilities, Edge};
 use super::publish::{self, Tell};
@@ -20,8 +21,8 @@ use super::pump::Heard;
 /// Requests that are answered at one time.
 const AT_ONCE: usize = 32;
 
-/// Publications that may wait for a client that reads slowly. What waits may be outdated, so they are few.
-const WAITING: usize = 4;
+/// Bytes of an answer that may wait between the library and the mouth.
+const PIPE: usize = 64 * 1024;
 
 /// Decodes a body the way the library does.
 pub fn hear(body: &str) -> Option<Heard> {
@@ -35,18 +36,24 @@ pub fn hear(body: &str) -> Option<Heard> {
 pub async fn run<I, O>(assessor: Assessor, input: I, output: O, mut logged: mpsc::UnboundedReceiver<String>)
 where
     I: AsyncRead + Unpin,
-    O: AsyncWrite,
+    O: AsyncWrite + Send + 'static,
 {
     let documents = Arc::new(Documents::new(assessor));
-    let (tell, mut told) = mpsc::channel(WAITING);
+    let (tell, mut told) = mpsc::channel(1);
+    let (mouth, bodies) = mpsc::channel(mouth::WAITING);
+    let (library, far) = tokio::io::duplex(PIPE);
+    let speaker = tokio::spawn(mouth::speak(Box::pin(output), bodies));
+    let handed_on = tokio::spawn(mouth::hand_on(far, mouth.clone()));
     let checker = tokio::spawn(publish::run(documents.clone(), tell));
     let (service, socket) = LspService::new(|client| {
         let teller = client.clone();
         tokio::spawn(async move {
             while let Some(tell) = told.recv().await {
                 match tell {
-                    Tell::Diagnostics { uri, version, diagnostics } => {
-                        teller.publish_diagnostics(uri, diagnostics, version).await;
+                    Tell::Findings(body) => {
+                        if mouth.send(body).await.is_err() {
+                            return;
+                        }
                     }
                     Tell::Fault(line) => teller.log_message(lsp::MessageType::ERROR, line).await,
                 }
@@ -60,8 +67,11 @@ where
         });
         Backend { client, documents, abilities: OnceLock::new() }
     });
-    Server::new(input, output, socket).concurrency_level(AT_ONCE).serve(service).await;
+    Server::new(input, library, socket).concurrency_level(AT_ONCE).serve(service).await;
     checker.abort();
+    // What the library has written is spoken to its end; a panic in between is none of the client's business.
+    let _ = handed_on.await;
+    let _ = speaker.await;
 }
 
 struct Backend {
@@ -95,7 +105,7 @@ impl Backend {
 impl LanguageServer for Backend {
     async fn initialize(&self, params: lsp::InitializeParams) -> Result<lsp::InitializeResult> {
         let abilities = *self.abilities.get_or_init(|| Abilities::of(&params.capabilities));
-        self.documents.begin(roots(&params), abilities.encoding);
+        self.documents.begin(roots(&params), abilities.encoding, abilities.takes);
         Ok(lsp::InitializeResult {
             capabilities: protocol::capabilities(abilities),
             server_info: Some(lsp::ServerInfo {

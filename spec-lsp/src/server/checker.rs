@@ -70,7 +70,15 @@ impl Loader for Shared {
 
 /// Assesses the document `name` of a snapshot. A panic comes back as an error with what it said; absent where the document is not
 /// in the snapshot.
-pub fn assess(assessor: &Assessor, policy: Policy, snapshot: Snapshot, name: &str) -> Option<Result<Checked, String>> {
+///
+/// What still holds of the assessment `before` is taken over.
+pub fn assess(
+    assessor: &Assessor,
+    policy: Policy,
+    snapshot: Snapshot,
+    name: &str,
+    before: Option<&Checked>,
+) -> Option<Result<Checked, String>> {
     let own = snapshot.open.get(name)?.clone();
     let roots = if snapshot.roots.is_empty() {
         // Without a workspace a document may use what lies beside it and below.
@@ -80,7 +88,10 @@ pub fn assess(assessor: &Assessor, policy: Policy, snapshot: Snapshot, name: &st
     };
     let loader = Arc::new(OpenFirst { snapshot, folder: FolderLoader::below(roots), sought: Mutex::default() });
     let assessor = assessor.clone().with_policy(policy).with_loader(Shared(loader.clone()));
-    let outcome = catch_unwind(AssertUnwindSafe(|| assessor.assess(&Sources::of(name, own.text.clone()))));
+    let outcome = catch_unwind(AssertUnwindSafe(|| match before {
+        Some(before) => assessor.assess_again(&before.assessment, [(name.to_owned(), own.text.clone())]),
+        None => assessor.assess(&Sources::of(name, own.text.clone())),
+    }));
     let assessment = match outcome {
         Ok(assessment) => assessment,
         Err(panic) => {
@@ -151,8 +162,9 @@ impl Documents {
 
     fn check(&self, name: &str, snapshot: Snapshot) -> Option<Outcome> {
         let stamp = snapshot.open.get(name)?.stamp;
+        let before = self.lock().document(name).and_then(|open| open.checked.clone());
         let policy = Policy { today: crate::today(), ..Policy::default() };
-        let result = assess(&self.assessor, policy, snapshot, name)?.map(Arc::new);
+        let result = assess(&self.assessor, policy, snapshot, name, before.as_deref())?.map(Arc::new);
         let mut state = self.lock();
         if let Some(open) = state.document_mut(name) {
             match &result {

@@ -10,6 +10,7 @@ use firstpole_core::{Assessor, Span};
 use tokio::sync::Notify;
 
 use super::checker::Checked;
+use super::findings::Takes;
 use super::names::{name_of, uri_of};
 use super::positions::{Encoding, Lines, Position, View};
 
@@ -43,6 +44,8 @@ pub struct State {
     roots: Vec<PathBuf>,
     /// What columns count.
     pub encoding: Encoding,
+    /// What the client takes of a finding.
+    pub takes: Takes,
 }
 
 /// An open document.
@@ -79,6 +82,8 @@ pub struct Snapshot {
     pub roots: Vec<PathBuf>,
     /// What columns count.
     pub encoding: Encoding,
+    /// What the client takes of a finding.
+    pub takes: Takes,
 }
 
 /// A document of a snapshot.
@@ -126,7 +131,8 @@ impl State {
                 (name.clone(), known)
             })
             .collect();
-        Snapshot { open, moment: self.clock, disk: self.disk, roots: self.roots.clone(), encoding: self.encoding }
+        let roots = self.roots.clone();
+        Snapshot { open, moment: self.clock, disk: self.disk, roots, encoding: self.encoding, takes: self.takes }
     }
 
     /// Whether an assessment still says what the texts say.
@@ -178,10 +184,11 @@ impl Documents {
     }
 
     /// Takes what the client told at the start.
-    pub fn begin(&self, roots: Vec<PathBuf>, encoding: Encoding) {
+    pub fn begin(&self, roots: Vec<PathBuf>, encoding: Encoding, takes: Takes) {
         let mut state = self.lock();
         state.roots = roots;
         state.encoding = encoding;
+        state.takes = takes;
     }
 
     /// Takes a document in.

@@ -13,6 +13,8 @@
 mod backend;
 mod checker;
 mod documents;
+mod findings;
+mod mouth;
 mod names;
 mod positions;
 mod protocol;

@@ -3,24 +3,21 @@
 use std::collections::HashMap;
 
 use firstpole_core::particular::SheetKind;
-use firstpole_core::{Edit, FileId, Place, Span};
+use firstpole_core::{FileId, FilePlace, Place, Span};
 use lsp_types as lsp;
 use serde_json::{Value, json};
 
 use super::checker::{Checked, OWN};
 use super::documents::Change;
+use super::findings::{self, Takes};
 use super::positions::{Encoding, Position, View};
 use crate::features::actions::Action;
 use crate::features::completion::{Proposal, ProposalKind, Subject};
-use crate::features::diagnostics::{self, Severity};
 use crate::features::hover::Hover;
 use crate::features::symbols::Symbol;
 use crate::features::text::Text;
 use crate::features::tokens::{Token, TokenKind};
 use crate::features::{actions, completion, definition, folding, hints, hover, links, symbols, tokens};
-
-/// Who says it, beside every finding.
-pub const SOURCE: &str = "firstpole";
 
 /// What the client told that it can do.
 #[derive(Clone, Copy, Debug, Default)]
@@ -29,6 +26,8 @@ pub struct Abilities {
     pub encoding: Encoding,
     /// Whether it fills in snippets.
     pub snippets: bool,
+    /// What it takes of a finding.
+    pub takes: Takes,
     /// Whether a hover may be Markdown.
     pub hover_markdown: bool,
     /// Whether the documentation of a proposal may be Markdown.
@@ -54,6 +53,7 @@ impl Abilities {
             text.and_then(|text| text.completion.as_ref()).and_then(|completion| completion.completion_item.as_ref());
         Self {
             encoding: if utf8 { Encoding::Utf8 } else { Encoding::Utf16 },
+            takes: takes(text),
             snippets: item.and_then(|item| item.snippet_support).unwrap_or(false),
             completion_markdown: markdown(item.and_then(|item| item.documentation_format.as_ref())),
             hover_markdown: markdown(
@@ -73,6 +73,15 @@ impl Abilities {
                 .and_then(|watched| watched.dynamic_registration)
                 .unwrap_or(false),
         }
+    }
+}
+
+fn takes(text: Option<&lsp::TextDocumentClientCapabilities>) -> Takes {
+    let Some(findings) = text.and_then(|text| text.publish_diagnostics.as_ref()) else { return Takes::default() };
+    Takes {
+        related: findings.related_information.unwrap_or(false),
+        marks: findings.tag_support.is_some(),
+        data: findings.data_support.unwrap_or(false),
     }
 }
 
@@ -180,20 +189,6 @@ fn to(position: Position) -> lsp::Position {
     lsp::Position::new(position.line, position.column)
 }
 
-/// A diagnostic for every finding, by the names of the files; the document itself is among them even where nothing was found.
-pub fn diagnostics(checked: &Checked) -> Vec<(String, Vec<lsp::Diagnostic>)> {
-    let edge = Edge { checked, abilities: Abilities::default() };
-    let mut all = Vec::new();
-    for (file, source) in checked.assessment.sources.files() {
-        let found: Vec<_> =
-            diagnostics::diagnostics(&checked.assessment, file).iter().filter_map(|d| edge.diagnostic(d)).collect();
-        if file == OWN || !found.is_empty() {
-            all.push((source.name.clone(), found));
-        }
-    }
-    all
-}
-
 /// An assessment with the client that asks about it.
 pub struct Edge<'a> {
     /// The assessment; its first file is the document that is asked about.
@@ -209,12 +204,20 @@ impl Edge<'_> {
     }
 
     fn range(&self, place: Place) -> Option<lsp::Range> {
+        self.range_at(self.checked.assessment.at(place))
+    }
+
+    fn range_at(&self, place: FilePlace) -> Option<lsp::Range> {
         let (start, end) = self.view(place.file)?.range(place.span, self.checked.snapshot.encoding);
         Some(lsp::Range::new(to(start), to(end)))
     }
 
     fn own(&self, span: Span) -> Option<lsp::Range> {
-        self.range(Place::new(OWN, span))
+        self.range_at(FilePlace { file: OWN, span })
+    }
+
+    fn url_of(&self, place: Place) -> Option<lsp::Url> {
+        self.url(self.checked.assessment.at(place).file)
     }
 
     fn offset(&self, position: lsp::Position) -> Option<u32> {
@@ -232,40 +235,7 @@ impl Edge<'_> {
     }
 
     fn location(&self, place: Place) -> Option<lsp::Location> {
-        Some(lsp::Location::new(self.url(place.file)?, self.range(place)?))
-    }
-
-    fn diagnostic(&self, diagnostic: &diagnostics::Diagnostic<'_>) -> Option<lsp::Diagnostic> {
-        let related: Vec<_> = diagnostic
-            .related
-            .iter()
-            .filter_map(|related| {
-                let location = self.location(related.place)?;
-                Some(lsp::DiagnosticRelatedInformation { location, message: related.message.clone() })
-            })
-            .collect();
-        let edits: Vec<Value> = diagnostic.edits.iter().filter_map(|edit| self.edit_data(edit)).collect();
-        Some(lsp::Diagnostic {
-            range: self.range(diagnostic.place)?,
-            severity: Some(match diagnostic.severity {
-                Severity::Error => lsp::DiagnosticSeverity::ERROR,
-                Severity::Warning => lsp::DiagnosticSeverity::WARNING,
-                Severity::Information => lsp::DiagnosticSeverity::INFORMATION,
-                Severity::Hint => lsp::DiagnosticSeverity::HINT,
-            }),
-            code: Some(lsp::NumberOrString::String(diagnostic.rule.to_owned())),
-            code_description: None,
-            source: Some(SOURCE.to_owned()),
-            message: diagnostic.message.clone(),
-            related_information: (!related.is_empty()).then_some(related),
-            tags: diagnostic.idle.then(|| vec![lsp::DiagnosticTag::UNNECESSARY]),
-            data: (!edits.is_empty()).then(|| json!({ "edits": edits })),
-        })
-    }
-
-    fn edit_data(&self, edit: &Edit) -> Option<Value> {
-        let (uri, range) = (self.url(edit.place.file)?, self.range(edit.place)?);
-        Some(json!({ "title": edit.title, "uri": uri, "range": range, "newText": edit.text }))
+        Some(lsp::Location::new(self.url_of(place)?, self.range(place)?))
     }
 
     /// Answers a hover.
@@ -333,12 +303,7 @@ impl Edge<'_> {
 
     fn action(&self, action: Action<'_>) -> Option<lsp::CodeAction> {
         let edit = lsp::TextEdit { range: self.range(action.edit.place)?, new_text: action.edit.text };
-        let finding = action.finding.and_then(|wanted| {
-            let place = wanted.place;
-            let all = diagnostics::diagnostics(&self.checked.assessment, place.file);
-            let found = all.iter().find(|d| d.place == place && d.rule == wanted.rule)?;
-            self.diagnostic(found)
-        });
+        let finding = action.finding.and_then(|finding| findings::told_of(self.checked, finding)?.typed());
         let kind =
             if finding.is_some() { lsp::CodeActionKind::QUICKFIX } else { lsp::CodeActionKind::REFACTOR_REWRITE };
         Some(lsp::CodeAction {
@@ -346,7 +311,7 @@ impl Edge<'_> {
             kind: Some(kind),
             diagnostics: finding.map(|finding| vec![finding]),
             edit: Some(lsp::WorkspaceEdit {
-                changes: Some(HashMap::from([(self.url(action.edit.place.file)?, vec![edit])])),
+                changes: Some(HashMap::from([(self.url_of(action.edit.place)?, vec![edit])])),
                 ..lsp::WorkspaceEdit::default()
             }),
             is_preferred: action.preferred.then_some(true),
@@ -366,7 +331,8 @@ impl Edge<'_> {
         for symbol in symbols {
             let children = symbol.children.iter().map(|child| (child, lsp::SymbolKind::PROPERTY, Some(&symbol.name)));
             for (symbol, kind, container) in [(&symbol, lsp::SymbolKind::CLASS, None)].into_iter().chain(children) {
-                let Some(location) = self.location(Place::new(OWN, symbol.span)) else { continue };
+                let (Some(uri), Some(range)) = (self.url(OWN), self.own(symbol.span)) else { continue };
+                let location = lsp::Location::new(uri, range);
                 #[allow(deprecated, reason = "the type has no other way to be made")]
                 flat.push(lsp::SymbolInformation {
                     name: symbol.name.clone(),

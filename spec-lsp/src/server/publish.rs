@@ -3,29 +3,18 @@
 use std::collections::{BTreeMap, BTreeSet};
 use std::sync::Arc;
 
-use lsp_types::{Diagnostic, DiagnosticSeverity, Range, Url};
 use tokio::sync::mpsc;
 
 use super::checker::{Checked, Outcome};
 use super::documents::{Documents, State};
+use super::findings::{self, Told};
 use super::names::uri_of;
-use super::protocol::{self, SOURCE};
-
-/// The most findings that are published for one file.
-pub const MOST_DIAGNOSTICS: usize = 1000;
 
 /// Something that the client is told unasked.
 #[derive(Debug)]
 pub enum Tell {
-    /// The findings of a file.
-    Diagnostics {
-        /// The file.
-        uri: Url,
-        /// The version of its text; absent where it is not open.
-        version: Option<i32>,
-        /// The findings.
-        diagnostics: Vec<Diagnostic>,
-    },
+    /// The findings of a file, as a body of the wire.
+    Findings(Vec<u8>),
     /// A line for the log.
     Fault(String),
 }
@@ -38,7 +27,7 @@ pub async fn run(documents: Arc<Documents>, out: mpsc::Sender<Tell>) {
         let round = tokio::task::spawn_blocking(move || {
             let outcome = working.check_next();
             let untold = working.untold();
-            let found = untold.into_iter().map(|checked| (protocol::diagnostics(&checked), checked));
+            let found = untold.into_iter().map(|checked| (findings::told(&checked), checked));
             (outcome, found.collect::<Vec<_>>())
         });
         let Ok((outcome, untold)) = round.await else { continue };
@@ -73,16 +62,18 @@ struct Shown {
 struct Share {
     /// The number of the file's text; absent where it is not open.
     stamp: Option<u64>,
-    diagnostics: Vec<Diagnostic>,
+    found: Vec<Told>,
+    /// Whether the checker failed on it.
+    fault: bool,
 }
 
 impl Shown {
     /// Takes an assessment in, and tells the files that it concerns.
-    fn take(&mut self, state: &State, checked: &Checked, found: Vec<(String, Vec<Diagnostic>)>) -> Vec<Tell> {
+    fn take(&mut self, state: &State, checked: &Checked, found: Vec<(String, Vec<Told>)>) -> Vec<Tell> {
         let mut shares = BTreeMap::new();
-        for (name, diagnostics) in found {
+        for (name, found) in found {
             let stamp = checked.read.iter().find(|read| read.name == name).and_then(|read| read.stamp);
-            shares.insert(name, Share { stamp, diagnostics });
+            shares.insert(name, Share { stamp, found, fault: false });
         }
         self.replace(state, &checked.name, shares)
     }
@@ -90,19 +81,10 @@ impl Shown {
     /// Says of a document that the checker failed on it; what was found last stays.
     fn fault(&mut self, state: &State, name: &str, stamp: u64) -> Vec<Tell> {
         let mut shares = self.by_document.remove(name).unwrap_or_default();
-        let share = shares.entry(name.to_owned()).or_insert_with(|| Share { stamp: None, diagnostics: Vec::new() });
+        let share =
+            shares.entry(name.to_owned()).or_insert_with(|| Share { stamp: None, found: Vec::new(), fault: true });
         share.stamp = Some(stamp);
-        share.diagnostics.retain(|diagnostic| diagnostic.code.is_some());
-        share.diagnostics.insert(
-            0,
-            Diagnostic {
-                range: Range::default(),
-                severity: Some(DiagnosticSeverity::ERROR),
-                source: Some(SOURCE.to_owned()),
-                message: "internal fault: this text could not be assessed; please report it with the text".to_owned(),
-                ..Diagnostic::default()
-            },
-        );
+        share.fault = true;
         self.replace(state, name, shares)
     }
 
@@ -135,26 +117,32 @@ impl Shown {
         let stamp = open.map(|open| open.stamp);
         let others =
             self.by_document.iter().filter(|(name, _)| *name != file).filter_map(|(_, shares)| shares.get(file));
-        let mut diagnostics: Vec<Diagnostic> = Vec::new();
-        for share in own.into_iter().chain(others).filter(|share| share.stamp == stamp) {
-            let new = share.diagnostics.iter().filter(|new| !diagnostics.contains(new)).cloned().collect::<Vec<_>>();
-            diagnostics.extend(new);
+        let mut shares = own.into_iter().chain(others).filter(|share| share.stamp == stamp);
+        let mut all: Vec<&Told> = Vec::new();
+        let mut fault = false;
+        if let Some(first) = shares.next() {
+            all.extend(&first.found);
+            fault = first.fault;
+        }
+        for share in shares {
+            let new: Vec<&Told> = share.found.iter().filter(|new| !all.contains(new)).collect();
+            all.extend(new);
+            fault |= share.fault;
         }
         let uri = open.map_or_else(|| uri_of(file), |open| open.uri.clone());
         let version = open.map(|open| open.version);
-        Some(Tell::Diagnostics { uri: Url::parse(&uri).ok()?, version, diagnostics: capped(diagnostics) })
+        Some(Tell::Findings(findings::notification(&uri, version, fault, &capped(all))))
     }
 }
 
 /// The gravest ones, in the order of the text.
-fn capped(mut diagnostics: Vec<Diagnostic>) -> Vec<Diagnostic> {
-    let grave = |diagnostic: &Diagnostic| diagnostic.severity.unwrap_or(DiagnosticSeverity::HINT);
-    if diagnostics.len() > MOST_DIAGNOSTICS {
-        diagnostics.sort_by_key(grave);
-        diagnostics.truncate(MOST_DIAGNOSTICS);
+fn capped(mut all: Vec<&Told>) -> Vec<&Told> {
+    if all.len() > findings::MOST {
+        all.sort_by_key(|told| told.severity());
+        all.truncate(findings::MOST);
     }
-    diagnostics.sort_by_key(|diagnostic| (diagnostic.range.start, diagnostic.range.end, grave(diagnostic)));
-    diagnostics
+    all.sort_by_key(|told| (told.range.start, told.range.end, told.severity()));
+    all
 }
 
 #[cfg(test)]
@@ -169,8 +157,11 @@ mod tests {
         tells
             .iter()
             .filter_map(|tell| match tell {
-                Tell::Diagnostics { uri, version, diagnostics } => {
-                    Some((uri.path().to_owned(), *version, diagnostics.len()))
+                Tell::Findings(body) => {
+                    let body: serde_json::Value = serde_json::from_slice(body).expect("json");
+                    let params: lsp_types::PublishDiagnosticsParams =
+                        serde_json::from_value(body["params"].clone()).expect("typed");
+                    Some((params.uri.path().to_owned(), params.version, params.diagnostics.len()))
                 }
                 Tell::Fault(_) => None,
             })
@@ -181,7 +172,7 @@ mod tests {
         let mut tells = shown.drop_closed(&documents.lock());
         while documents.check_next().is_some() {}
         for checked in documents.untold() {
-            tells.extend(shown.take(&documents.lock(), &checked, protocol::diagnostics(&checked)));
+            tells.extend(shown.take(&documents.lock(), &checked, findings::told(&checked)));
         }
         tells
     }
@@ -195,7 +186,7 @@ mod tests {
         documents.change(URI, 2, Vec::new()).expect("newer");
         let mut shown = Shown::default();
         let old = untold.first().expect("one");
-        assert!(told(&shown.take(&documents.lock(), old, protocol::diagnostics(old))).is_empty());
+        assert!(told(&shown.take(&documents.lock(), old, findings::told(old))).is_empty());
         assert_eq!(told(&round(&documents, &mut shown)), [("/nowhere/bay.cbspec".to_owned(), Some(2), 2)]);
         assert!(round(&documents, &mut shown).is_empty(), "told once");
     }
@@ -213,15 +204,14 @@ mod tests {
 
     #[test]
     fn the_gravest_are_kept() {
-        let of = |severity, line| Diagnostic {
-            severity: Some(severity),
-            range: Range::new(lsp_types::Position::new(line, 0), lsp_types::Position::new(line, 1)),
-            ..Diagnostic::default()
-        };
-        let mut all: Vec<_> = (0..2000).map(|line| of(DiagnosticSeverity::WARNING, line)).collect();
-        all.push(of(DiagnosticSeverity::ERROR, 5000));
-        let capped = capped(all);
-        assert_eq!(capped.len(), MOST_DIAGNOSTICS);
-        assert_eq!(capped.last().expect("one").severity, Some(DiagnosticSeverity::ERROR));
+        let documents = Documents::new(Assessor::standard());
+        let sites = (0..1500).map(|at| format!("site S{at}\n    altitude:\n"));
+        let text = "cbspec 1\n".to_owned() + &sites.collect::<String>() + "rubbish\n";
+        documents.open(URI, 1, text);
+        let tells = round(&documents, &mut Shown::default());
+        let [Tell::Findings(body)] = tells.as_slice() else { panic!("{}", tells.len()) };
+        let body = String::from_utf8(body.clone()).expect("UTF-8");
+        assert_eq!(told(&tells), [("/nowhere/bay.cbspec".to_owned(), Some(1), findings::MOST)]);
+        assert!(body.contains("unreadable-line"), "the last line is the gravest");
     }
 }

@@ -25,7 +25,7 @@ where
     I: AsyncRead + Unpin,
     S: AsyncWrite + Unpin,
 {
-    let mut frames = Frames { input, buffer: Vec::new(), at: 0, ended: false };
+    let mut frames = Frames::of(input);
     let (mut begun, mut shut_down) = (false, false);
     while let Some(frame) = frames.next().await {
         let body = match frame {
@@ -100,7 +100,7 @@ fn escaped_unit(body: &[u8], at: usize) -> Option<u32> {
 }
 
 /// Cuts the input into frames.
-struct Frames<I> {
+pub struct Frames<I> {
     input: I,
     buffer: Vec<u8>,
     /// Bytes of the buffer that are done with.
@@ -109,8 +109,13 @@ struct Frames<I> {
 }
 
 impl<I: AsyncRead + Unpin> Frames<I> {
+    /// The frames of an input.
+    pub const fn of(input: I) -> Self {
+        Self { input, buffer: Vec::new(), at: 0, ended: false }
+    }
+
     /// The body of the next frame, or a sentence on why there is none; nothing at the end of the input.
-    async fn next(&mut self) -> Option<Result<Vec<u8>, String>> {
+    pub async fn next(&mut self) -> Option<Result<Vec<u8>, String>> {
         let mut length = None;
         loop {
             let line = match self.line().await? {

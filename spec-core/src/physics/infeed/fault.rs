@@ -22,7 +22,7 @@ pub enum PeakMethod {
 }
 
 /// Equivalent frequency of method C over that of the network: 20/50 and 24/60. IEC 60909-0, method C.
-const EQUIVALENT_SHARE: f64 = 0.4;
+pub const EQUIVALENT_SHARE: f64 = 0.4;
 
 /// Safety factor of method B. IEC 60909-0, method B.
 const METHOD_B: f64 = 1.15;
@@ -114,7 +114,7 @@ impl<'a> Fault<'a> {
         match method {
             PeakMethod::LeastRatio => network.ratios(peak).map(|(least, _)| peak_factor(least)),
             PeakMethod::RatioAtPoint => {
-                let kappa = peak_factor(network.seen(peak)?.r_over_x());
+                let kappa = self.factor_of_heat(method)?;
                 let needs =
                     !network.is_one_branch() && network.ratios(peak).is_some_and(|(_, most)| most >= METHOD_B_RATIO);
                 let cap = if self.nominal.si() <= 1e3 { METHOD_B_CAPS.0 } else { METHOD_B_CAPS.1 };
@@ -124,6 +124,18 @@ impl<'a> Fault<'a> {
                 let z = network.seen(View { peak: true, share: EQUIVALENT_SHARE })?;
                 Some(peak_factor(z.r_over_x() * EQUIVALENT_SHARE))
             }
+        }
+    }
+
+    /// kappa of the R/X that a method takes, without the safety factor of method B: that belongs to the peak, not to the heat of the
+    /// DC component.
+    fn factor_of_heat(&self, method: PeakMethod) -> Option<f64> {
+        match method {
+            PeakMethod::RatioAtPoint => {
+                let seen = self.infeed.network.seen(View { peak: true, share: 1.0 })?;
+                Some(peak_factor(seen.r_over_x()))
+            }
+            PeakMethod::LeastRatio | PeakMethod::EquivalentFrequency => self.peak_factor(method),
         }
     }
 
@@ -166,9 +178,9 @@ impl<'a> Fault<'a> {
     }
 
     /// Thermal equivalent current Ith = Ik'' sqrt(m + n) over `duration`, with n of [`steady_heat`] or 1 far from generators.
-    /// A, rms; none without voltage sources. IEC 60909-0, equations for Ith and m.
+    /// A, rms; none without voltage sources. IEC 60909-0, equations for Ith and m. The safety factor of method B stays out of m.
     pub fn thermal(&self, method: PeakMethod, duration: Time, n: f64) -> Option<ElectricCurrent> {
-        let m = dc_heat(self.peak_factor(method)?, self.frequency, duration);
+        let m = dc_heat(self.factor_of_heat(method)?, self.frequency, duration);
         Some(self.three_phase() * (m + n).sqrt())
     }
 }
@@ -271,6 +283,21 @@ mod tests {
         assert!(at(&two, 20.0, PeakMethod::EquivalentFrequency) > at_point);
         let alike = one.times(3);
         assert!((at(&alike, 20.0, PeakMethod::RatioAtPoint) - peak_factor(0.5)).abs() < 1e-12);
+    }
+
+    /// The safety factor of method B raises the peak and leaves the heat as it is: R/X at the point decides m. Own calculation.
+    #[test]
+    fn the_safety_factor_of_the_peak_is_none_of_the_heat() {
+        let two = Infeed::of_impedance(z(1.0, 2.0), ZeroSequence::Open)
+            .parallel(&Infeed::of_impedance(z(0.1, 2.0), ZeroSequence::Open));
+        let fault = fault(&two, 20.0);
+        let at_point = peak_factor(two.positive().expect("Z1").r_over_x());
+        assert!(fault.peak_factor(PeakMethod::RatioAtPoint).expect("kappa") > at_point * 1.1);
+        let second = Time::from_si(1.0);
+        let m = dc_heat(at_point, Frequency::from_si(FIFTY), second);
+        let thermal = fault.thermal(PeakMethod::RatioAtPoint, second, 1.0).expect("Ith");
+        assert!((thermal / fault.three_phase()).value.powi(2) - (m + 1.0) < 1e-12);
+        assert!((thermal / fault.three_phase()).value.powi(2) - (m + 1.0) > -1e-12);
     }
 
     /// Own calculation: R/X 0.07 at 50 Hz is 45.5 ms; without an instant the DC component of one branch is the same.

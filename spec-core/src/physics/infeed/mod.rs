@@ -12,7 +12,7 @@ mod network;
 mod transformer;
 
 pub use decay::{asynchronous_decay_factor, synchronous_decay_factor};
-pub use fault::{Fault, PeakMethod, steady_heat};
+pub use fault::{EQUIVALENT_SHARE, Fault, PeakMethod, steady_heat};
 pub use impedance::{Impedance, ZeroSequence};
 pub use machine::{
     AsynchronousMotors, PowerStationUnit, SynchronousGenerator, TapChanger, generator_correction,
@@ -174,6 +174,21 @@ impl Infeed {
         self.network.seen(View::INITIAL)
     }
 
+    /// Z1 at the point with the reactances that it has at a share of the frequency.
+    pub fn positive_at(&self, share: f64) -> Option<Impedance> {
+        self.network.seen(View { peak: false, share })
+    }
+
+    /// Whether one chain of elements feeds the point, so that R/X is the same at any frequency.
+    pub fn is_one_branch(&self) -> bool {
+        self.network.is_one_branch()
+    }
+
+    /// Whether machines whose current decays are among the sources.
+    pub fn has_machines(&self) -> bool {
+        !self.machines.is_empty()
+    }
+
     /// Z1 at the point as the peak current has it: with the fictitious resistance of generators, at a share of the frequency.
     pub fn positive_for_peak(&self, share: f64) -> Option<Impedance> {
         self.network.seen(View { peak: true, share })
@@ -216,6 +231,27 @@ impl Infeed {
             ZeroAcross::ToEarth(own) => own,
         };
         Self { network, zero, converter: self.converter * (passes / element.ratio), machines: machines.collect() }
+    }
+
+    /// As seen from the far side of several elements side by side, all fed by this. Their ratios should be one; where they differ, no
+    /// current that circulates between them is counted, and the least is taken, which gives the greatest fault current. None without
+    /// elements.
+    pub fn through_all(&self, elements: &[Element]) -> Option<Self> {
+        let positive = elements.iter().map(|element| element.positive).reduce(Impedance::parallel)?;
+        let ratio = elements.iter().map(|element| element.ratio).reduce(f64::min)?;
+        let beside = |zero: ZeroSequence, next: ZeroSequence| zero.parallel(next);
+        let along = elements.iter().map(|element| match element.zero {
+            ZeroAcross::Along(own) => own,
+            ZeroAcross::ToEarth(_) => ZeroSequence::Open,
+        });
+        let to_earth = elements.iter().map(|element| match element.zero {
+            ZeroAcross::ToEarth(own) => own,
+            ZeroAcross::Along(_) => ZeroSequence::Open,
+        });
+        let along = along.fold(ZeroSequence::Open, beside);
+        let source = self.zero.scaled(ratio * ratio).series(along);
+        let zero = to_earth.fold(source, beside);
+        Some(self.through(&Element { positive, zero: ZeroAcross::ToEarth(zero), ratio }))
     }
 
     /// Beside another at the same point.
@@ -303,6 +339,22 @@ mod tests {
         assert_eq!(below.positive(), Some(z(0.0, 0.75)));
         assert_eq!(below.zero(), path(0.0, 0.5));
         assert_eq!(one.times(2).positive(), Some(z(0.0, 1.0)));
+    }
+
+    /// Own calculation: 1 ohm behind two of 2 ohm side by side is 2 ohm, and not the 1.5 ohm of the source counted twice; the zero
+    /// sequence passes one and ends in the other.
+    #[test]
+    fn elements_side_by_side_share_their_source() {
+        let source = Infeed::of_impedance(z(0.0, 1.0), path(0.0, 1.0));
+        let passes = Element { positive: z(0.0, 2.0), zero: ZeroAcross::Along(path(0.0, 2.0)), ratio: 1.0 };
+        let ends = Element { positive: z(0.0, 2.0), zero: ZeroAcross::ToEarth(path(0.0, 3.0)), ratio: 1.0 };
+        let both = source.through_all(&[passes, passes]).expect("elements");
+        assert_eq!((both.positive(), both.zero()), (Some(z(0.0, 2.0)), path(0.0, 2.0)));
+        let mixed = source.through_all(&[passes, ends]).expect("elements");
+        assert_eq!((mixed.positive(), mixed.zero()), (Some(z(0.0, 2.0)), path(0.0, 1.5)));
+        let one = source.through_all(&[ends]).expect("an element");
+        assert_eq!((one.positive(), one.zero()), (Some(z(0.0, 3.0)), path(0.0, 3.0)));
+        assert_eq!(source.through_all(&[]), None);
     }
 
     /// Own calculation: 100 A of a converter beside 1 ohm, through 1 ohm, leave 50 A; the fault current is the sum of magnitudes.

@@ -5,30 +5,30 @@ use super::{
     mentions_any,
 };
 use crate::case::Case;
+use crate::duty::{Infeeds, Off};
 use crate::finding::{Datum, Finding, FindingKind, Findings};
 use crate::particular::{Particular, SheetKind, breaker, circuit, system};
+use crate::physics::infeed::ZeroSequence;
 use crate::physics::short_circuit;
-use crate::quantity::{ElectricCurrent, ElectricPotential, Physical, Power, Ratio, significant};
-use crate::sheet::{Facts, Set, Sheet, Stated};
+use crate::quantity::{ElectricCurrent, ElectricPotential, Frequency, Physical, Power, Ratio, significant};
+use crate::sheet::{Facts, Reading, Set, Sheet, Stated};
 
 /// A system with what it states and the breakers that stand on it.
 struct Network<'a> {
     sheet: &'a Sheet,
     facts: &'a Facts,
     breakers: Vec<Apparatus<'a>>,
-    /// Whether infeeds are described, from which its currents follow.
-    has_infeeds: bool,
+    set: &'a Set,
 }
 
-fn networks(set: &Set) -> Vec<Network<'_>> {
-    set.of_kind(SheetKind::System)
-        .map(|sheet| Network {
-            sheet,
-            facts: set.facts(sheet.id),
-            breakers: breakers_of(set, "on", sheet.id),
-            has_infeeds: set.pointing_at(sheet.id, "into").next().is_some(),
-        })
-        .collect()
+/// The network of a sheet, where it is a system.
+fn network_of<'a>(set: &'a Set, sheet: &'a Sheet) -> Option<Network<'a>> {
+    (sheet.kind == SheetKind::System).then(|| Network {
+        sheet,
+        facts: set.facts(sheet.id),
+        breakers: breakers_of(set, "on", sheet.id),
+        set,
+    })
 }
 
 impl Network<'_> {
@@ -38,6 +38,18 @@ impl Network<'_> {
         let rated =
             || self.breakers.iter().find_map(|b| b.facts.quantity(&breaker::RATED_VOLTAGE)).map(|stated| stated.value);
         own(&system::HIGHEST_VOLTAGE).or_else(rated).or_else(|| own(&system::NOMINAL_VOLTAGE))
+    }
+
+    /// Its infeeds.
+    fn infeeds(&self) -> Infeeds {
+        let rated = || self.breakers.iter().find_map(|b| b.facts.quantity::<Frequency>(&breaker::RATED_FREQUENCY));
+        let frequency = self.facts.quantity(&system::FREQUENCY).or_else(rated).map(|stated| stated.value);
+        Infeeds::of(self.set, self.sheet.id, frequency)
+    }
+
+    /// Whether its currents follow from infeeds, or would if they said enough; of that another rule speaks.
+    fn has_infeeds(&self) -> bool {
+        self.set.pointing_at(self.sheet.id, "into").next().is_some() && self.infeeds().feeds()
     }
 
     /// Whether the three-phase level is stated, in amperes or as power.
@@ -69,10 +81,10 @@ pub static DUTY_MISSING: Rule = Rule {
                   making, DC component, thermal and TRV checks are off. Silent where infeeds are described, where each breaker's \
                   own share is stated, and where a link is what is missing. Add a system with its voltage, frequency, neutral and \
                   short-circuit current.",
-    check: Check::Set(duty),
+    check: Check::Both(no_system, duty),
 };
 
-fn duty(set: &Set, _: &Policy, findings: &mut Findings) {
+fn no_system(set: &Set, _: &Policy, findings: &mut Findings) {
     for breakers in breakers_without(set, "on", SheetKind::System) {
         let Some(first) = breakers.first() else { continue };
         let message = format!(
@@ -85,35 +97,37 @@ fn duty(set: &Set, _: &Policy, findings: &mut Findings) {
         );
         whose(finding, first);
     }
-    for network in networks(set) {
-        let documented = |b: &Apparatus<'_>| b.facts.mentions(&breaker::SHORT_CIRCUIT_CURRENT_THROUGH_THE_BREAKER);
-        if network.breakers.is_empty()
-            || network.has_level()
-            || network.has_infeeds
-            || network.breakers.iter().all(documented)
-        {
-            continue;
-        }
-        let other = [&system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT, &system::TWO_PHASE_TO_EARTH_SHORT_CIRCUIT_CURRENT]
-            .into_iter()
-            .find_map(|particular| network.facts.statement(particular));
-        let title = network.sheet.title();
-        let message = if other.is_some() {
-            format!(
-                "{title} states no three-phase short-circuit current: breaking, making and thermal checks see the other fault only"
-            )
-        } else {
-            format!(
-                "{title} states no short-circuit current: breaking, making, DC component, thermal and TRV checks are off"
-            )
-        };
-        let finding = findings.add(&DUTY_MISSING, network.sheet.heading, message);
-        finding
-            .label("no short-circuit current")
-            .advice("add short-circuit current: ... kA, with its study year and X/R or DC time constant");
-        if let Some(other) = other {
-            finding.beside(other, "the only fault current that is stated");
-        }
+}
+
+fn duty(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    let Some(network) = network_of(set, sheet) else { return };
+    let documented = |b: &Apparatus<'_>| b.facts.mentions(&breaker::SHORT_CIRCUIT_CURRENT_THROUGH_THE_BREAKER);
+    if network.breakers.is_empty()
+        || network.has_level()
+        || network.has_infeeds()
+        || network.breakers.iter().all(documented)
+    {
+        return;
+    }
+    let other = [&system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT, &system::TWO_PHASE_TO_EARTH_SHORT_CIRCUIT_CURRENT]
+        .into_iter()
+        .find_map(|particular| network.facts.statement(particular));
+    let title = network.sheet.title();
+    let message = if other.is_some() {
+        format!(
+            "{title} states no three-phase short-circuit current: breaking, making and thermal checks see the other fault only"
+        )
+    } else {
+        format!(
+            "{title} states no short-circuit current: breaking, making, DC component, thermal and TRV checks are off"
+        )
+    };
+    let finding = findings.add(&DUTY_MISSING, network.sheet.heading, message);
+    finding
+        .label("no short-circuit current")
+        .advice("add short-circuit current: ... kA, with its study year and X/R or DC time constant");
+    if let Some(other) = other {
+        finding.beside(other, "the only fault current that is stated");
     }
 }
 
@@ -133,14 +147,13 @@ pub static FAULT_LEVEL_BASIS: Rule = Rule {
                   where the larger one exceeds the least breaking current on the system and none is the same round figure. Silent \
                   about the voltage where the current is stated in kA. A study year or a switching state that is not stated is a \
                   remark. Write the current in kA.",
-    check: Check::Set(fault_level),
+    check: Check::Sheet(fault_level),
 };
 
-fn fault_level(set: &Set, policy: &Policy, findings: &mut Findings) {
-    for network in networks(set) {
-        without_voltage(&network, policy, findings);
-        without_year_or_state(&network, findings);
-    }
+fn fault_level(set: &Set, sheet: &Sheet, policy: &Policy, findings: &mut Findings) {
+    let Some(network) = network_of(set, sheet) else { return };
+    without_voltage(&network, policy, findings);
+    without_year_or_state(&network, findings);
 }
 
 fn without_voltage(network: &Network<'_>, policy: &Policy, findings: &mut Findings) {
@@ -233,30 +246,29 @@ pub static DC_TIME_CONSTANT_MISSING: Rule = Rule {
     explanation: "For the rating 45 ms are assumed where none is stated; for the network nothing can be assumed, so the checks of DC \
                   component, making current and heat are off. Silent where there is no short-circuit level, and where infeeds are \
                   described. State X/R or the time constant.",
-    check: Check::Set(time_constant),
+    check: Check::Sheet(time_constant),
 };
 
 static TIME_CONSTANT_BY: &[&Particular] =
     &[&system::DC_TIME_CONSTANT, &system::X_OVER_R, &system::R_OVER_X, &system::PEAK_SHORT_CIRCUIT_CURRENT];
 
-fn time_constant(set: &Set, _: &Policy, findings: &mut Findings) {
-    for network in networks(set) {
-        let level =
-            [&system::SHORT_CIRCUIT_CURRENT, &system::FAULT_LEVEL].into_iter().find_map(|p| network.facts.statement(p));
-        let Some(level) = level else { continue };
-        if network.breakers.is_empty() || network.has_infeeds || mentions_any(network.facts, TIME_CONSTANT_BY) {
-            continue;
-        }
-        let message = format!(
-            "{} states neither X/R nor a time constant nor a peak current: the checks of DC component, of the making current \
-             against the duty, and of the heat are off",
-            network.sheet.title()
-        );
-        findings
-            .add(&DC_TIME_CONSTANT_MISSING, level.value, message)
-            .label("with which X/R?")
-            .advice(format!("add X/R or DC time constant to {}", network.sheet.title()));
+fn time_constant(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    let Some(network) = network_of(set, sheet) else { return };
+    let level =
+        [&system::SHORT_CIRCUIT_CURRENT, &system::FAULT_LEVEL].into_iter().find_map(|p| network.facts.statement(p));
+    let Some(level) = level else { return };
+    if network.breakers.is_empty() || mentions_any(network.facts, TIME_CONSTANT_BY) || network.has_infeeds() {
+        return;
     }
+    let message = format!(
+        "{} states neither X/R nor a time constant nor a peak current: the checks of DC component, of the making current \
+         against the duty, and of the heat are off",
+        network.sheet.title()
+    );
+    findings
+        .add(&DC_TIME_CONSTANT_MISSING, level.value, message)
+        .label("with which X/R?")
+        .advice(format!("add X/R or DC time constant to {}", network.sheet.title()));
 }
 
 /// The single-phase level is stated where it may govern.
@@ -270,7 +282,7 @@ pub static SINGLE_PHASE_LEVEL_MISSING: Rule = Rule {
                   52 kV with an effectively earthed neutral where the breaking current leaves less than a quarter over Ik3; a \
                   remark at and below 52 kV; silent with more reserve, with another neutral, and where the breaker's own share is \
                   documented. A stated X0/X1 is the largest of all states and so does not settle it. Add Ik1.",
-    check: Check::Set(single_phase),
+    check: Check::Sheet(single_phase),
 };
 
 /// Reserve of the breaking current over Ik3 from which Ik1 is not asked for (common practice, no source).
@@ -279,61 +291,60 @@ const SINGLE_PHASE_RESERVE: f64 = 1.25;
 /// Up to here systems are mostly cleared of earth-fault current by their neutral (limit of distribution in IEC 62271-1, from memory).
 const DISTRIBUTION_TO: f64 = 52e3;
 
-fn single_phase(set: &Set, policy: &Policy, findings: &mut Findings) {
-    for network in networks(set) {
-        if network.has_infeeds || network.facts.mentions(&system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT) {
-            continue;
-        }
-        let cases = network.breakers.iter().map(|b| Case::new(set, b.sheet, policy));
-        let weakest = cases
-            .filter(|case| !case.breaker.mentions(&breaker::SHORT_CIRCUIT_CURRENT_THROUGH_THE_BREAKER))
-            .filter_map(|case| {
-                let isc = super::super::breaking_current(&case)?.value;
-                Some((isc, case))
-            })
-            .min_by(|a, b| a.0.si().total_cmp(&b.0.si()));
-        let Some((_, case)) = weakest else { continue };
-        let (Some(isc), Some(level)) =
-            (super::super::breaking_current(&case), case.duty.short_circuit_current.as_ref())
-        else {
-            continue;
-        };
-        let (Some((true, earthed)), Some(voltage)) = (case.duty.effectively_earthed, network.voltage()) else {
-            continue;
-        };
-        if isc.value.si() >= level.value.si() * SINGLE_PHASE_RESERVE {
-            continue;
-        }
-        let Some(place) = level.places().next() else { continue };
-        let message = format!(
-            "only the three-phase level is given, {}; with an effectively earthed neutral the single-phase current may exceed it, and \
-             the rated {} leaves {} %",
+fn single_phase(set: &Set, sheet: &Sheet, policy: &Policy, findings: &mut Findings) {
+    let Some(network) = network_of(set, sheet) else { return };
+    if network.facts.mentions(&system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT) || network.has_infeeds() {
+        return;
+    }
+    // One that leaves its current to the duty gets what any other such one on the system gets.
+    let open = network.breakers.iter().find(|b| {
+        let mut readings = b.facts.all(&breaker::RATED_SHORT_CIRCUIT_BREAKING_CURRENT).map(|s| &s.reading);
+        readings.any(|reading| *reading == Reading::FromDuty)
+    });
+    let stated = network.weakest().map(|(b, _)| b);
+    let cases = stated.into_iter().chain(open).map(|b| Case::new(set, b.sheet, policy));
+    let weakest = cases
+        .filter(|case| !case.breaker.mentions(&breaker::SHORT_CIRCUIT_CURRENT_THROUGH_THE_BREAKER))
+        .filter_map(|case| {
+            let isc = super::super::breaking_current(&case)?.value;
+            Some((isc, case))
+        })
+        .min_by(|a, b| a.0.si().total_cmp(&b.0.si()));
+    let Some((_, case)) = weakest else { return };
+    let (Some(isc), Some(level)) = (super::super::breaking_current(&case), case.duty.short_circuit_current.as_ref())
+    else {
+        return;
+    };
+    let (Some((true, earthed)), Some(voltage)) = (case.duty.effectively_earthed, network.voltage()) else {
+        return;
+    };
+    if isc.value.si() >= level.value.si() * SINGLE_PHASE_RESERVE {
+        return;
+    }
+    let Some(place) = level.places().next() else { return };
+    let message = format!(
+        "only the three-phase level is given, {}; with an effectively earthed neutral the single-phase current may exceed it, and \
+         the rated {} leaves {} %",
+        level.value.show(),
+        isc.measure,
+        significant((isc.value.si() / level.value.si() - 1.0) * 100.0, 2)
+    );
+    let finding = findings.add(&SINGLE_PHASE_LEVEL_MISSING, place, message);
+    if voltage.si() <= DISTRIBUTION_TO * (1.0 + super::super::EQUAL) {
+        finding.kind(FindingKind::Remark);
+    }
+    finding.label("three-phase only").related(earthed, "the earthing of the neutral");
+    finding.beside(isc.statement, format!("the rated breaking current of {}", case.sheet.title()));
+    if let Some(ratio) = case.system.quantity::<Ratio>(&system::X0_OVER_X1).filter(|ratio| ratio.value.value > 0.0) {
+        let estimate = level.value * (3.0 / (2.0 + ratio.value.value));
+        finding.working(format!(
+            "Ik1 = 3 Ik3/(2 + X0/X1) = 3 x {}/(2 + {}) = {} in the state with the largest X0/X1; more in others",
             level.value.show(),
-            isc.measure,
-            significant((isc.value.si() / level.value.si() - 1.0) * 100.0, 2)
-        );
-        let finding = findings.add(&SINGLE_PHASE_LEVEL_MISSING, place, message);
-        if voltage.si() <= DISTRIBUTION_TO * (1.0 + super::super::EQUAL) {
-            finding.kind(FindingKind::Remark);
-        }
-        finding.label("three-phase only").related(earthed, "the earthing of the neutral");
-        finding.beside(isc.statement, format!("the rated breaking current of {}", case.sheet.title()));
-        if let Some(ratio) = case.system.quantity::<Ratio>(&system::X0_OVER_X1).filter(|ratio| ratio.value.value > 0.0)
-        {
-            let estimate = level.value * (3.0 / (2.0 + ratio.value.value));
-            finding.working(format!(
-                "Ik1 = 3 Ik3/(2 + X0/X1) = 3 x {}/(2 + {}) = {} in the state with the largest X0/X1; more in others",
-                level.value.show(),
-                significant(ratio.value.value, 3),
-                estimate.show()
-            ));
-        }
-        finding.advice(format!(
-            "add {} to {}",
-            system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT.label,
-            network.sheet.title()
+            significant(ratio.value.value, 3),
+            estimate.show()
         ));
     }
+    finding.advice(format!("add {} to {}", system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT.label, network.sheet.title()));
 }
 
 /// The earthing of the neutral is stated where ratings hang on it.
@@ -346,7 +357,7 @@ pub static NEUTRAL_NOT_STATED: Rule = Rule {
     explanation: "First-pole-to-clear factor, capacitive voltage factor and out-of-phase factor follow from it. Silent where none of \
                   them is stated and no circuit brings one, on generator circuit-breakers, and where ratios or the two fault \
                   currents show the earthing. State how the neutral is earthed, or X0/X1.",
-    check: Check::Set(neutral),
+    check: Check::Sheet(neutral),
 };
 
 static EARTHING_BY: &[&Particular] =
@@ -364,46 +375,51 @@ static EARTHING_FOR: &[&Particular] = &[
 static CAPACITIVE: &[&str] =
     &["overhead line", "cable", "overhead line with cable", "cable network", "capacitor bank", "filter bank"];
 
-fn neutral(set: &Set, _: &Policy, findings: &mut Findings) {
-    for network in networks(set) {
-        let currents = [&system::SHORT_CIRCUIT_CURRENT, &system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT];
-        let by_currents = currents.iter().all(|current| network.facts.mentions(current));
-        if by_currents || mentions_any(network.facts, EARTHING_BY) {
-            continue;
-        }
-        let asks: Vec<_> = network
-            .breakers
-            .iter()
-            .filter(|b| !is_generator_breaker(b.facts))
-            .filter_map(|b| EARTHING_FOR.iter().find_map(|p| b.facts.statement(p)))
-            .collect();
-        let circuits = circuits_of(set, &network.breakers);
-        let by_circuit = circuits.iter().any(|circuit| {
-            let capacitive = circuit.word(&circuit::KIND).is_some_and(|(kind, _)| CAPACITIVE.contains(&kind));
-            let two_sources = [&circuit::SOURCE_AT_FAR_END, &circuit::SYNCHRONISING];
-            capacitive || two_sources.iter().any(|p| circuit.yes_no(p).is_some_and(|(yes, _)| yes))
-        });
-        let generators_only =
-            !network.breakers.is_empty() && network.breakers.iter().all(|b| is_generator_breaker(b.facts));
-        if asks.is_empty() && (!by_circuit || generators_only) {
-            continue;
-        }
-        let what = asks.first().map_or_else(
-            || "first-pole-to-clear, capacitive and out-of-phase factors hang on it".to_owned(),
-            |statement| format!("the {} hangs on it", statement.particular.label),
-        );
-        let message = format!(
-            "nothing says how the neutral of {} is earthed, and {what}: the checks of these factors are off",
-            network.sheet.title()
-        );
-        let finding = findings.add(&NEUTRAL_NOT_STATED, network.sheet.heading, message);
-        finding.label("neutral not stated").advice(format!(
-            "add neutral (solidly, effectively or impedance earthed, resonant earthed, isolated) or X0/X1 to {}",
-            network.sheet.title()
-        ));
-        for statement in asks {
-            finding.beside(statement, "presumes an earthing");
-        }
+fn neutral(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    let Some(network) = network_of(set, sheet) else { return };
+    let currents = [&system::SHORT_CIRCUIT_CURRENT, &system::SINGLE_PHASE_SHORT_CIRCUIT_CURRENT];
+    let by_currents = currents.iter().all(|current| network.facts.mentions(current));
+    if by_currents || mentions_any(network.facts, EARTHING_BY) {
+        return;
+    }
+    // The infeeds tell the earthing, or infeed-incomplete tells what they lack for it.
+    let infeeds = network.infeeds();
+    let off = infeeds.is_off(Off::Earth) || infeeds.is_off(Off::Everything);
+    if off || infeeds.seen.as_ref().is_some_and(|seen| seen.infeed.zero() != ZeroSequence::Unknown) {
+        return;
+    }
+    let asks: Vec<_> = network
+        .breakers
+        .iter()
+        .filter(|b| !is_generator_breaker(b.facts))
+        .filter_map(|b| EARTHING_FOR.iter().find_map(|p| b.facts.statement(p)))
+        .collect();
+    let circuits = circuits_of(set, &network.breakers);
+    let by_circuit = circuits.iter().any(|circuit| {
+        let capacitive = circuit.word(&circuit::KIND).is_some_and(|(kind, _)| CAPACITIVE.contains(&kind));
+        let two_sources = [&circuit::SOURCE_AT_FAR_END, &circuit::SYNCHRONISING];
+        capacitive || two_sources.iter().any(|p| circuit.yes_no(p).is_some_and(|(yes, _)| yes))
+    });
+    let generators_only =
+        !network.breakers.is_empty() && network.breakers.iter().all(|b| is_generator_breaker(b.facts));
+    if asks.is_empty() && (!by_circuit || generators_only) {
+        return;
+    }
+    let what = asks.first().map_or_else(
+        || "first-pole-to-clear, capacitive and out-of-phase factors hang on it".to_owned(),
+        |statement| format!("the {} hangs on it", statement.particular.label),
+    );
+    let message = format!(
+        "nothing says how the neutral of {} is earthed, and {what}: the checks of these factors are off",
+        network.sheet.title()
+    );
+    let finding = findings.add(&NEUTRAL_NOT_STATED, network.sheet.heading, message);
+    finding.label("neutral not stated").advice(format!(
+        "add neutral (solidly, effectively or impedance earthed, resonant earthed, isolated) or X0/X1 to {}",
+        network.sheet.title()
+    ));
+    for statement in asks {
+        finding.beside(statement, "presumes an earthing");
     }
 }
 
@@ -421,7 +437,7 @@ pub static NETWORK_KIND_MISSING: Rule = Rule {
     explanation: "The TRV of a busbar with cables only rises much more slowly than that of one with lines: class S1 or S2. Silent \
                   from 100 kV up, where every breaker asks for the harder S2, where a circuit is an overhead line and so tells, and \
                   on generator circuit-breakers. State the connection in the system.",
-    check: Check::Set(network_kind),
+    check: Check::Sheet(network_kind),
 };
 
 /// The classes of the TRV end here (IEC 62271-100, from memory).
@@ -430,35 +446,34 @@ const TRV_CLASSES_BELOW: f64 = 100e3;
 /// The circuit that makes a system a line system; a line behind a cable does not.
 const DIRECT_LINE: &str = "overhead line";
 
-fn network_kind(set: &Set, _: &Policy, findings: &mut Findings) {
-    for network in networks(set) {
-        let Some(voltage) = network.voltage() else { continue };
-        if voltage.si() >= TRV_CLASSES_BELOW || network.facts.mentions(&system::CONNECTION) {
-            continue;
-        }
-        let is_line = |circuit: &Facts| circuit.word(&circuit::KIND).is_some_and(|(kind, _)| kind == DIRECT_LINE);
-        if circuits_of(set, &network.breakers).into_iter().any(is_line) {
-            continue;
-        }
-        let open = |b: &&Apparatus<'_>| {
-            let hardest = b.facts.class(&breaker::CLASSES, 'S').is_some_and(|(class, _)| class.grade >= 2);
-            !hardest && !is_generator_breaker(b.facts)
-        };
-        let Some(first) = network.breakers.iter().find(open) else { continue };
-        let message = format!(
-            "{} does not say whether lines or cables leave the busbar: below 100 kV the TRV class, S1 or S2, depends on it",
-            network.sheet.title()
-        );
-        let finding = findings.add(&NETWORK_KIND_MISSING, network.sheet.heading, message);
-        finding.label("lines or cables?");
-        if let Some((class, _)) = first.facts.class(&breaker::CLASSES, 'S') {
-            finding.related(class.place, "a class that only fits cables");
-        }
-        finding.advice(format!(
-            "add connection: overhead lines, cables, or overhead lines and cables to {}",
-            network.sheet.title()
-        ));
+fn network_kind(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    let Some(network) = network_of(set, sheet) else { return };
+    let Some(voltage) = network.voltage() else { return };
+    if voltage.si() >= TRV_CLASSES_BELOW || network.facts.mentions(&system::CONNECTION) {
+        return;
     }
+    let is_line = |circuit: &Facts| circuit.word(&circuit::KIND).is_some_and(|(kind, _)| kind == DIRECT_LINE);
+    if circuits_of(set, &network.breakers).into_iter().any(is_line) {
+        return;
+    }
+    let open = |b: &&Apparatus<'_>| {
+        let hardest = b.facts.class(&breaker::CLASSES, 'S').is_some_and(|(class, _)| class.grade >= 2);
+        !hardest && !is_generator_breaker(b.facts)
+    };
+    let Some(first) = network.breakers.iter().find(open) else { return };
+    let message = format!(
+        "{} does not say whether lines or cables leave the busbar: below 100 kV the TRV class, S1 or S2, depends on it",
+        network.sheet.title()
+    );
+    let finding = findings.add(&NETWORK_KIND_MISSING, network.sheet.heading, message);
+    finding.label("lines or cables?");
+    if let Some((class, _)) = first.facts.class(&breaker::CLASSES, 'S') {
+        finding.related(class.place, "a class that only fits cables");
+    }
+    finding.advice(format!(
+        "add connection: overhead lines, cables, or overhead lines and cables to {}",
+        network.sheet.title()
+    ));
 }
 
 #[cfg(test)]

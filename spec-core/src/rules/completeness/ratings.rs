@@ -2,10 +2,12 @@
 
 use super::{Check, Rule, listed, mentions_any};
 use crate::case::{Case, Part};
+use crate::duty::{Figure, SwitchingDuty};
 use crate::finding::{FindingKind, Findings};
 use crate::particular::{Particular, SheetKind, breaker, circuit};
-use crate::quantity::{ElectricCurrent, ElectricPotential, Physical, Time};
+use crate::quantity::{ElectricCurrent, ElectricPotential, Physical, Time, significant};
 use crate::sheet::{Sequence, Statement};
+use crate::standards::{CapacitiveRating, capacitive_rating};
 
 /// Whether all that the breaker takes over could be found. Where not, a finding says so, and what seems to be missing may stand there.
 fn is_whole(case: &Case<'_>) -> bool {
@@ -36,9 +38,11 @@ pub static CIRCUIT_MISSING: Rule = Rule {
 };
 
 fn circuit_missing(case: &Case<'_>, findings: &mut Findings) {
-    let reach = || case.set.in_reach(case.sheet.file(), SheetKind::Circuit);
-    let astray = reach().any(|circuit| circuit.target("for").is_none());
-    if !case.circuits.is_empty() || astray || case.breaker.mentions(&breaker::SPARE_FOR) {
+    if !case.circuits.is_empty() || case.breaker.mentions(&breaker::SPARE_FOR) {
+        return;
+    }
+    let mut reach = case.set.in_reach(case.sheet.file(), SheetKind::Circuit);
+    if reach.any(|circuit| circuit.target("for").is_none()) {
         return;
     }
     let message = format!(
@@ -80,6 +84,10 @@ struct Object {
     ratings: &'static [&'static [&'static Particular]],
     /// Whether it applies to the circuit on this breaker.
     applies: fn(&Case<'_>, &Part<'_>) -> bool,
+    /// The current that the circuits ask for, as far as it is computed.
+    duty: fn(&SwitchingDuty) -> Option<&Figure<ElectricCurrent>>,
+    /// The preferred value of the first rating.
+    preferred: fn(&CapacitiveRating) -> Option<ElectricCurrent>,
 }
 
 static OBJECTS: &[Object] = &[
@@ -88,18 +96,24 @@ static OBJECTS: &[Object] = &[
         noun: "an overhead line",
         ratings: &[&[&breaker::RATED_LINE_CHARGING_BREAKING_CURRENT]],
         applies: |case, _| has_line_charging(case),
+        duty: |duty| duty.line_charging_current.as_ref(),
+        preferred: CapacitiveRating::line,
     },
     Object {
         kinds: &["overhead line with cable"],
         noun: "an overhead line with cable",
         ratings: &[&[&breaker::RATED_CABLE_CHARGING_BREAKING_CURRENT, &breaker::RATED_LINE_CHARGING_BREAKING_CURRENT]],
         applies: |_, _| true,
+        duty: |duty| duty.cable_charging_current.as_ref().or(duty.line_charging_current.as_ref()),
+        preferred: CapacitiveRating::cable,
     },
     Object {
         kinds: &["cable", "cable network"],
         noun: "a cable",
         ratings: &[&[&breaker::RATED_CABLE_CHARGING_BREAKING_CURRENT]],
         applies: |_, _| true,
+        duty: |duty| duty.cable_charging_current.as_ref(),
+        preferred: CapacitiveRating::cable,
     },
     Object {
         kinds: &["capacitor bank", "filter bank"],
@@ -109,6 +123,8 @@ static OBJECTS: &[Object] = &[
             &breaker::RATED_BACK_TO_BACK_CAPACITOR_BANK_BREAKING_CURRENT,
         ]],
         applies: |_, circuit| !circuit.mentions(&circuit::PARALLEL_BANK_POWER),
+        duty: |duty| duty.bank_current.as_ref(),
+        preferred: |row| Some(row.single_bank()),
     },
     Object {
         kinds: &["capacitor bank", "filter bank"],
@@ -118,20 +134,48 @@ static OBJECTS: &[Object] = &[
             &[&breaker::RATED_CAPACITOR_BANK_INRUSH_MAKING_CURRENT],
         ],
         applies: |_, circuit| circuit.mentions(&circuit::PARALLEL_BANK_POWER),
+        duty: |duty| duty.bank_current.as_ref(),
+        preferred: |row| Some(row.back_to_back()),
     },
     Object {
         kinds: &["shunt reactor"],
         noun: "a shunt reactor",
         ratings: &[&[&breaker::SHUNT_REACTOR_BREAKING_CURRENT]],
         applies: |_, _| true,
+        duty: |duty| duty.reactor_current.as_ref(),
+        preferred: |_| None,
     },
     Object {
         kinds: &["generator"],
         noun: "a generator",
         ratings: &[&[&breaker::GENERATOR_SOURCE_BREAKING_CURRENT]],
         applies: |case, _| case.is_generator_breaker() || voltage(case).is_some_and(|u| u.si() <= GENERATOR_VOLTAGE_TO),
+        duty: |_| None,
+        preferred: |_| None,
     },
 ];
+
+/// What the first rating of an object has to be, as far as the circuits say: the current, the inrush of a bank beside others, and
+/// the preferred value where that is enough.
+fn at_least(case: &Case<'_>, object: &Object) -> String {
+    let mut text = String::new();
+    // These ratings are stated in amperes.
+    let amperes = |current: ElectricCurrent| format!("{} A", significant(current.si(), 4));
+    let duty = (object.duty)(&case.duty.switching).map(|figure| figure.value);
+    if let Some(duty) = duty {
+        text = format!(", at least the {} A of the circuit", significant(duty.si(), 3));
+    }
+    let row = voltage(case).and_then(capacitive_rating);
+    let preferred = row.and_then(object.preferred).filter(|preferred| duty.is_none_or(|duty| duty <= *preferred));
+    if let (Some(preferred), Some(at)) = (preferred, voltage(case)) {
+        text += &format!(" ({} is the preferred value at {})", amperes(preferred), at.show());
+    }
+    let banks = object.ratings.concat().iter().any(|p| p.is(&breaker::RATED_CAPACITOR_BANK_INRUSH_MAKING_CURRENT));
+    if let Some(inrush) = case.duty.switching.inrush.as_ref().filter(|_| banks) {
+        text += &format!("; the inrush is {} at {}", inrush.peak.value.show(), inrush.frequency.value.show());
+    }
+    text
+}
 
 fn voltage(case: &Case<'_>) -> Option<ElectricPotential> {
     case.rated_voltage()
@@ -167,11 +211,7 @@ fn rating_for_object(case: &Case<'_>, findings: &mut Findings) {
         for (_, other) in circuits.filter_map(|circuit| circuit.word(&circuit::KIND)) {
             finding.beside(other, "the same here");
         }
-        let own = case
-            .circuits_of(object.kinds)
-            .find_map(|circuit| circuit.quantity::<ElectricCurrent>(&circuit::CHARGING_CURRENT));
-        let at_least =
-            own.map(|stated| format!(", at least the {} of the circuit", stated.measure)).unwrap_or_default();
+        let at_least = at_least(case, object);
         finding.advice(format!("add {} to {} with its value{at_least}", listed(&missing, "and"), case.sheet.title()));
     }
 }
@@ -318,8 +358,8 @@ fn supply_range(case: &Case<'_>, findings: &mut Findings) {
         .stated(&supply.measure)
         .working(format!(
             "{} to {} % of {} = {} to {}",
-            crate::quantity::significant(SUPPLY_RANGE.0 * 100.0, 3),
-            crate::quantity::significant(SUPPLY_RANGE.1 * 100.0, 3),
+            significant(SUPPLY_RANGE.0 * 100.0, 3),
+            significant(SUPPLY_RANGE.1 * 100.0, 3),
             supply.measure,
             supply.like(least),
             supply.like(greatest)
@@ -386,6 +426,25 @@ mod tests {
         assert_eq!(found.related.len(), 2, "{:?}", found.related);
         bay.clone().set("breaker", "rated voltage", "72.5 kV").one("rating-for-object-missing");
         bay.set("breaker", "rated voltage", "52 kV").silent("rating-for-object-missing");
+    }
+
+    /// 24 km of 0.2 uF/km at 145 kV take 126 A; the preferred value is 160 A (IEC 62271-100, from memory), which 40 km are above.
+    #[test]
+    fn what_is_asked_for_has_its_value() {
+        let advice = |length: &str| {
+            let bay = switching("cable").set("circuit", "length", length).set(
+                "circuit",
+                "capacitance per length",
+                "0.2 uF/km",
+            );
+            bay.one("rating-for-object-missing").advice.unwrap_or_default()
+        };
+        let text = advice("24 km");
+        assert!(text.ends_with("at least the 126 A of the circuit (160 A is the preferred value at 145 kV)"), "{text}");
+        assert!(advice("40 km").ends_with("at least the 210 A of the circuit"));
+        let text =
+            switching("cable").without("circuit", "length").one("rating-for-object-missing").advice.unwrap_or_default();
+        assert!(text.ends_with("with its value (160 A is the preferred value at 145 kV)"), "{text}");
     }
 
     #[test]

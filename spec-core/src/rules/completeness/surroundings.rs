@@ -16,7 +16,7 @@ pub static SITE_DATA_MISSING: Rule = Rule {
     explanation: "One finding a site lists what is missing and which checks are off. Pollution is not asked for indoors. Ice, wind and \
                   earthquake that are not stated are one remark that normal service conditions are assumed; write none where there \
                   is none. Silent on a site where no breaker stands, and where the link to a site is what is missing.",
-    check: Check::Set(site_data),
+    check: Check::Both(no_site, of_site),
 };
 
 /// A datum of the site, by what it may be stated, and the checks that need it.
@@ -56,7 +56,7 @@ static ASSUMED: &[Datum] = &[
     },
 ];
 
-fn site_data(set: &Set, _: &Policy, findings: &mut Findings) {
+fn no_site(set: &Set, _: &Policy, findings: &mut Findings) {
     for breakers in breakers_without(set, "at", SheetKind::Site) {
         let Some(first) = breakers.first() else { continue };
         let message = format!(
@@ -71,15 +71,16 @@ fn site_data(set: &Set, _: &Policy, findings: &mut Findings) {
         finding.breaker = Some(first.name.clone());
         finding.sheet = Some(first.id);
     }
-    for sheet in set.of_kind(SheetKind::Site) {
-        let breakers = breakers_of(set, "at", sheet.id);
-        if !breakers.is_empty() {
-            of_site(sheet, set.facts(sheet.id), &breakers, findings);
-        }
-    }
 }
 
-fn of_site(sheet: &Sheet, facts: &Facts, breakers: &[Apparatus<'_>], findings: &mut Findings) {
+fn of_site(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    if sheet.kind != SheetKind::Site {
+        return;
+    }
+    let (facts, breakers) = (set.facts(sheet.id), &*breakers_of(set, "at", sheet.id));
+    if breakers.is_empty() {
+        return;
+    }
     let indoors = is_indoors(facts, breakers);
     let stated = |datum: &Datum| {
         mentions_any(facts, datum.by) || breakers.iter().all(|apparatus| mentions_any(apparatus.facts, datum.by))
@@ -141,7 +142,7 @@ pub static PRECEDENCE_MISSING: Rule = Rule {
     explanation: "Where schedule, text and drawings differ, somebody has to know which prevails; where a standard is revised between \
                   tender and test, which edition holds. Silent where there is no tender sheet. Write order of precedence: \
                   \"schedule\", \"text\", \"drawings\", and reference date of standards: a date, tender date, or latest edition.",
-    check: Check::Set(precedence),
+    check: Check::Sheet(precedence),
 };
 
 static PRECEDENCE: &[(&Particular, &str)] = &[
@@ -149,27 +150,28 @@ static PRECEDENCE: &[(&Particular, &str)] = &[
     (&tender::REFERENCE_DATE_OF_STANDARDS, "no reference date of the standards"),
 ];
 
-fn precedence(set: &Set, _: &Policy, findings: &mut Findings) {
-    for sheet in set.of_kind(SheetKind::Tender) {
-        let facts = set.facts(sheet.id);
-        // Undated standards have a rule of their own, which asks for the date.
-        let told = super::super::standards_cited::cites_undated(facts);
-        let missing: Vec<_> = PRECEDENCE
-            .iter()
-            .filter(|(particular, _)| !facts.mentions(particular))
-            .filter(|(particular, _)| !(told && particular.is(&tender::REFERENCE_DATE_OF_STANDARDS)))
-            .collect();
-        if missing.is_empty() {
-            continue;
-        }
-        let sentences: Vec<&str> = missing.iter().map(|(_, sentence)| *sentence).collect();
-        let labels: Vec<&str> = missing.iter().map(|(particular, _)| particular.label).collect();
-        let message = format!("the tender has {}", listed(&sentences, "and"));
-        findings
-            .add(&PRECEDENCE_MISSING, sheet.heading, message)
-            .label(format!("{} missing", listed(&labels, "and")))
-            .advice(format!("add {} to the tender", listed(&labels, "and")));
+fn precedence(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    if sheet.kind != SheetKind::Tender {
+        return;
     }
+    let facts = set.facts(sheet.id);
+    // Undated standards have a rule of their own, which asks for the date.
+    let told = super::super::standards_cited::cites_undated(facts);
+    let missing: Vec<_> = PRECEDENCE
+        .iter()
+        .filter(|(particular, _)| !facts.mentions(particular))
+        .filter(|(particular, _)| !(told && particular.is(&tender::REFERENCE_DATE_OF_STANDARDS)))
+        .collect();
+    if missing.is_empty() {
+        return;
+    }
+    let sentences: Vec<&str> = missing.iter().map(|(_, sentence)| *sentence).collect();
+    let labels: Vec<&str> = missing.iter().map(|(particular, _)| particular.label).collect();
+    let message = format!("the tender has {}", listed(&sentences, "and"));
+    findings
+        .add(&PRECEDENCE_MISSING, sheet.heading, message)
+        .label(format!("{} missing", listed(&labels, "and")))
+        .advice(format!("add {} to the tender", listed(&labels, "and")));
 }
 
 /// Numbers of breakers add up.
@@ -182,15 +184,14 @@ pub static QUANTITY_SUM: Rule = Rule {
     explanation: "A bay that was added late is the usual cause. A breaker that names only its bays counts with their number. Silent \
                   where the tender states no total, or where a breaker states neither quantity nor bays and the sum could still \
                   come right; more breakers than bays are accepted where a spare is among them.",
-    check: Check::Set(quantities),
+    check: Check::Sheet(quantities),
 };
 
-fn quantities(set: &Set, _: &Policy, findings: &mut Findings) {
-    for sheet in set.of_kind(SheetKind::Breaker) {
-        bays(set, sheet, findings);
-    }
-    for sheet in set.of_kind(SheetKind::Tender) {
-        total(set, sheet, findings);
+fn quantities(set: &Set, sheet: &Sheet, _: &Policy, findings: &mut Findings) {
+    match sheet.kind {
+        SheetKind::Breaker => bays(set, sheet, findings),
+        SheetKind::Tender => total(set, sheet, findings),
+        _ => {}
     }
 }
 
