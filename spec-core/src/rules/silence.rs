@@ -137,3 +137,71 @@ fn resonant_earthed_cable_networks() {
         nothing_grave(&bay);
     }
 }
+
+/// A rating under the current of the whole bus, where the breaker's own share is documented.
+#[test]
+fn a_documented_share_of_the_bus_current() {
+    let bus = Bay::new().set("system", "short-circuit current", "33 kA").set(
+        "system",
+        "single-phase short-circuit current",
+        "30 kA",
+    );
+    bus.one("breaking-current-below-duty");
+    nothing_grave(&bus.set("breaker", "short-circuit current through the breaker", "27 kA"));
+}
+
+/// A generator circuit-breaker with 2.74 and 133 ms to its own standard.
+#[test]
+fn a_generator_breaker_to_its_own_standard() {
+    let bay = Bay::new()
+        .set("breaker", "construction", "generator circuit-breaker")
+        .set("breaker", "standards", "IEC/IEEE 62271-37-013:2021")
+        .set("breaker", "DC time constant", "133 ms")
+        .set("breaker", "rated short-circuit making current", "86.3 kA")
+        .set("breaker", "rated peak withstand current", "86.3 kA");
+    for rule in [
+        "making-current-factor",
+        "making-current-below-duty",
+        "peak-withstand-disagrees",
+        "dc-time-constant",
+        "dc-time-constant-excess",
+        "generator-breaker-standard",
+        "many-extremes",
+    ] {
+        bay.silent(rule);
+    }
+    bay.set("breaker", "rated short-circuit making current", "78.75 kA").one("making-current-factor");
+}
+
+/// Levels of the gas that fall in order: below the dew point of the filling only, a remark at most; at the alarm's, a caution; at the
+/// minimum functional level's, a shortfall.
+#[test]
+fn gas_is_graded_by_its_levels() {
+    let at = |lowest: &str| {
+        Bay::new()
+            .set("site", "lowest ambient", lowest)
+            .set("breaker", "temperature class", "minus 40 outdoor")
+            .set("breaker", "insulating gas", "SF6")
+            .set("breaker", "rated filling pressure", "6.0 bar gauge at 20 degC")
+            .set("breaker", "alarm pressure", "5.5 bar gauge at 20 degC")
+            .set("breaker", "minimum functional pressure", "5.2 bar gauge at 20 degC")
+    };
+    // The dew points are those of 0.701, 0.651 and 0.621 MPa abs: -26.1, -28.5 and -30.0 degC.
+    nothing_grave(&at("-25 degC"));
+    assert_eq!(at("-27 degC").one("gas-liquefaction").kind, FindingKind::Remark);
+    assert_eq!(at("-29 degC").one("gas-density-at-cold").kind, FindingKind::Caution);
+    assert_eq!(at("-31 degC").one("gas-liquefaction").kind, FindingKind::Shortfall);
+}
+
+/// A national rated voltage with agreed levels, where the text cites the national standard.
+#[test]
+fn a_national_voltage() {
+    let bay = Bay::new().set("breaker", "rated voltage", "82.5 kV").set("system", "highest voltage", "82.5 kV").set(
+        "system",
+        "nominal voltage",
+        "77 kV",
+    );
+    assert_eq!(bay.one("rated-voltage-not-preferred").kind, FindingKind::Caution);
+    let cited = bay.set("tender", "standards", "IEC 62271-100:2021, national standard of the utility");
+    assert_eq!(cited.one("rated-voltage-not-preferred").kind, FindingKind::Remark);
+}
