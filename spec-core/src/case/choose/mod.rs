@@ -1,5 +1,6 @@
 //! What `from duty` chooses: the smallest standard value that meets the duty, with its working; or what is missing for it.
 
+mod capacitive;
 mod insulation;
 mod operation;
 mod ratings;
@@ -73,7 +74,9 @@ fn known<T>(value: Option<T>, what: &str) -> Result<T, NotChosen> {
 
 /// All choices, in the order in which ratings hang on each other.
 fn choices() -> impl Iterator<Item = &'static Choice> {
-    [ratings::CHOICES, trv::CHOICES, insulation::CHOICES, operation::CHOICES, service::CHOICES].into_iter().flatten()
+    [ratings::CHOICES, trv::CHOICES, insulation::CHOICES, operation::CHOICES, capacitive::CHOICES, service::CHOICES]
+        .into_iter()
+        .flatten()
 }
 
 /// Why a particular that is left to the duty has no value; none where the checker cannot choose it at all.
